@@ -1,0 +1,11 @@
+/** One `expect` line, judged. What could not be computed has failed, and `message` says why. */
+export interface ExpectationResult {
+  readonly system: string;
+  readonly trial: string | null;
+  readonly text: string;
+  readonly passed: boolean;
+  /** As shown: `4`, `52.3 kN`; null where nothing could be measured. */
+  readonly measured: string | null;
+  readonly wanted: string;
+  readonly message: string | null;
+}

@@ -1,0 +1,95 @@
+import { assignCausality } from "./causality/assign.ts";
+import type { CausalGraph } from "./causality/strokes.ts";
+import type { Finding } from "./diagnostics/finding.ts";
+import { deriveEquations } from "./equations/derive.ts";
+import type { StateModel } from "./equations/model.ts";
+import { type ExpectationResult, judge } from "./expectations/judge.ts";
+import type { FlatGraph } from "./resolve/graph.ts";
+import { resolve } from "./resolve/resolve.ts";
+import type { FileSet, SourceText } from "./source/text.ts";
+import { parse } from "./syntax/parse.ts";
+import type { File } from "./syntax/tree.ts";
+
+/**
+ * The core from end to end: text → tree → flat bond graph → causal graph → state model → judged expectations.
+ * Each stage is a pure function that returns a value and findings and never throws for what a user wrote. A stage
+ * that cannot go on gives null, and what stands before it is still shown. The door for `app` and `cli`.
+ */
+export interface FileReport {
+  readonly path: string;
+  readonly tree: File;
+  readonly systems: readonly SystemReport[];
+  /** All findings with a span in the file, of every stage, in the order of the text. */
+  readonly findings: readonly Finding[];
+}
+
+export interface SystemReport {
+  readonly system: string;
+  readonly graph: FlatGraph | null;
+  readonly causal: CausalGraph | null;
+  readonly model: StateModel | null;
+  readonly findings: readonly Finding[];
+  readonly expectations: readonly ExpectationResult[];
+}
+
+/** Trees by file, kept between checks so that a key stroke reparses only the file it changed. */
+export type TreeCache = Map<SourceText, ReturnType<typeof parse>>;
+
+export interface CheckOptions {
+  /** Only this system; all of the file otherwise. */
+  readonly system?: string;
+  readonly cache?: TreeCache;
+}
+
+export function checkFile(files: FileSet, path: string, options: CheckOptions = {}): FileReport {
+  const cache: TreeCache = options.cache ?? new Map();
+  const parseOnce = (source: SourceText) => {
+    const known = cache.get(source);
+    if (known !== undefined) return known;
+    const parsed = parse(source);
+    cache.set(source, parsed);
+    return parsed;
+  };
+  const source = files.get(path);
+  if (source === undefined) throw new Error(`checkFile was asked for ${path}, which is not in the set`);
+
+  const { tree, findings: syntaxFindings } = parseOnce(source);
+  const resolved = resolve(files, path, parseOnce);
+  const systems = resolved.systems
+    .filter(({ name }) => options.system === undefined || name === options.system)
+    .map(({ name, graph, findings }) => derive(name, graph, findings));
+
+  const findings = [...syntaxFindings, ...resolved.findings, ...systems.flatMap((system) => system.findings)];
+  return { path, tree, systems, findings: inTextOrder(findings, path) };
+}
+
+function derive(system: string, graph: FlatGraph | null, resolveFindings: readonly Finding[]): SystemReport {
+  const refused = resolveFindings.some(({ severity }) => severity === "error");
+  if (graph === null || refused) {
+    return { system, graph, causal: null, model: null, findings: resolveFindings, expectations: [] };
+  }
+  const { causal, findings: causalFindings } = assignCausality(graph);
+  const conflict = causalFindings.some(({ severity }) => severity === "error");
+  const { model, findings: equationFindings } = conflict ? { model: null, findings: [] } : deriveEquations(causal);
+  const { results, findings: judgedFindings } = judge(graph, model);
+  return {
+    system,
+    graph,
+    causal,
+    model,
+    findings: [...resolveFindings, ...causalFindings, ...equationFindings, ...judgedFindings],
+    expectations: results,
+  };
+}
+
+function inTextOrder(findings: readonly Finding[], path: string): Finding[] {
+  const seen = new Set<string>();
+  const own = findings.filter((found) => {
+    const key = `${found.name} ${found.span.file} ${found.span.start} ${found.span.end} ${found.message}`;
+    if (seen.has(key)) return false;
+    seen.add(key);
+    return true;
+  });
+  const here = (found: Finding) => (found.span.file === path ? 0 : 1);
+  return own.sort((a, b) => here(a) - here(b) || a.span.start - b.span.start || a.span.end - b.span.end);
+}

@@ -1,0 +1,293 @@
+import type { Range } from "../source/span.ts";
+
+/**
+ * The syntax tree of one `.wright` file: what was written, in the order it was written, with nothing looked up.
+ * Every node keeps its range, so that findings, the formatter and the editor point at the text itself.
+ */
+export interface File {
+  readonly path: string;
+  readonly range: Range;
+  /** The edition after `notation`; null where the line is missing. */
+  readonly edition: { readonly number: number; readonly range: Range } | null;
+  readonly items: readonly FileItem[];
+  /** Every `#` comment in the order of the text, those of descriptions (`##`) included. */
+  readonly comments: readonly Comment[];
+}
+
+export interface Comment {
+  readonly text: string;
+  readonly range: Range;
+  /** `##` lines directly above a declaration. */
+  readonly description: boolean;
+}
+
+export interface Identifier {
+  readonly text: string;
+  readonly range: Range;
+}
+
+/** What may stand after a declaration: the joined `##` lines above it and the `-- text` behind it. */
+export interface Described {
+  readonly description: string | null;
+  readonly remark: string | null;
+}
+
+export type FileItem = Use | DomainDeclaration | ValueDeclaration | FunctionDeclaration | CurveDeclaration | System | Trial;
+
+export interface Use {
+  readonly kind: "use";
+  readonly range: Range;
+  /** null: everything in the file. */
+  readonly names: readonly Identifier[] | null;
+  readonly path: StringLiteral;
+}
+
+export interface StringLiteral {
+  readonly value: string;
+  readonly range: Range;
+}
+
+export interface DomainDeclaration extends Described {
+  readonly kind: "domain";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly pseudo: boolean;
+  readonly effort: UnitText;
+  readonly flow: UnitText;
+}
+
+/** A unit as written, without blanks; its meaning is looked up by the resolver. */
+export interface UnitText {
+  readonly text: string;
+  readonly range: Range;
+}
+
+export interface FunctionDeclaration extends Described {
+  readonly kind: "function";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly parameters: readonly Identifier[];
+  readonly body: Expression;
+}
+
+export interface CurveDeclaration extends Described {
+  readonly kind: "curve";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly from: UnitText;
+  readonly to: UnitText;
+  readonly source:
+    | { readonly kind: "points"; readonly points: readonly { readonly x: Expression; readonly y: Expression; readonly range: Range }[] }
+    | { readonly kind: "file"; readonly path: StringLiteral; readonly columns: readonly StringLiteral[] };
+  readonly interpolation: "linear" | "smooth";
+}
+
+export interface System extends Described {
+  readonly kind: "system";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly body: readonly Statement[];
+}
+
+export type Statement =
+  | ValueDeclaration
+  | InputDeclaration
+  | OutputDeclaration
+  | LetDeclaration
+  | TrackDeclaration
+  | JunctionDeclaration
+  | ElementDeclaration
+  | SubDeclaration
+  | PortDeclaration
+  | Wiring
+  | Start
+  | Repeat
+  | Expect;
+
+export interface ValueDeclaration extends Described {
+  readonly kind: "param" | "const";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly value: Expression;
+  readonly bounds: { readonly low: Expression; readonly high: Expression; readonly range: Range } | null;
+}
+
+export interface InputDeclaration extends Described {
+  readonly kind: "input";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly unit: UnitText;
+  readonly nominal: Expression | null;
+}
+
+export interface OutputDeclaration extends Described {
+  readonly kind: "output";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly value: Expression;
+  readonly unit: UnitText | null;
+}
+
+export interface LetDeclaration extends Described {
+  readonly kind: "let";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly value: Expression;
+}
+
+export interface TrackDeclaration extends Described {
+  readonly kind: "track";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly rate: Expression;
+  readonly from: Expression | null;
+}
+
+/** A name that may carry indices: `cell[i-1]`, `grid[i][j]`. */
+export interface IndexedName {
+  readonly name: Identifier;
+  readonly indices: readonly Expression[];
+  readonly range: Range;
+}
+
+export interface JunctionDeclaration extends Described {
+  readonly kind: "junction";
+  readonly range: Range;
+  readonly junction: "0" | "1";
+  readonly name: IndexedName;
+  readonly domain: Identifier | null;
+}
+
+export type ElementKind = "Se" | "Sf" | "R" | "C" | "I" | "TF" | "GY" | "IC" | "RS";
+
+export interface ElementDeclaration extends Described {
+  readonly kind: "element";
+  readonly range: Range;
+  readonly element: ElementKind;
+  /** The kind word as written: `MTF` and `TF` are both accepted. */
+  readonly word: Identifier;
+  readonly name: IndexedName;
+  /** Named ports of a field; null where none are listed. */
+  readonly ports: readonly FieldPort[] | null;
+  readonly domain: Identifier | null;
+  /** `C spring = k`: another value's name stands for the linear law. */
+  readonly valueOf: Expression | null;
+  readonly laws: readonly Law[];
+}
+
+export interface FieldPort {
+  readonly name: Identifier;
+  /** `R pump(shaft, gives line)`: the port counts power out of the element. */
+  readonly gives: boolean;
+  readonly domain: Identifier | null;
+  readonly range: Range;
+}
+
+export interface Law {
+  /** `e`, `out.f`, `a.p`, or `energy`. */
+  readonly left: Reference;
+  readonly oneWay: boolean;
+  readonly right: Expression;
+  readonly range: Range;
+}
+
+export interface SubDeclaration extends Described {
+  readonly kind: "sub";
+  readonly range: Range;
+  readonly name: IndexedName;
+  readonly system: Identifier;
+  readonly overrides: readonly { readonly name: Identifier; readonly value: Expression; readonly range: Range }[];
+}
+
+export interface PortDeclaration extends Described {
+  readonly kind: "port";
+  readonly range: Range;
+  readonly name: IndexedName;
+  readonly gives: boolean;
+  readonly domain: Identifier | null;
+}
+
+/** `A -> B -> C, D as NAME`: groups of endpoints joined by arrows. */
+export interface Wiring extends Described {
+  readonly kind: "wiring";
+  readonly range: Range;
+  /** At least two groups; only the first and the last may hold more than one endpoint. */
+  readonly groups: readonly (readonly Reference[])[];
+  readonly arrows: readonly Arrow[];
+  readonly as: IndexedName | null;
+}
+
+export interface Arrow {
+  readonly range: Range;
+  /** The end at which the causal stroke is demanded, if it is. */
+  readonly stroke: "from" | "to" | null;
+}
+
+export interface Start {
+  readonly kind: "start";
+  readonly range: Range;
+  /** null: `start steady`, in a trial. */
+  readonly target: Reference | null;
+  readonly value: Expression | null;
+}
+
+export interface Repeat {
+  readonly kind: "repeat";
+  readonly range: Range;
+  readonly index: Identifier;
+  readonly low: Expression;
+  readonly high: Expression;
+  readonly body: readonly Statement[];
+}
+
+export interface Expect extends Described {
+  readonly kind: "expect";
+  readonly range: Range;
+  readonly condition: Condition;
+}
+
+export type Condition =
+  | { readonly kind: "fact"; readonly measure: Expression; readonly range: Range; readonly within: Expression | null }
+  | { readonly kind: "comparison"; readonly left: Expression; readonly operator: "<" | "<=" | ">" | ">=" | "="; readonly right: Expression; readonly within: Expression | null; readonly range: Range }
+  | { readonly kind: "between"; readonly measure: Expression; readonly low: Expression; readonly high: Expression; readonly range: Range };
+
+export interface Trial extends Described {
+  readonly kind: "trial";
+  readonly range: Range;
+  readonly name: Identifier;
+  readonly system: Identifier;
+  readonly body: readonly TrialStatement[];
+}
+
+export type TrialStatement =
+  | { readonly kind: "set"; readonly range: Range; readonly name: Reference; readonly value: Expression }
+  | Start
+  | { readonly kind: "drive"; readonly range: Range; readonly input: Reference; readonly value: Expression }
+  | { readonly kind: "run"; readonly range: Range; readonly duration: Expression; readonly tolerance: Expression | null; readonly every: Expression | null }
+  | { readonly kind: "record"; readonly range: Range; readonly signals: readonly Expression[] }
+  | { readonly kind: "vary"; readonly range: Range; readonly name: Reference; readonly low: Expression; readonly high: Expression; readonly steps: Expression }
+  | { readonly kind: "scatter"; readonly range: Range; readonly count: Expression }
+  | { readonly kind: "compare"; readonly range: Range; readonly signal: Expression; readonly path: StringLiteral; readonly columns: readonly StringLiteral[]; readonly limit: Expression | null; readonly measure: Identifier | null; readonly operator: "<" | "<=" | null }
+  | Expect;
+
+/** `armature.f`, `cell[i-1].spring.q`, `u`: a path of names, each with its indices. */
+export interface Reference {
+  readonly kind: "reference";
+  readonly path: readonly IndexedName[];
+  readonly range: Range;
+}
+
+export type Expression =
+  | { readonly kind: "number"; readonly value: number; readonly text: string; readonly range: Range }
+  | { readonly kind: "quantity"; readonly value: number; readonly text: string; readonly unit: UnitText; readonly range: Range }
+  | { readonly kind: "string"; readonly value: string; readonly range: Range }
+  | Reference
+  | { readonly kind: "unary"; readonly operator: "-" | "+" | "not"; readonly operand: Expression; readonly range: Range }
+  | { readonly kind: "binary"; readonly operator: BinaryOperator; readonly left: Expression; readonly right: Expression; readonly range: Range }
+  | { readonly kind: "call"; readonly name: Identifier; readonly arguments: readonly Expression[]; readonly range: Range }
+  | { readonly kind: "where"; readonly then: Expression; readonly condition: Expression; readonly otherwise: Expression; readonly range: Range }
+  | { readonly kind: "group"; readonly inner: Expression; readonly range: Range }
+  /** What stands where an expression could not be read; a `syntax` finding says why. */
+  | { readonly kind: "missing"; readonly range: Range };
+
+export type BinaryOperator = "+" | "-" | "*" | "/" | "^" | "<" | "<=" | ">" | ">=" | "=" | "and" | "or";
