@@ -32,8 +32,24 @@ export const SYMBOL_ROLES = [
 export type SymbolRole = (typeof SYMBOL_ROLES)[number];
 
 export type FunctionName =
-  | "sin" | "cos" | "tan" | "asin" | "acos" | "atan" | "atan2" | "sinh" | "cosh" | "tanh"
-  | "exp" | "ln" | "log10" | "sqrt" | "abs" | "sign" | "min" | "max";
+  | "sin"
+  | "cos"
+  | "tan"
+  | "asin"
+  | "acos"
+  | "atan"
+  | "atan2"
+  | "sinh"
+  | "cosh"
+  | "tanh"
+  | "exp"
+  | "ln"
+  | "log10"
+  | "sqrt"
+  | "abs"
+  | "sign"
+  | "min"
+  | "max";
 
 export interface Expr {
   /** Order of creation in the pool: an identity, never an order that may reach a text. */

@@ -1,0 +1,70 @@
+import type { Expr, FunctionName, Symbol } from "./expression.ts";
+import { postorder } from "./postorder.ts";
+
+/** The number an expression has when each symbol has the value `lookup` gives; NaN where it isn't defined. */
+export function evaluate(expr: Expr, lookup: (symbol: Symbol) => number): number {
+  return evaluator(lookup)(expr);
+}
+
+/** As `evaluate` for many expressions at one point: what they share is worked out once. */
+export function evaluator(lookup: (symbol: Symbol) => number): (expr: Expr) => number {
+  const values = new Map<Expr, number>();
+  const valueOf = (expr: Expr) => values.get(expr) as number;
+  return (root) => {
+    postorder(
+      [root],
+      (expr) => values.has(expr),
+      (expr) => values.set(expr, valueFrom(expr, valueOf, lookup)),
+    );
+    return valueOf(root);
+  };
+}
+
+function valueFrom(expr: Expr, valueOf: (arg: Expr) => number, lookup: (symbol: Symbol) => number): number {
+  const { args } = expr;
+  switch (expr.op) {
+    case "number":
+      return expr.value;
+    case "symbol":
+      return lookup(expr as Symbol);
+    case "sum":
+      return args.reduce((total, arg) => total + valueOf(arg), 0);
+    case "product":
+      return args.reduce((total, arg) => total * valueOf(arg), 1);
+    case "power":
+      return args[1].value === 0.5 ? Math.sqrt(valueOf(args[0])) : valueOf(args[0]) ** valueOf(args[1]);
+    case "call":
+      return applyFunction(expr.name as FunctionName, args.map(valueOf));
+    case "where":
+      return valueOf(args[0]) !== 0 ? valueOf(args[1]) : valueOf(args[2]);
+    case "compare":
+      return holds(expr.name, valueOf(args[0]), valueOf(args[1])) ? 1 : 0;
+    case "and":
+      return args.every((arg) => valueOf(arg) !== 0) ? 1 : 0;
+    case "or":
+      return args.some((arg) => valueOf(arg) !== 0) ? 1 : 0;
+    case "not":
+      return valueOf(args[0]) === 0 ? 1 : 0;
+  }
+}
+
+export function holds(op: string, a: number, b: number): boolean {
+  switch (op) {
+    case "<":
+      return a < b;
+    case "<=":
+      return a <= b;
+    case ">":
+      return a > b;
+    case ">=":
+      return a >= b;
+    case "=":
+      return a === b;
+    default:
+      return a !== b;
+  }
+}
+
+export function applyFunction(fn: FunctionName, args: readonly number[]): number {
+  return fn === "ln" ? Math.log(args[0]) : Math[fn](args[0], args[1]);
+}

@@ -1,0 +1,35 @@
+import type { Expr } from "./expression.ts";
+
+/**
+ * Calls `visit` once for every distinct expression below `roots`, arguments before what they stand in, without
+ * recursion: a chain of laws may be 10^5 deep. `known` says which ones need not be looked into.
+ */
+export function postorder(
+  roots: readonly Expr[],
+  known: (expr: Expr) => boolean,
+  visit: (expr: Expr) => void,
+): void {
+  const stack: Expr[] = [];
+  const next: number[] = [];
+  for (const root of roots) {
+    if (known(root)) continue;
+    stack.push(root);
+    next.push(0);
+    while (stack.length > 0) {
+      const top = stack.length - 1;
+      const expr = stack[top];
+      const at = next[top];
+      if (at < expr.args.length) {
+        next[top] = at + 1;
+        if (!known(expr.args[at])) {
+          stack.push(expr.args[at]);
+          next.push(0);
+        }
+        continue;
+      }
+      if (!known(expr)) visit(expr);
+      stack.pop();
+      next.pop();
+    }
+  }
+}

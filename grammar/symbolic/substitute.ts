@@ -1,0 +1,53 @@
+import type { Expr, FunctionName } from "./expression.ts";
+import type { Pool } from "./pool.ts";
+import { postorder } from "./postorder.ts";
+
+/** The expression with every key of `map` replaced at once; what is put in is not looked into again. */
+export function substitute(pool: Pool, expr: Expr, map: ReadonlyMap<Expr, Expr>): Expr {
+  return substitution(pool, map)(expr);
+}
+
+/** As `substitute` for many expressions and one map: what they share is rebuilt once. */
+export function substitution(pool: Pool, map: ReadonlyMap<Expr, Expr>): (expr: Expr) => Expr {
+  const done = new Map<Expr, Expr>(map);
+  return (root) => {
+    postorder(
+      [root],
+      (expr) => done.has(expr),
+      (expr) => done.set(expr, rebuilt(pool, expr, done)),
+    );
+    return done.get(root) as Expr;
+  };
+}
+
+function rebuilt(pool: Pool, expr: Expr, done: ReadonlyMap<Expr, Expr>): Expr {
+  if (expr.args.length === 0) return expr;
+  const args = expr.args.map((arg) => done.get(arg) as Expr);
+  return args.every((arg, i) => arg === expr.args[i]) ? expr : withArgs(pool, expr, args);
+}
+
+/** The expression `expr` with other arguments, canonical again. */
+export function withArgs(pool: Pool, expr: Expr, args: readonly Expr[]): Expr {
+  switch (expr.op) {
+    case "sum":
+      return pool.sum(args);
+    case "product":
+      return pool.product(args);
+    case "power":
+      return pool.power(args[0], args[1]);
+    case "call":
+      return pool.call(expr.name as FunctionName, ...args);
+    case "where":
+      return pool.where(args[0], args[1], args[2]);
+    case "compare":
+      return pool.compare(expr.name, args[0], args[1]);
+    case "and":
+      return pool.and(...args);
+    case "or":
+      return pool.or(...args);
+    case "not":
+      return pool.not(args[0]);
+    default:
+      return expr;
+  }
+}
