@@ -19,6 +19,8 @@ export interface Reason {
     | "law-not-invertible"
     | "chosen-resistor"
     | "chosen-bond"
+    /** A choice whose opposite, followed to its end, contradicts the premises. */
+    | "excluded"
     | "open-port"
     | "junction"
     | "transformer"
