@@ -12,6 +12,19 @@ export interface File {
   readonly items: readonly FileItem[];
   /** Every `#` comment in the order of the text, those of descriptions (`##`) included. */
   readonly comments: readonly Comment[];
+  /** Every block is closed where it should be; the formatter leaves a file alone where it isn't. */
+  readonly balanced: boolean;
+}
+
+/**
+ * A statement with a `syntax` finding, or a block whose head has one: it is kept as a stretch of the text, so that
+ * the formatter prints it as it stands and later stages know that something is missing here. What it would have
+ * declared is told where that could be read, so that one slip does not make every use of the name a second finding.
+ */
+export interface Unreadable extends Described {
+  readonly kind: "unreadable";
+  readonly range: Range;
+  readonly declares: { readonly name: Identifier; readonly space: "node" | "value" | "file" } | null;
 }
 
 export interface Comment {
@@ -32,9 +45,17 @@ export interface Described {
   readonly remark: string | null;
 }
 
-export type FileItem = Use | DomainDeclaration | ValueDeclaration | FunctionDeclaration | CurveDeclaration | System | Trial;
+export type FileItem =
+  | Use
+  | DomainDeclaration
+  | ValueDeclaration
+  | FunctionDeclaration
+  | CurveDeclaration
+  | System
+  | Trial
+  | Unreadable;
 
-export interface Use {
+export interface Use extends Described {
   readonly kind: "use";
   readonly range: Range;
   /** null: everything in the file. */
@@ -77,7 +98,10 @@ export interface CurveDeclaration extends Described {
   readonly from: UnitText;
   readonly to: UnitText;
   readonly source:
-    | { readonly kind: "points"; readonly points: readonly { readonly x: Expression; readonly y: Expression; readonly range: Range }[] }
+    | {
+        readonly kind: "points";
+        readonly points: readonly { readonly x: Expression; readonly y: Expression; readonly range: Range }[];
+      }
     | { readonly kind: "file"; readonly path: StringLiteral; readonly columns: readonly StringLiteral[] };
   readonly interpolation: "linear" | "smooth";
 }
@@ -85,6 +109,8 @@ export interface CurveDeclaration extends Described {
 export interface System extends Described {
   readonly kind: "system";
   readonly range: Range;
+  /** From `{` to `}`. */
+  readonly block: Range;
   readonly name: Identifier;
   readonly body: readonly Statement[];
 }
@@ -102,12 +128,15 @@ export type Statement =
   | Wiring
   | Start
   | Repeat
-  | Expect;
+  | Expect
+  | Unreadable;
 
 export interface ValueDeclaration extends Described {
   readonly kind: "param" | "const";
   readonly range: Range;
   readonly name: Identifier;
+  /** Of a value declared inside a `repeat`: `let x[i] = …`; empty otherwise. */
+  readonly indices: readonly Expression[];
   readonly value: Expression;
   readonly bounds: { readonly low: Expression; readonly high: Expression; readonly range: Range } | null;
 }
@@ -116,6 +145,8 @@ export interface InputDeclaration extends Described {
   readonly kind: "input";
   readonly range: Range;
   readonly name: Identifier;
+  /** Of a value declared inside a `repeat`: `let x[i] = …`; empty otherwise. */
+  readonly indices: readonly Expression[];
   readonly unit: UnitText;
   readonly nominal: Expression | null;
 }
@@ -124,6 +155,8 @@ export interface OutputDeclaration extends Described {
   readonly kind: "output";
   readonly range: Range;
   readonly name: Identifier;
+  /** Of a value declared inside a `repeat`: `let x[i] = …`; empty otherwise. */
+  readonly indices: readonly Expression[];
   readonly value: Expression;
   readonly unit: UnitText | null;
 }
@@ -132,6 +165,8 @@ export interface LetDeclaration extends Described {
   readonly kind: "let";
   readonly range: Range;
   readonly name: Identifier;
+  /** Of a value declared inside a `repeat`: `let x[i] = …`; empty otherwise. */
+  readonly indices: readonly Expression[];
   readonly value: Expression;
 }
 
@@ -139,6 +174,8 @@ export interface TrackDeclaration extends Described {
   readonly kind: "track";
   readonly range: Range;
   readonly name: Identifier;
+  /** Of a value declared inside a `repeat`: `let x[i] = …`; empty otherwise. */
+  readonly indices: readonly Expression[];
   readonly rate: Expression;
   readonly from: Expression | null;
 }
@@ -196,7 +233,11 @@ export interface SubDeclaration extends Described {
   readonly range: Range;
   readonly name: IndexedName;
   readonly system: Identifier;
-  readonly overrides: readonly { readonly name: Identifier; readonly value: Expression; readonly range: Range }[];
+  readonly overrides: readonly {
+    readonly name: Identifier;
+    readonly value: Expression;
+    readonly range: Range;
+  }[];
 }
 
 export interface PortDeclaration extends Described {
@@ -223,7 +264,7 @@ export interface Arrow {
   readonly stroke: "from" | "to" | null;
 }
 
-export interface Start {
+export interface Start extends Described {
   readonly kind: "start";
   readonly range: Range;
   /** null: `start steady`, in a trial. */
@@ -231,9 +272,11 @@ export interface Start {
   readonly value: Expression | null;
 }
 
-export interface Repeat {
+export interface Repeat extends Described {
   readonly kind: "repeat";
   readonly range: Range;
+  /** From `{` to `}`. */
+  readonly block: Range;
   readonly index: Identifier;
   readonly low: Expression;
   readonly high: Expression;
@@ -247,28 +290,106 @@ export interface Expect extends Described {
 }
 
 export type Condition =
-  | { readonly kind: "fact"; readonly measure: Expression; readonly range: Range; readonly within: Expression | null }
-  | { readonly kind: "comparison"; readonly left: Expression; readonly operator: "<" | "<=" | ">" | ">=" | "="; readonly right: Expression; readonly within: Expression | null; readonly range: Range }
-  | { readonly kind: "between"; readonly measure: Expression; readonly low: Expression; readonly high: Expression; readonly range: Range };
+  | {
+      readonly kind: "fact";
+      readonly measure: Expression;
+      readonly range: Range;
+      readonly within: Expression | null;
+    }
+  | {
+      readonly kind: "comparison";
+      readonly left: Expression;
+      readonly operator: "<" | "<=" | ">" | ">=" | "=";
+      readonly right: Expression;
+      readonly within: Expression | null;
+      readonly range: Range;
+    }
+  | {
+      readonly kind: "between";
+      readonly measure: Expression;
+      readonly low: Expression;
+      readonly high: Expression;
+      readonly range: Range;
+    };
 
 export interface Trial extends Described {
   readonly kind: "trial";
   readonly range: Range;
+  /** From `{` to `}`. */
+  readonly block: Range;
   readonly name: Identifier;
   readonly system: Identifier;
   readonly body: readonly TrialStatement[];
 }
 
 export type TrialStatement =
-  | { readonly kind: "set"; readonly range: Range; readonly name: Reference; readonly value: Expression }
+  | SetValue
   | Start
-  | { readonly kind: "drive"; readonly range: Range; readonly input: Reference; readonly value: Expression }
-  | { readonly kind: "run"; readonly range: Range; readonly duration: Expression; readonly tolerance: Expression | null; readonly every: Expression | null }
-  | { readonly kind: "record"; readonly range: Range; readonly signals: readonly Expression[] }
-  | { readonly kind: "vary"; readonly range: Range; readonly name: Reference; readonly low: Expression; readonly high: Expression; readonly steps: Expression }
-  | { readonly kind: "scatter"; readonly range: Range; readonly count: Expression }
-  | { readonly kind: "compare"; readonly range: Range; readonly signal: Expression; readonly path: StringLiteral; readonly columns: readonly StringLiteral[]; readonly limit: Expression | null; readonly measure: Identifier | null; readonly operator: "<" | "<=" | null }
-  | Expect;
+  | Drive
+  | Run
+  | RecordSignals
+  | Vary
+  | Scatter
+  | Compare
+  | Expect
+  | Unreadable;
+
+export interface SetValue extends Described {
+  readonly kind: "set";
+  readonly range: Range;
+  readonly name: Reference;
+  readonly value: Expression;
+}
+
+export interface Drive extends Described {
+  readonly kind: "drive";
+  readonly range: Range;
+  readonly input: Reference;
+  readonly value: Expression;
+}
+
+export interface Run extends Described {
+  readonly kind: "run";
+  readonly range: Range;
+  readonly duration: Expression;
+  readonly tolerance: Expression | null;
+  readonly every: Expression | null;
+}
+
+export interface RecordSignals extends Described {
+  readonly kind: "record";
+  readonly range: Range;
+  readonly signals: readonly Expression[];
+}
+
+export interface Vary extends Described {
+  readonly kind: "vary";
+  readonly range: Range;
+  readonly name: Reference;
+  readonly low: Expression;
+  readonly high: Expression;
+  readonly steps: Expression;
+}
+
+export interface Scatter extends Described {
+  readonly kind: "scatter";
+  readonly range: Range;
+  readonly count: Expression;
+}
+
+/** `compare boat_speed with "data/run7.csv" columns "t", "v" rms < 0.03 m/s`. */
+export interface Compare extends Described {
+  readonly kind: "compare";
+  readonly range: Range;
+  readonly signal: Expression;
+  readonly path: StringLiteral;
+  readonly columns: readonly StringLiteral[];
+  readonly limit: {
+    readonly measure: Identifier;
+    readonly operator: "<" | "<=";
+    readonly value: Expression;
+  } | null;
+}
 
 /** `armature.f`, `cell[i-1].spring.q`, `u`: a path of names, each with its indices. */
 export interface Reference {
@@ -277,15 +398,47 @@ export interface Reference {
   readonly range: Range;
 }
 
+/**
+ * A chain of left-associative operators (`a + b - c`) nests to the left, up to 20,000 deep: walk it with a loop.
+ * Every other nesting is at most 200 deep.
+ */
 export type Expression =
   | { readonly kind: "number"; readonly value: number; readonly text: string; readonly range: Range }
-  | { readonly kind: "quantity"; readonly value: number; readonly text: string; readonly unit: UnitText; readonly range: Range }
+  | {
+      readonly kind: "quantity";
+      readonly value: number;
+      readonly text: string;
+      readonly unit: UnitText;
+      readonly range: Range;
+    }
   | { readonly kind: "string"; readonly value: string; readonly range: Range }
   | Reference
-  | { readonly kind: "unary"; readonly operator: "-" | "+" | "not"; readonly operand: Expression; readonly range: Range }
-  | { readonly kind: "binary"; readonly operator: BinaryOperator; readonly left: Expression; readonly right: Expression; readonly range: Range }
-  | { readonly kind: "call"; readonly name: Identifier; readonly arguments: readonly Expression[]; readonly range: Range }
-  | { readonly kind: "where"; readonly then: Expression; readonly condition: Expression; readonly otherwise: Expression; readonly range: Range }
+  | {
+      readonly kind: "unary";
+      readonly operator: "-" | "+" | "not";
+      readonly operand: Expression;
+      readonly range: Range;
+    }
+  | {
+      readonly kind: "binary";
+      readonly operator: BinaryOperator;
+      readonly left: Expression;
+      readonly right: Expression;
+      readonly range: Range;
+    }
+  | {
+      readonly kind: "call";
+      readonly name: Identifier;
+      readonly arguments: readonly Expression[];
+      readonly range: Range;
+    }
+  | {
+      readonly kind: "where";
+      readonly then: Expression;
+      readonly condition: Expression;
+      readonly otherwise: Expression;
+      readonly range: Range;
+    }
   | { readonly kind: "group"; readonly inner: Expression; readonly range: Range }
   /** What stands where an expression could not be read; a `syntax` finding says why. */
   | { readonly kind: "missing"; readonly range: Range };
