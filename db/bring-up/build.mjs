@@ -1,0 +1,81 @@
+import { spawnSync } from "node:child_process";
+import { createHash } from "node:crypto";
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+import { ROOT } from "./home.mjs";
+import { Said } from "./said.mjs";
+
+const SOURCES = ["app", "cli", "db", "grammar", "models-demo", "public"];
+const SINGLE = [
+  "package-lock.json",
+  "package.json",
+  "react-router.config.ts",
+  "tsconfig.json",
+  "vite.config.ts",
+];
+
+/**
+ * The three things that are built, and what each is built from; `npm run build` makes them all.
+ * @typedef {"application" | "cli" | "db"} Part
+ */
+
+/** @type {Record<Part, string[]>} */
+const COMMANDS = {
+  application: ["@react-router/dev/bin.js", "build"],
+  cli: ["vite/bin/vite.js", "build", "--mode", "cli"],
+  db: ["vite/bin/vite.js", "build", "--mode", "db"],
+};
+
+/**
+ * Builds the parts whose sources changed since they were last built here.
+ * @param {Part[]} parts
+ */
+export function buildWhenChanged(parts) {
+  const now = hashOfSources();
+  for (const part of parts) {
+    const mark = join(ROOT, "build", `${part}.sources`);
+    if (existsSync(mark) && readFileSync(mark, "utf8") === now) continue;
+    rmSync(mark, { force: true });
+    console.log(`Building ${part === "application" ? "the application" : part} …`);
+    build(part);
+    mkdirSync(join(ROOT, "build"), { recursive: true });
+    writeFileSync(mark, now);
+  }
+}
+
+/** @param {Part} part */
+function build(part) {
+  const [program, ...args] = COMMANDS[part];
+  const env = { ...process.env, NODE_ENV: "production" };
+  const run = spawnSync(process.execPath, [join(ROOT, "node_modules", String(program)), ...args], {
+    cwd: ROOT,
+    env,
+    encoding: "utf8",
+  });
+  if (run.status === 0) return;
+  console.error(`${run.stdout}${run.stderr}`);
+  throw new Said(`The build of ${part} failed; what it said stands above.`);
+}
+
+function hashOfSources() {
+  const hash = createHash("sha256");
+  for (const file of [...SOURCES.flatMap((folder) => filesIn(folder)), ...SINGLE]) {
+    hash
+      .update(`${file}\0`)
+      .update(readFileSync(join(ROOT, file)))
+      .update("\0");
+  }
+  return hash.digest("hex");
+}
+
+/**
+ * @param {string} folder
+ * @returns {string[]}
+ */
+function filesIn(folder) {
+  const entries = readdirSync(join(ROOT, folder), { withFileTypes: true, recursive: true });
+  return entries
+    .filter((entry) => entry.isFile())
+    .map((entry) => join(entry.parentPath ?? entry.path, entry.name).slice(ROOT.length + 1))
+    .sort();
+}
