@@ -5,8 +5,12 @@ import { join } from "node:path";
 import { ROOT } from "./home.mjs";
 import { Said } from "./said.mjs";
 
-const SOURCES = ["app", "cli", "db", "grammar", "models-demo", "public"];
-const SINGLE = [
+/**
+ * What is built, and what each part is built from; `npm run build` makes them all.
+ * @typedef {"application" | "cli" | "db"} Part
+ */
+
+const ALWAYS = [
   "package-lock.json",
   "package.json",
   "react-router.config.ts",
@@ -14,10 +18,12 @@ const SINGLE = [
   "vite.config.ts",
 ];
 
-/**
- * The three things that are built, and what each is built from; `npm run build` makes them all.
- * @typedef {"application" | "cli" | "db"} Part
- */
+/** @type {Record<Part, string[]>} */
+const SOURCES = {
+  application: ["app", "db", "grammar", "public"],
+  cli: ["cli", "grammar"],
+  db: ["db", "app", "grammar", "models-demo"],
+};
 
 /** @type {Record<Part, string[]>} */
 const COMMANDS = {
@@ -31,8 +37,8 @@ const COMMANDS = {
  * @param {Part[]} parts
  */
 export function buildWhenChanged(parts) {
-  const now = hashOfSources();
   for (const part of parts) {
+    const now = hashOf([...SOURCES[part].flatMap(filesIn), ...ALWAYS]);
     const mark = join(ROOT, "build", `${part}.sources`);
     if (existsSync(mark) && readFileSync(mark, "utf8") === now) continue;
     rmSync(mark, { force: true });
@@ -57,14 +63,14 @@ function build(part) {
   throw new Said(`The build of ${part} failed; what it said stands above.`);
 }
 
-function hashOfSources() {
+/** @param {string[]} files */
+function hashOf(files) {
   const hash = createHash("sha256");
-  for (const file of [...SOURCES.flatMap((folder) => filesIn(folder)), ...SINGLE]) {
+  for (const file of files)
     hash
       .update(`${file}\0`)
       .update(readFileSync(join(ROOT, file)))
       .update("\0");
-  }
   return hash.digest("hex");
 }
 
@@ -73,6 +79,7 @@ function hashOfSources() {
  * @returns {string[]}
  */
 function filesIn(folder) {
+  if (!existsSync(join(ROOT, folder))) return [];
   const entries = readdirSync(join(ROOT, folder), { withFileTypes: true, recursive: true });
   return entries
     .filter((entry) => entry.isFile())
