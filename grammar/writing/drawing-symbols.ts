@@ -1,0 +1,128 @@
+import type { DiagramNode } from "./diagram-model.ts";
+import {
+  around,
+  corners,
+  LETTERING,
+  type Path,
+  type Point,
+  type Shape,
+  SUBSCRIPT,
+  type Text,
+  textWidth,
+} from "./drawing.ts";
+
+/** Half the height of every symbol, half the width of a narrow one, and the ring of an open port. */
+export const SYMBOL_HALF = 10;
+const RING = 5;
+const FRAME = 5;
+
+/** Half of the box that bonds stop at: the symbol's, or its frame's where it is marked. */
+export function symbolHalf(node: DiagramNode): Point {
+  if (node.kind === "port") return { x: RING + 1, y: RING + 1 };
+  const [text, subscript] = split(node.symbol);
+  const width = textWidth(text, "symbol") + textWidth(subscript, "symbol") * SUBSCRIPT;
+  const frame = word(node) === null ? 0 : FRAME;
+  return { x: Math.max(width / 2, 7) + frame, y: SYMBOL_HALF + frame };
+}
+
+/** The word that says what the frame shows. */
+export function word(node: DiagramNode): "conflict" | "dependent" | null {
+  return node.conflict ? "conflict" : node.dependent ? "dependent" : null;
+}
+
+/** How wide a node is with what is written under it. */
+export function nodeWidth(node: DiagramNode): number {
+  const marked = word(node);
+  const lines = [textWidth(node.id, "name"), marked === null ? 0 : textWidth(marked, "word")];
+  return Math.max(2 * symbolHalf(node).x, ...lines);
+}
+
+/** Height from the symbol's middle to the end of what is written above or below it. */
+export function nodeReach(node: DiagramNode): number {
+  return (
+    symbolHalf(node).y + 3 + LETTERING.name.size + (word(node) === null ? 0 : LETTERING.word.size + 2) + 2
+  );
+}
+
+/** Where the name stands, relative to the symbol's middle: the baseline's point. */
+export interface NamePlace {
+  readonly at: Point;
+  readonly anchor: "start" | "middle" | "end";
+}
+
+export function nameAbove(node: DiagramNode): NamePlace {
+  return { at: { x: 0, y: -(symbolHalf(node).y + 5) }, anchor: "middle" };
+}
+
+export function nameBelow(node: DiagramNode): NamePlace {
+  return { at: { x: 0, y: symbolHalf(node).y + 3 + 0.8 * LETTERING.name.size }, anchor: "middle" };
+}
+
+/** The symbol in letters, as the trade sets it, with its frame if it is marked, its name and the mark's word. */
+export function nodeShapes(node: DiagramNode, centre: Point, name: NamePlace): Shape[] {
+  const shapes: Shape[] = node.kind === "port" ? [ring(centre)] : [symbol(node.symbol, centre)];
+  const marked = word(node);
+  if (marked === "dependent") shapes.push(dependentFrame(node, centre));
+  if (marked === "conflict") shapes.push(conflictFrame(node, centre));
+  const at = { x: centre.x + name.at.x, y: centre.y + name.at.y };
+  shapes.push({ kind: "text", lettering: "name", at, anchor: name.anchor, text: node.id, subscript: "" });
+  if (marked !== null) {
+    const line = LETTERING.word.size + 2;
+    const y = at.y + (name.at.y < 0 ? -line : line);
+    shapes.push({
+      kind: "text",
+      lettering: "word",
+      at: { x: at.x, y },
+      anchor: name.anchor,
+      text: marked,
+      subscript: "",
+    });
+  }
+  return shapes;
+}
+
+function symbol(letters: string, centre: Point): Text {
+  const [text, subscript] = split(letters);
+  const at = { x: centre.x, y: centre.y + 0.35 * LETTERING.symbol.size };
+  return { kind: "text", lettering: "symbol", at, anchor: "middle", text, subscript };
+}
+
+/** `Se` and `Sf` are an S with an index. */
+function split(letters: string): [text: string, subscript: string] {
+  return /S[ef]$/.test(letters) ? [letters.slice(0, -1), letters.slice(-1)] : [letters, ""];
+}
+
+function ring(centre: Point): Path {
+  const points = Array.from({ length: 16 }, (_, i) => {
+    const angle = (i * Math.PI) / 8;
+    return { x: centre.x + RING * Math.cos(angle), y: centre.y + RING * Math.sin(angle) };
+  });
+  return { kind: "path", pen: "open", points, closed: true };
+}
+
+/** A plain box; the pen dashes it. */
+function dependentFrame(node: DiagramNode, centre: Point): Path {
+  return { kind: "path", pen: "dependent", points: boxAround(node, centre), closed: true };
+}
+
+/** A box with its corners cut off: an octagon. */
+function conflictFrame(node: DiagramNode, centre: Point): Path {
+  const points = boxAround(node, centre).flatMap((corner) => {
+    const inX = Math.sign(centre.x - corner.x) * 6;
+    const inY = Math.sign(centre.y - corner.y) * 6;
+    const alongX = { x: corner.x + inX, y: corner.y };
+    const alongY = { x: corner.x, y: corner.y + inY };
+    return inX * inY > 0 ? [alongY, alongX] : [alongX, alongY];
+  });
+  return { kind: "path", pen: "conflict", points, closed: true };
+}
+
+function boxAround(node: DiagramNode, centre: Point): Point[] {
+  const half = symbolHalf(node);
+  return corners(
+    around([
+      { x: centre.x - half.x, y: centre.y - half.y },
+      { x: centre.x + half.x, y: centre.y + half.y },
+    ]),
+  );
+}
