@@ -12,7 +12,7 @@ import { Said } from "./said.mjs";
  */
 export async function serve({ url, port, host = "127.0.0.1", log = "ignore" }) {
   const program = join(ROOT, "node_modules", "@react-router", "serve", "bin.js");
-  const server = spawn(process.execPath, [program, join(ROOT, "build", "server", "index.js")], {
+  const server = spawn(process.execPath, [program, join(ROOT, "build", "app", "server", "index.js")], {
     cwd: ROOT,
     env: { ...process.env, DATABASE_URL: url, HOST: host, PORT: String(port), NODE_ENV: "production" },
     stdio: ["ignore", log, "inherit"],
