@@ -1,0 +1,86 @@
+import type { Expr } from "../symbolic/expression.ts";
+
+/**
+ * Names as the trade sets them: `R_a` → R_{a}, `rope.spring.q` → q_{\mathrm{rope.spring}}, `J1` → J_{1}. A name of
+ * one letter is a quantity and slanted, a longer one is a word and upright (ISO 80000-1, 7.2.1 and 7.2.2, from memory).
+ * Nothing but letters, digits and the few signs below reaches the LaTeX: a name cannot carry a command.
+ */
+export function symbolLatex(symbol: Expr): string {
+  switch (symbol.role) {
+    case "rate":
+    case "inputRate":
+      return dotted(symbol.name);
+    case "effort":
+      return withSubscripts("e", [pathLatex(symbol.name)]);
+    case "flow":
+      return withSubscripts("f", [pathLatex(symbol.name)]);
+    default:
+      return nameLatex(symbol.name);
+  }
+}
+
+export function nameLatex(name: string): string {
+  const { base, subscripts } = split(name);
+  return withSubscripts(letterLatex(base), subscripts);
+}
+
+/** The rate of a quantity: a dot over its letter, or over its word. */
+export function dotted(name: string): string {
+  const { base, subscripts } = split(name);
+  return withSubscripts(`\\dot{${letterLatex(base)}}`, subscripts);
+}
+
+/** The last part of a dotted name is the quantity; what it belongs to, and what follows `_`, stand below. */
+function split(name: string): { base: string; subscripts: string[] } {
+  const arrow = name.includes("->");
+  const dot = arrow ? name.lastIndexOf(".", name.length) : name.lastIndexOf(".");
+  const owner = dot === -1 ? "" : name.slice(0, dot);
+  const [base, ...below] = splitQuantity(name.slice(dot + 1));
+  const subscripts = below.map((part) => ([...part].length === 1 ? letterLatex(part) : upright(part)));
+  if (owner !== "") subscripts.push(pathLatex(owner));
+  return { base, subscripts };
+}
+
+/** `R_a` → R, a; `J1` → J, 1; `m_b_2` → m, b, 2; a word keeps its digits. */
+function splitQuantity(last: string): string[] {
+  const parts = last.split("_").filter((part) => part !== "");
+  if (parts.length === 0) return [last];
+  const [first, ...rest] = parts;
+  const numbered = /^(\p{L}\p{M}*)(\d+)$/u.exec(first);
+  return numbered === null ? parts : [numbered[1], numbered[2], ...rest];
+}
+
+function withSubscripts(base: string, subscripts: readonly string[]): string {
+  return subscripts.length === 0 ? base : `${base}_{${subscripts.join(",\\,")}}`;
+}
+
+function letterLatex(text: string): string {
+  const [only, ...more] = [...text];
+  if (more.length > 0 || only === undefined) return upright(text);
+  return GREEK[only] ?? (/^[a-zA-Z0-9]$/.test(only) ? only : upright(only));
+}
+
+function pathLatex(path: string): string {
+  return path.split("->").map(upright).join("\\to ");
+}
+
+function upright(text: string): string {
+  const safe = [...text].map(safeCharacter).join("");
+  return /^[\x20-\x7e]*$/.test(text) ? `\\mathrm{${safe}}` : `\\text{${safe}}`;
+}
+
+function safeCharacter(character: string): string {
+  if (/^[\p{L}\p{N}\p{M}.,[\]]$/u.test(character)) return character;
+  if (character === "_") return "\\_";
+  if (character === "#") return "\\#";
+  return "?";
+}
+
+const LETTERS =
+  "αalpha βbeta γgamma δdelta εvarepsilon ζzeta ηeta θtheta ιiota κkappa λlambda μmu νnu ξxi πpi ρrho σsigma τtau " +
+  "υupsilon φvarphi χchi ψpsi ωomega ϑvartheta ϕphi ϵepsilon ΓGamma ΔDelta ΘTheta ΛLambda ΞXi ΠPi ΣSigma ΦPhi ΨPsi ΩOmega";
+
+const GREEK: Readonly<Record<string, string>> = Object.assign(
+  Object.create(null),
+  Object.fromEntries(LETTERS.split(" ").map((entry) => [entry[0], `\\${entry.slice(1)} `])),
+);
