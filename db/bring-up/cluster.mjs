@@ -126,7 +126,7 @@ function initialise(folder, data) {
 function own(folder) {
   const owner = ownerOf(folder);
   if (owner !== null)
-    throw new Said(`The database in ${folder} is in use by process ${owner}: stop that one first.`);
+    throw new Said(`Process ${owner} already runs on the database in ${folder}: stop it first.`);
   writeFileSync(join(folder, "owner"), stamp(process.pid) ?? "");
 }
 

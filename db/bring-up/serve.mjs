@@ -12,10 +12,13 @@ import { Said } from "./said.mjs";
  */
 export async function serve({ url, port, host = "127.0.0.1", log = "ignore" }) {
   const program = join(ROOT, "node_modules", "@react-router", "serve", "bin.js");
-  const server = spawn(process.execPath, [program, join(ROOT, "build", "app", "server", "index.js")], {
+  const preload = new URL("end-with-starter.mjs", import.meta.url).href;
+  const build = join(ROOT, "build", "app", "server", "index.js");
+  const server = spawn(process.execPath, ["--import", preload, program, build], {
     cwd: ROOT,
     env: { ...process.env, DATABASE_URL: url, HOST: host, PORT: String(port), NODE_ENV: "production" },
-    stdio: ["ignore", log, "inherit"],
+    stdio: ["ignore", log, "inherit", "ipc"],
+    detached: true, // Ctrl-C reaches the starter alone, which stops the server before its database
   });
   /** @type {Promise<number>} */
   const ended = new Promise((resolve) => server.once("exit", (code) => resolve(code ?? 1)));
@@ -27,10 +30,10 @@ export async function serve({ url, port, host = "127.0.0.1", log = "ignore" }) {
   return {
     origin: `http://${host.includes(":") ? `[${host}]` : host}:${port}`,
     ended,
-    /** Lets requests under way end, for three seconds at most. */
+    /** No new requests from now on; those under way have a second. */
     async stop() {
       server.kill("SIGTERM");
-      const late = setTimeout(() => server.kill("SIGKILL"), 3000);
+      const late = setTimeout(() => server.kill("SIGKILL"), 1000);
       await ended;
       clearTimeout(late);
     },
