@@ -1,9 +1,16 @@
 import { refuse } from "../session/refusal.server.ts";
-import { type Actor, requirePermission, type SetAddress } from "../session/standing.server.ts";
+import {
+  type Actor,
+  headingOf,
+  keyOf,
+  requirePermission,
+  type SetAddress,
+  type SetHeading,
+} from "../session/standing.server.ts";
 import { type CommitLine, lineOfCommits, readCommitRow } from "../storage/history.server.ts";
 import { mainBranch, readRef } from "../storage/refs.server.ts";
 
-export interface HistoryPage {
+export interface HistoryPage extends SetHeading {
   commits: CommitLine[];
   /** To be given as `before` for the older ones; null when these were the last. */
   next: string | null;
@@ -16,8 +23,8 @@ export async function listHistory(
   actor: Actor,
   { path, before, limit, ...address }: SetAddress & { path?: string; before?: string; limit: number },
 ): Promise<HistoryPage> {
-  const { team, set } = await requirePermission(actor, address, "set.read");
-  const key = { teamId: team.id, setId: set.id };
+  const standing = await requirePermission(actor, address, "set.read");
+  const key = keyOf(standing);
   let start: string | null;
   if (before === undefined) start = await readRef(key, mainBranch);
   else {
@@ -25,9 +32,13 @@ export async function listHistory(
     if (!commit) refuse(404, "This model set has no such version.");
     start = commit.parents[0] ?? null;
   }
-  if (start === null) return { commits: [], next: null };
+  if (start === null) return { ...headingOf(standing), commits: [], next: null };
   // One more than asked for tells whether there are older ones.
   const commits = await lineOfCommits(key, start, { path, limit: limit + 1 });
   const shown = commits.slice(0, limit);
-  return { commits: shown, next: commits.length > limit ? (shown.at(-1)?.oid ?? null) : null };
+  return {
+    ...headingOf(standing),
+    commits: shown,
+    next: commits.length > limit ? (shown.at(-1)?.oid ?? null) : null,
+  };
 }

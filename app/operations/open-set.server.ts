@@ -1,16 +1,18 @@
-import { GitObject, type Role } from "../../db/models/index.ts";
-import type { Permission } from "../session/permissions.server.ts";
-import { type Actor, requirePermission, type SetAddress } from "../session/standing.server.ts";
+import { GitObject } from "../../db/models/index.ts";
+import {
+  type Actor,
+  headingOf,
+  keyOf,
+  requirePermission,
+  type SetAddress,
+  type SetHeading,
+} from "../session/standing.server.ts";
 import { type CommitLine, lineOfCommits, readCommitRow } from "../storage/history.server.ts";
 import { ObjectShelf, type SetKey } from "../storage/object-shelf.server.ts";
 import { mainBranch, readRef } from "../storage/refs.server.ts";
 import { readTree } from "../storage/tree.server.ts";
 
-export interface OpenedSet {
-  team: { slug: string; name: string };
-  set: { slug: string; name: string; description: string };
-  role: Role;
-  may: Permission[];
+export interface OpenedSet extends SetHeading {
   /** The newest commit of the main branch; null while the set is empty. */
   head: string | null;
   files: { path: string; size: number }[];
@@ -20,15 +22,12 @@ export interface OpenedSet {
 
 /** A model set as it stands on its main branch. */
 export async function openSet(actor: Actor, address: SetAddress): Promise<OpenedSet> {
-  const { team, set, role, may } = await requirePermission(actor, address, "set.read");
-  const key = { teamId: team.id, setId: set.id };
+  const standing = await requirePermission(actor, address, "set.read");
+  const key = keyOf(standing);
   const head = await readRef(key, mainBranch);
   const commit = head && (await readCommitRow(key, head));
   return {
-    team: { slug: team.slug, name: team.name },
-    set: { slug: set.slug, name: set.name, description: set.description },
-    role,
-    may: [...may],
+    ...headingOf(standing),
     head,
     files: commit ? await filesOf(key, commit.tree) : [],
     recent: head ? await lineOfCommits(key, head, { limit: 10 }) : [],

@@ -1,5 +1,12 @@
 import { refuse } from "../session/refusal.server.ts";
-import { type Actor, requirePermission, type SetAddress } from "../session/standing.server.ts";
+import {
+  type Actor,
+  headingOf,
+  keyOf,
+  requirePermission,
+  type SetAddress,
+  type SetHeading,
+} from "../session/standing.server.ts";
 import { type CommitLine, commitLine, readCommitRow } from "../storage/history.server.ts";
 import { ObjectShelf } from "../storage/object-shelf.server.ts";
 import { changedPaths, readTexts, readTree } from "../storage/tree.server.ts";
@@ -12,7 +19,7 @@ export interface FileChange {
   after: string | null;
 }
 
-export interface CommitWithChanges {
+export interface CommitWithChanges extends SetHeading {
   commit: CommitLine;
   parent: string | null;
   changes: FileChange[];
@@ -23,8 +30,8 @@ export async function readCommit(
   actor: Actor,
   { commit: oid, ...address }: SetAddress & { commit: string },
 ): Promise<CommitWithChanges> {
-  const { team, set } = await requirePermission(actor, address, "set.read");
-  const key = { teamId: team.id, setId: set.id };
+  const standing = await requirePermission(actor, address, "set.read");
+  const key = keyOf(standing);
   const commit = await readCommitRow(key, oid);
   if (!commit) refuse(404, "This model set has no such version.");
   const parent = commit.parents[0] ?? null;
@@ -39,6 +46,7 @@ export async function readCommit(
   const texts = await readTexts(shelf, blobs);
   const textAt = (tree: ReadonlyMap<string, string>, path: string) => texts.get(tree.get(path) ?? "") ?? null;
   return {
+    ...headingOf(standing),
     commit: commitLine(commit),
     parent,
     changes: paths.map((path) => ({ path, before: textAt(before, path), after: textAt(after, path) })),

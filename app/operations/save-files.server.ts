@@ -2,7 +2,7 @@ import type { Transaction } from "sequelize";
 import { database } from "../../db/connect.ts";
 import { type Commit, JournalEntry } from "../../db/models/index.ts";
 import { refuse } from "../session/refusal.server.ts";
-import { type Actor, requirePermission, type SetAddress } from "../session/standing.server.ts";
+import { type Actor, keyOf, requirePermission, type SetAddress } from "../session/standing.server.ts";
 import { storeCommit } from "../storage/commit.server.ts";
 import { type CommitLine, commitLine, readCommitRow } from "../storage/history.server.ts";
 import { ObjectShelf, type SetKey } from "../storage/object-shelf.server.ts";
@@ -46,8 +46,8 @@ interface Version {
  * changed are taken from that side; a file that both changed differently stops the save.
  */
 export async function saveFiles(actor: Actor, request: SaveRequest): Promise<SaveResult> {
-  const { person, team, set } = await requirePermission(actor, request, "set.write");
-  const key = { teamId: team.id, setId: set.id };
+  const standing = await requirePermission(actor, request, "set.write");
+  const key = keyOf(standing);
   const message = request.message.replaceAll("\r\n", "\n").trim();
   const ref = `refs/heads/${request.branch}`;
 
@@ -80,7 +80,7 @@ export async function saveFiles(actor: Actor, request: SaveRequest): Promise<Sav
     const commit = await storeCommit(shelf, {
       parent: head,
       files,
-      author: person,
+      author: standing.person,
       time: new Date(),
       message,
     });

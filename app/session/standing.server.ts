@@ -1,6 +1,7 @@
 import { QueryTypes } from "sequelize";
 import { database } from "../../db/connect.ts";
 import type { Role } from "../../db/models/index.ts";
+import type { SetKey } from "../storage/object-shelf.server.ts";
 import { type Permission, permissionsOf } from "./permissions.server.ts";
 import { refuse } from "./refusal.server.ts";
 
@@ -54,4 +55,26 @@ export async function requirePermission(
     role,
     may,
   };
+}
+
+/** What a page says about where it is. */
+export interface SetHeading {
+  team: { slug: string; name: string };
+  set: { slug: string; name: string; description: string };
+  role: Role;
+  may: readonly Permission[];
+}
+
+export function headingOf({ team, set, role, may }: Standing): SetHeading {
+  return {
+    team: { slug: team.slug, name: team.name },
+    set: { slug: set.slug, name: set.name, description: set.description },
+    role,
+    may,
+  };
+}
+
+/** Whose objects, refs and commits are meant. */
+export function keyOf({ team, set }: Standing): SetKey {
+  return { teamId: team.id, setId: set.id };
 }

@@ -1,8 +1,8 @@
-import { beforeAll, describe, expect, test } from "vitest";
+import { Client } from "pg";
+import { beforeAll, describe, expect, test, vi } from "vitest";
 import { listHistory } from "../../app/operations/list-history.server.ts";
 import { readFiles } from "../../app/operations/read-files.server.ts";
 import { saveFiles } from "../../app/operations/save-files.server.ts";
-import { database } from "../../db/connect.ts";
 import { Commit, GitObject, JournalEntry } from "../../db/models/index.ts";
 import { testDatabase } from "../support/database.ts";
 import { newTeam } from "./people.ts";
@@ -126,13 +126,10 @@ describe("a save", () => {
   test("takes at most twelve statements, folder and all", async () => {
     const world = await newTeam("modeller");
     const head = await saved(world, null, { "parts/rope.wright": "rope" });
-    const statements: string[] = [];
-    database.options.logging = (sql) => statements.push(sql);
-    try {
-      await saved(world, head, { "parts/rope.wright": "rope 2" });
-    } finally {
-      database.options.logging = false;
-    }
+    const query = vi.spyOn(Client.prototype, "query");
+    await saved(world, head, { "parts/rope.wright": "rope 2" });
+    const statements = query.mock.calls.map(([statement]) => String(statement));
+    query.mockRestore();
     expect(statements.length, statements.join("\n")).toBeLessThanOrEqual(12);
   });
 

@@ -1,0 +1,5 @@
+import { openSet } from "../../operations/open-set.server.ts";
+import { signedIn } from "../../session/door.server.ts";
+import type { Route } from "./+types/route.ts";
+
+export const loader = signedIn((actor, { params }: Route.LoaderArgs) => openSet(actor, params));

@@ -1,0 +1,1 @@
+export { action, loader } from "./sign-out.server.ts";

@@ -1,0 +1,1 @@
+export { loader } from "./worker.server.ts";
