@@ -1,9 +1,10 @@
 import { applyFunction } from "./evaluate.ts";
-import { fractionOf } from "./exact.ts";
+import { divide, fractionOf } from "./exact.ts";
 import type { FunctionName } from "./expression.ts";
 import { coefficientOf, type Node } from "./node.ts";
 import { compareFactors } from "./order.ts";
 import type { Pool } from "./pool.ts";
+import { contentOf, scaleSum } from "./sum.ts";
 
 /** f(-x) = -f(x). */
 const ODD: ReadonlySet<FunctionName> = new Set(["sin", "tan", "asin", "atan", "sinh", "tanh", "sign"]);
@@ -41,8 +42,11 @@ function modulus(pool: Pool, x: Node): Node {
   if (x.op === "product") return pool.product(x.args.map((factor) => pool.call("abs", factor))) as Node;
   if (x.op === "power" && x.args[1].op === "number")
     return pool.power(modulus(pool, x.args[0]), x.args[1]) as Node;
-  const turned = startsNegative(x) ? (pool.negate(x) as Node) : x;
-  return turned.op === "number" ? turned : pool.intern("call", [turned], 0, "abs", null);
+  if (x.op === "number") return pool.number(Math.abs(x.value)) as Node;
+  const content = x.op === "sum" ? contentOf(x) : 1;
+  const inner = content === 1 ? x : scaleSum(pool, divide(1, content), x);
+  const value = inner.nonNegative ? inner : pool.intern("call", [inner], 0, "abs", null);
+  return pool.product(pool.number(Math.abs(content)), value) as Node;
 }
 
 /** A positive number may leave a sign; what is merely not negative may not, since it may be 0. */

@@ -3,7 +3,7 @@ import type { Node } from "./node.ts";
 import { compareFactors } from "./order.ts";
 import type { Pool } from "./pool.ts";
 import { canonicalPower } from "./power.ts";
-import { canonicalSum, contentOf, scaleSum } from "./sum.ts";
+import { canonicalSum, contentOf, FLATTEN_UP_TO, scaleSum } from "./sum.ts";
 
 interface Collected {
   coefficient: number;
@@ -24,7 +24,8 @@ export function canonicalProduct(pool: Pool, args: readonly Node[]): Node {
   }
   const into: Collected = { coefficient: 1, bases: [], exponents: [] };
   for (const arg of args) {
-    if (arg.op === "product") for (const factor of arg.args) collect(pool, into, factor);
+    if (arg.op === "product" && arg.args.length <= FLATTEN_UP_TO)
+      for (const factor of arg.args) collect(pool, into, factor);
     else collect(pool, into, arg);
   }
   if (into.coefficient === 0) return pool.zero;

@@ -4,10 +4,10 @@ import { compareTerms } from "./order.ts";
 import type { Pool } from "./pool.ts";
 
 /**
- * A nested sum longer than this stays one term: a chain of ten thousand sums, each longer by one than the next,
- * would otherwise take time and memory with the square of its length.
+ * A nested sum (or product) longer than this stays one term (or factor): a chain of ten thousand sums, each longer
+ * by one than the next, would otherwise take time and memory with the square of its length.
  */
-const FLATTEN_UP_TO = 400;
+export const FLATTEN_UP_TO = 128;
 /** Up to this many terms, looking through a list is cheaper than a map. */
 const SHORT = 10;
 
