@@ -1,20 +1,23 @@
-import type { QueryInterface, Sequelize } from "sequelize";
 import { SequelizeStorage, Umzug } from "umzug";
+import { database } from "./connect.ts";
+import { inTurn } from "./in-turn.ts";
 import { migrations } from "./migrations/index.ts";
 
-/**
- * Brings the tables up to date and returns the names of the migrations that ran. One process at a time does so:
- * the others wait for the lock, then find nothing left to do. A migration is one query, hence all of it or nothing.
- */
-export function migrate(database: Sequelize): Promise<string[]> {
-  return database.transaction(async (transaction) => {
-    await database.query("SELECT pg_advisory_xact_lock(hashtext('bondwright migrations'))", { transaction });
-    const umzug = new Umzug<QueryInterface>({
-      migrations,
-      context: database.getQueryInterface(),
-      storage: new SequelizeStorage({ sequelize: database, tableName: "migrations" }),
-      logger: undefined,
-    });
-    return (await umzug.up()).map(({ name }) => name);
+function migrator() {
+  return new Umzug({
+    migrations,
+    context: database.getQueryInterface(),
+    storage: new SequelizeStorage({ sequelize: database, tableName: "applied_migrations" }),
+    logger: undefined,
   });
+}
+
+/** Applies what is missing; returns the names of what was applied. */
+export function migrate(): Promise<string[]> {
+  return inTurn(async () => (await migrator().up()).map(({ name }) => name));
+}
+
+/** Takes everything back: the database is as it was before the first migration. */
+export function migrateDown(): Promise<string[]> {
+  return inTurn(async () => (await migrator().down({ to: 0 })).map(({ name }) => name));
 }
