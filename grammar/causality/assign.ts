@@ -96,7 +96,8 @@ class Assignment {
 
   #chooseResistors(sites: readonly ResistorSite[]): void {
     const free = sites.filter((site) => this.#isOpen(site.node.ports[site.port].bond));
-    const stubborn = new Set(free.filter((site) => !turns(this.#graph, site)));
+    const turns = turning(this.#graph);
+    const stubborn = new Set(free.filter((site) => !turns(site)));
     const inTurn = [...stubborn, ...free.filter((site) => !stubborn.has(site))];
     for (const site of inTurn) {
       const rule = stubborn.has(site) ? "law-not-invertible" : "chosen-resistor";

@@ -5,6 +5,7 @@ import {
   type FlatNode,
   type FlatPort,
 } from "../resolve/graph.ts";
+import type { Expr } from "../symbolic/expression.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { turnRound } from "../symbolic/turn.ts";
 import type { Step } from "./propagation.ts";
@@ -126,10 +127,13 @@ export function resistorSites(nodes: readonly FlatNode[]): ResistorSite[] {
   return sites;
 }
 
-/** Can the resistor's law be solved for its other variable (notation.md, "What can be turned round")? */
-export function turns(graph: FlatGraph, site: ResistorSite): boolean {
-  if (site.law === null) return true;
-  const { effort, flow } = graph.bonds[site.node.ports[site.port].bond];
-  const [own, left] = site.law.variable === "e" ? [flow, effort] : [effort, flow];
-  return turnRound(graph.pool, site.law.right, own, left) !== null;
+/** Tells whether a resistor's law can be solved for its other variable, by the rules of the notation. */
+export function turning(graph: FlatGraph): (site: ResistorSite) => boolean {
+  const values = new Map<Expr, number>(graph.parameters.map(({ symbol, value }) => [symbol, value]));
+  return ({ law, node, port }) => {
+    if (law === null) return true;
+    const { effort, flow } = graph.bonds[node.ports[port].bond];
+    const [own, left] = law.variable === "e" ? [flow, effort] : [effort, flow];
+    return turnRound(graph.pool, law.right, own, left, (symbol) => values.get(symbol)) !== null;
+  };
 }
