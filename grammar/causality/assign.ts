@@ -7,7 +7,7 @@ import {
   resistorSites,
   type StoreSite,
   storeSites,
-  turns,
+  turning,
 } from "./elements.ts";
 import { type Clash, opposite, Propagation, type Step } from "./propagation.ts";
 import type { CausalGraph, Reason, Stroke } from "./strokes.ts";
