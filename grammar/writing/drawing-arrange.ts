@@ -1,5 +1,6 @@
 import type { DiagramModel } from "./diagram-model.ts";
 import { LETTERING, type Point } from "./drawing.ts";
+import { joinsDomains } from "./drawing-domains.ts";
 import { findSpine, type Hanging, type Link, type Spine } from "./drawing-spine.ts";
 import { type NamePlace, nameAbove, nameBelow, nodeReach, nodeWidth, symbolHalf } from "./drawing-symbols.ts";
 
@@ -34,11 +35,13 @@ export interface Arrangement {
 }
 
 /** From a hub's middle to the middle of what hangs on it. */
-const REACH = 62;
-/** Between what stands side by side, and around a block. */
-const GAP = 14;
+const REACH = 56;
+/** Between what stands side by side; half of it is kept clear around a block. */
+const GAP = 12;
 /** Between bonds that leave a hub on one side. */
 export const LANE = 14;
+/** Of a domain's name, what does not fit between two blocks anyway. */
+const LABEL_ROOM = 24;
 
 export function arrange(model: DiagramModel): Arrangement {
   const spine = findSpine(model);
@@ -47,7 +50,16 @@ export function arrange(model: DiagramModel): Arrangement {
     lanes.far[near] += 1;
     lanes.near[far] += 1;
   }
-  const blocks = spine.hubs.map((hub) => arrangeHub(model, spine, hub, lanes.near[hub], lanes.far[hub]));
+  const joining = joinsDomains(model);
+  const blocks = spine.hubs.map((hub): Block => {
+    const [before, after] = [lanes.near[hub], lanes.far[hub]];
+    const members = arrangeHub(model, spine, hub, before, after);
+    return {
+      hub,
+      members,
+      extent: extentOf(model, members, liftOf(before, after), joining.has(model.nodes[hub].id)),
+    };
+  });
   return { blocks, links: spine.links };
 }
 
@@ -63,7 +75,7 @@ function arrangeHub(
   hub: number,
   lanesBefore: number,
   lanesAfter: number,
-): Block {
+): Member[] {
   const node = model.nodes[hub];
   const half = symbolHalf(node);
   const members: Member[] = [];
@@ -92,12 +104,16 @@ function arrangeHub(
     narrower(rows, item, "down").push(item);
   for (const item of leaves.map((leaf) => leafItem(model, leaf))) narrower(rows, item, "up").push(item);
 
-  const lift = (Math.max(lanesBefore, lanesAfter, 1) - 1) * (LANE / 2);
+  const lift = liftOf(lanesBefore, lanesAfter);
   const up = placeRow(rows.up, -1, lift);
   const down = placeRow(rows.down, 1, lift);
-  const name = hubName(model, hub, up.members, down.members, lift);
-  const all = [{ node: hub, at: { x: 0, y: 0 }, name }, ...members, ...up.members, ...down.members];
-  return { hub, members: all, extent: extentOf(model, all, lift) };
+  const name = hubName(model, hub, up, down, lift);
+  return [{ node: hub, at: { x: 0, y: 0 }, name }, ...members, ...up, ...down];
+}
+
+/** How far the outermost lane is from the hub's level. */
+function liftOf(lanesBefore: number, lanesAfter: number): number {
+  return (Math.max(lanesBefore, lanesAfter, 1) - 1) * (LANE / 2);
 }
 
 function narrower(rows: { up: Item[]; down: Item[] }, item: Item, preferred: "up" | "down"): Item[] {
@@ -112,7 +128,7 @@ function rowWidth(row: readonly Item[]): number {
 }
 
 /** A row is set farther off the longer it is, so that no bond to its end runs through its middle. */
-function placeRow(row: readonly Item[], side: -1 | 1, lift: number): { readonly members: Member[] } {
+function placeRow(row: readonly Item[], side: -1 | 1, lift: number): Member[] {
   const y = side * Math.max(REACH, 12 * row.length + 26, lift + 48);
   const width = rowWidth(row) - GAP;
   let x = -width / 2;
@@ -121,7 +137,7 @@ function placeRow(row: readonly Item[], side: -1 | 1, lift: number): { readonly 
     members.push(...item.place({ x: x + item.width / 2, y }, side));
     x += item.width + GAP;
   }
-  return { members };
+  return members;
 }
 
 function leafItem(model: DiagramModel, { node }: Hanging): Item {
@@ -183,9 +199,11 @@ function hubName(
   return { at: { x: 11 + height * (above ? flattest(up) : flattest(down)), y: baseline }, anchor: "start" };
 }
 
-function extentOf(model: DiagramModel, members: readonly Member[], lift: number): Extent {
-  const level = lift + symbolHalf(model.nodes[members[0].node]).y;
-  const extent = { left: 0, right: 0, up: level, down: level };
+function extentOf(model: DiagramModel, members: readonly Member[], lift: number, joins: boolean): Extent {
+  const hub = symbolHalf(model.nodes[members[0].node]);
+  // What joins two domains has their names written over its bonds.
+  const aside = hub.x + (joins ? LABEL_ROOM : 0);
+  const extent = { left: aside, right: aside, up: lift + hub.y, down: lift + hub.y };
   for (const { node, at, name } of members) {
     const own = model.nodes[node];
     const half = nodeWidth(own) / 2;

@@ -48,7 +48,7 @@ const OPTIONS = {
   "elk.spacing.componentComponent": "40",
   "elk.spacing.edgeNode": "16",
   "elk.spacing.edgeEdge": String(LANE),
-  "elk.layered.spacing.nodeNodeBetweenLayers": "40",
+  "elk.layered.spacing.nodeNodeBetweenLayers": "28",
   "elk.layered.spacing.edgeNodeBetweenLayers": "14",
   "elk.layered.spacing.edgeEdgeBetweenLayers": String(LANE),
   // The order of the text settles what the theory of layout leaves open: the same text, the same drawing.

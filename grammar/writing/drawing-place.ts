@@ -2,6 +2,7 @@ import type { DiagramBond, DiagramModel, DiagramNode } from "./diagram-model.ts"
 import { around, type Box, boxOf, corners, type Drawing, type DrawnPart, type Point } from "./drawing.ts";
 import { type Arrangement, arrange, type Member } from "./drawing-arrange.ts";
 import { bondShapes, direction, middleOf } from "./drawing-bonds.ts";
+import { domainChanges } from "./drawing-domains.ts";
 import type { LayoutAnswer } from "./drawing-layout.ts";
 import { nodeShapes, symbolHalf, word } from "./drawing-symbols.ts";
 
@@ -125,24 +126,6 @@ function withoutStraightCorners(line: readonly Point[]): Point[] {
     const after = direction(point, line[i + 1]);
     return Math.abs(before.x * after.y - before.y * after.x) > 1e-3;
   });
-}
-
-/** By bond: the end at which something joins two domains; there a reader wants to see which is which. */
-function domainChanges(model: DiagramModel): Map<number, "from" | "to" | "both"> {
-  const domains = new Map<string, Set<string>>();
-  for (const { from, to, domain } of model.bonds) {
-    for (const end of [from, to]) domains.set(end, (domains.get(end) ?? new Set()).add(domain));
-  }
-  const joining = new Set<string>();
-  for (const { id, kind } of model.nodes) {
-    if ((domains.get(id)?.size ?? 0) > 1 && kind !== "0" && kind !== "1") joining.add(id);
-  }
-  const changes = new Map<number, "from" | "to" | "both">();
-  for (const [i, { from, to }] of model.bonds.entries()) {
-    if (joining.has(from)) changes.set(i, joining.has(to) ? "both" : "from");
-    else if (joining.has(to)) changes.set(i, "to");
-  }
-  return changes;
 }
 
 /** The shift, among those that keep some node in place, that moves the median of the others least. */

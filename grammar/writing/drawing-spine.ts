@@ -88,8 +88,8 @@ function graphOf(model: DiagramModel): Graph {
 
 /**
  * Directs the bonds of the spine by distance from a root, so that a chain is drawn as a chain whatever way its power
- * counts. The root of a connected part is an end with a source; else the far end as seen from its first node; where
- * there is no end, the first node with a source.
+ * counts. The root of a connected part is an end with a source; else one of the two ends farthest from each other, the
+ * first in the text; where there is no end, the first node with a source.
  */
 function linksOutwards(
   model: DiagramModel,
@@ -109,10 +109,15 @@ function linksOutwards(
   for (const first of hubs) {
     if (order[first] !== -1) continue;
     const part = sweep(graph, inSpine, first);
+    const isEnd = (hub: number) => degree(hub) <= 1;
     const inText = [...part].sort((a, b) => a - b);
-    const ends = inText.filter((hub) => degree(hub) <= 1);
-    const farthest = [...part].reverse().find((hub) => degree(hub) <= 1);
-    const root = ends.find(sourced) ?? farthest ?? inText.find(sourced) ?? first;
+    const farEnd = part.findLast(isEnd);
+    const otherEnd = farEnd === undefined ? undefined : sweep(graph, inSpine, farEnd).findLast(isEnd);
+    const root =
+      inText.filter(isEnd).find(sourced) ??
+      inText.find((hub) => hub === farEnd || hub === otherEnd) ??
+      inText.find(sourced) ??
+      first;
     for (const hub of sweep(graph, inSpine, root)) {
       order[hub] = reached;
       reached += 1;

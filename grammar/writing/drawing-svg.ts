@@ -36,30 +36,21 @@ export const PENS: Record<Pen, PenStyle> = {
   open: { width: 1.5, colour: "ink" },
 };
 
-export const LETTERS: Record<
-  Lettering,
-  { readonly family: string; readonly colour: keyof Theme; readonly style: string }
-> = {
-  symbol: {
-    family: "'Source Sans 3 Variable', 'Source Sans 3', Arial, sans-serif",
-    colour: "ink",
-    style: "font-weight:600",
-  },
-  name: {
-    family: "'Source Code Pro', 'DejaVu Sans Mono', monospace",
-    colour: "ink",
-    style: "font-weight:400",
-  },
-  domain: {
-    family: "'Source Sans 3 Variable', 'Source Sans 3', Arial, sans-serif",
-    colour: "faint",
-    style: "font-style:italic",
-  },
-  word: {
-    family: "'Source Sans 3 Variable', 'Source Sans 3', Arial, sans-serif",
-    colour: "ink",
-    style: "font-weight:600",
-  },
+interface LetterStyle {
+  readonly family: string;
+  readonly colour: keyof Theme;
+  readonly weight: number;
+  readonly slant: "normal" | "italic";
+}
+
+const PROSE = "'Source Sans 3 Variable', 'Source Sans 3', Arial, sans-serif";
+const NOTATION = "'Source Code Pro', 'DejaVu Sans Mono', monospace";
+
+export const LETTERS: Record<Lettering, LetterStyle> = {
+  symbol: { family: PROSE, colour: "ink", weight: 600, slant: "normal" },
+  name: { family: NOTATION, colour: "ink", weight: 400, slant: "normal" },
+  domain: { family: PROSE, colour: "faint", weight: 400, slant: "italic" },
+  word: { family: PROSE, colour: "ink", weight: 600, slant: "normal" },
 };
 
 /**
@@ -89,7 +80,7 @@ function element(shape: Shape, theme: Theme): string {
     const dashed = dash === undefined ? "" : ` stroke-dasharray="${dash}"`;
     return `<path d="${pathData(shape)}" fill="none" stroke="${theme[colour]}" stroke-width="${width}"${dashed}/>`;
   }
-  const { family, colour, style } = LETTERS[shape.lettering];
+  const { family, colour, weight, slant } = LETTERS[shape.lettering];
   const { size } = LETTERING[shape.lettering];
   const subscript =
     shape.subscript === ""
@@ -97,7 +88,7 @@ function element(shape: Shape, theme: Theme): string {
       : `<tspan dy="${n(size * 0.22)}" font-size="${n(size * SUBSCRIPT)}">${escaped(shape.subscript)}</tspan>`;
   return (
     `<text x="${n(shape.at.x)}" y="${n(shape.at.y)}" text-anchor="${shape.anchor}" font-family="${family}" ` +
-    `font-size="${size}" style="${style}" fill="${theme[colour]}">${escaped(shape.text)}${subscript}</text>`
+    `font-size="${size}" font-weight="${weight}" font-style="${slant}" fill="${theme[colour]}">${escaped(shape.text)}${subscript}</text>`
   );
 }
 

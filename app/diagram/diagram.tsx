@@ -1,0 +1,54 @@
+import { useCallback, useMemo, useRef, useState } from "react";
+import type { Span } from "../../grammar/source/span.ts";
+import type { DiagramModel } from "../../grammar/writing/diagram-model.ts";
+import { DiagramTable } from "./diagram-table.tsx";
+import { DrawingView } from "./drawing-view.tsx";
+import type { Part } from "./nearest.ts";
+
+export interface DiagramProps {
+  readonly model: DiagramModel;
+  /** Names of nodes and bonds that are lit. */
+  readonly lit: { readonly nodes: readonly string[]; readonly bonds: readonly string[] };
+  readonly onLight: (what: { readonly node?: string; readonly bond?: string } | null) => void;
+  readonly onOpen: (span: Span) => void;
+}
+
+/** The bond graph of a system as the trade draws it, or the table that says the same. */
+export function Diagram({ model, lit, onLight, onOpen }: DiagramProps) {
+  const [asTable, setAsTable] = useState(false);
+  const litNodes = useMemo(() => new Set(lit.nodes), [lit.nodes]);
+  const litBonds = useMemo(() => new Set(lit.bonds), [lit.bonds]);
+  const isLit = useCallback(
+    ({ kind, id }: Part) => (kind === "node" ? litNodes : litBonds).has(id),
+    [litNodes, litBonds],
+  );
+  // What the page hands in may be new at every rendering; the parts of the drawing must not be drawn anew for that.
+  const latest = useRef({ model, onLight, onOpen });
+  latest.current = { model, onLight, onOpen };
+  const onPoint = useCallback((part: Part | null) => {
+    latest.current.onLight(part === null ? null : { [part.kind]: part.id });
+  }, []);
+  const openPart = useCallback(({ kind, id }: Part) => {
+    const { model, onOpen } = latest.current;
+    const found = (kind === "node" ? model.nodes : model.bonds).find((one) => one.id === id);
+    if (found !== undefined) onOpen(found.span);
+  }, []);
+  const asTableButton = (
+    <button type="button" className="button" aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
+      As a table
+    </button>
+  );
+  if (asTable) {
+    return (
+      <div className="diagram">
+        <p className="no-print diagram-tools">{asTableButton}</p>
+        <DiagramTable model={model} isLit={isLit} onPoint={onPoint} onOpen={onOpen} />
+      </div>
+    );
+  }
+  return (
+    <DrawingView model={model} isLit={isLit} onPoint={onPoint} openPart={openPart}>
+      {asTableButton}
+    </DrawingView>
+  );
+}
