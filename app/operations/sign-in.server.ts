@@ -7,7 +7,7 @@ import { openSession } from "../session/token.server.ts";
 export type SignInResult =
   | { kind: "signed-in"; token: string; user: { id: string; name: string; email: string } }
   | { kind: "refused"; message: string }
-  | { kind: "too-many-tries"; message: string; retryAfterSeconds: number };
+  | { kind: "too-many-tries"; message: string };
 
 /** Wrong tries that are evaluated for one account before it rests, and for how long it rests. */
 const triesOfAccount = 20;
@@ -42,7 +42,7 @@ export async function signIn({
   if (rest > 0) {
     const minutes = Math.ceil(rest / 60);
     const message = `Too many wrong tries for this account. It can be tried again in ${minutes} min.`;
-    return { kind: "too-many-tries", message, retryAfterSeconds: rest };
+    return { kind: "too-many-tries", message };
   }
   const user = await User.findOne({ where: { email: account } });
   const known = user && !user.disabledAt ? user : null;

@@ -63,10 +63,13 @@ function withDoor<A extends Asked, R>(
 
 /** Faults of the place where the data lies have their own words; the rest is answered as a fault of ours. */
 function explain(fault: Error, { request, url, context }: Asked): void {
-  const requestId = context.get(requestIdContext);
-  log.error({ requestId, method: request.method, path: url.pathname, err: fault }, "request failed");
-  if (databaseUnavailable(fault))
+  const event = { requestId: context.get(requestIdContext), method: request.method, path: url.pathname };
+  const { name, message, stack } = fault;
+  if (databaseUnavailable(fault)) {
+    log.warn({ ...event, name, message }, "database unavailable");
     refuse(503, "The database cannot be reached at the moment. Nothing was changed; try again in a minute.");
+  }
+  log.error({ ...event, name, message, stack }, "request failed");
   if (fault instanceof DamagedObject)
     refuse(
       500,

@@ -13,11 +13,7 @@ export const loader = anyone(async (asked: Route.LoaderArgs) => {
 
 export const action = anyone(async ({ request, url }: Route.ActionArgs) => {
   const result = await authenticator.authenticate("form", request);
-  if (result.kind === "too-many-tries")
-    return data(
-      { message: result.message },
-      { status: 429, headers: { "Retry-After": String(result.retryAfterSeconds) } },
-    );
+  if (result.kind === "too-many-tries") return data({ message: result.message }, { status: 429 });
   if (result.kind === "refused") return data({ message: result.message }, { status: 401 });
   // Whatever session this browser was in before, its own or one slipped to it, ends here.
   const before = await readToken(request);
