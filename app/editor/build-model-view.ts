@@ -1,0 +1,162 @@
+import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
+import type { StateModel } from "../../grammar/equations/model.ts";
+import { traceTerms } from "../../grammar/equations/trace.ts";
+import type { FlatGraph } from "../../grammar/resolve/graph.ts";
+import type { Span } from "../../grammar/source/span.ts";
+import type { Expr } from "../../grammar/symbolic/expression.ts";
+import { symbolsOf } from "../../grammar/symbolic/symbols.ts";
+import { expressionLatex } from "../../grammar/writing/latex.ts";
+import { dotted, nameLatex } from "../../grammar/writing/latex-name.ts";
+import { expressionText } from "../../grammar/writing/text.ts";
+import { DARK, type Light } from "./light.ts";
+import { shownIn } from "./shown-number.ts";
+import { formula } from "./typeset.ts";
+import type {
+  DependentView,
+  EquationView,
+  Formula,
+  LoopView,
+  ModelView,
+  StateView,
+  TermView,
+} from "./view-model.ts";
+
+type LineOf = (span: Span) => number | null;
+
+export function modelView(graph: FlatGraph, model: StateModel, lineOf: LineOf): ModelView {
+  const coEnergy = inCoEnergy(model);
+  return {
+    states: model.states.map(
+      (state): StateView => ({
+        name: state.name,
+        symbol: shown(state.symbol),
+        unit: state.unit.text,
+        start: shownIn(state.start, state.unit),
+        kind: state.kind,
+        line: lineOf(state.span),
+        nodes: state.node === null ? [] : [graph.nodes[state.node].name],
+        bonds: state.bond === null ? [] : [graph.bonds[state.bond].id],
+        values: [],
+      }),
+    ),
+    equations: model.equations.map(({ state, rate }) => equation(graph, model, state, rate)),
+    coEnergy: coEnergy.equations.map(({ state, rate }) => equation(graph, coEnergy, state, rate)),
+    implicit: implicitRows(graph, model),
+    dependent: model.dependent.map(
+      (store): DependentView => ({
+        name: store.name,
+        of: store.of,
+        equation: equation(graph, model, store.name, store.value, written(store.symbol)),
+        unit: store.unit.text,
+        line: lineOf(store.span),
+        nodes: [graph.nodes[store.node].name],
+        bonds: [graph.bonds[store.bond].id],
+        values: [],
+      }),
+    ),
+    loops: model.loops.map(
+      (loop): LoopView => ({
+        variables: loop.variables.map(({ name }) => name),
+        linear: loop.linear,
+        solved: loop.solved,
+        residuals: loop.residuals.map(shown),
+        nodes: [],
+        bonds: loop.bonds.map((bond) => graph.bonds[bond].id),
+        values: [],
+      }),
+    ),
+    outputs: model.outputs.map((output) => ({
+      name: output.name,
+      equation: equation(graph, model, output.name, output.value, named(output.name)),
+      unit: output.unit.text,
+      ...DARK,
+      values: [output.name],
+    })),
+  };
+}
+
+/** Text and LaTeX of the same thing, not yet typeset. */
+interface Written {
+  readonly text: string;
+  readonly latex: string;
+}
+
+function written(expr: Expr): Written {
+  return { text: expressionText(expr), latex: expressionLatex(expr) };
+}
+
+function shown(expr: Expr): Formula {
+  const { text, latex } = written(expr);
+  return formula(text, latex);
+}
+
+function rateOf(name: string): Written {
+  return { text: `d ${name}/dt`, latex: dotted(name) };
+}
+
+function named(name: string): Written {
+  return { text: name, latex: nameLatex(name) };
+}
+
+function equation(
+  graph: FlatGraph,
+  model: StateModel,
+  state: string,
+  right: Expr,
+  left: Written = rateOf(state),
+): EquationView {
+  const terms = traced(graph, model, right);
+  return {
+    state,
+    left: formula(left.text, left.latex),
+    leftLatex: left.latex,
+    ...written(right),
+    terms,
+    ...together(terms),
+  };
+}
+
+/** The summands of a right side, each with all it came through and with the parameters and inputs it holds. */
+function traced(graph: FlatGraph, model: StateModel, right: Expr): TermView[] {
+  return traceTerms(model, right).map(({ term, nodes, bonds }) => {
+    const text = expressionText(term);
+    const latex = expressionLatex(term);
+    const negative = text.startsWith("-");
+    const bare = (written: string) => (written.startsWith("-") ? written.slice(1).trimStart() : written);
+    return {
+      sign: negative ? "-" : "+",
+      formula: negative ? formula(bare(text), bare(latex)) : formula(text, latex),
+      nodes: nodes.map((node) => graph.nodes[node].name),
+      bonds: bonds.map((bond) => graph.bonds[bond].id),
+      values: [...symbolsOf(term)]
+        .filter(({ role }) => role === "parameter" || role === "input" || role === "inputRate")
+        .map(({ name }) => name),
+    };
+  });
+}
+
+function together(lights: readonly Light[]): Light {
+  return {
+    nodes: [...new Set(lights.flatMap(({ nodes }) => nodes))],
+    bonds: [...new Set(lights.flatMap(({ bonds }) => bonds))],
+    values: [...new Set(lights.flatMap(({ values }) => values))],
+  };
+}
+
+/** Where the rates stay coupled: one row of M(x)·ẋ = h(x, u, t) an equation. */
+function implicitRows(graph: FlatGraph, model: StateModel): EquationView[] {
+  if (model.implicit === null) return [];
+  const { mass, right } = model.implicit;
+  return right.map((side, row) => {
+    const left = mass[row].flatMap((factor, column) => {
+      if (factor.op === "number" && factor.value === 0) return [];
+      const rate = rateOf(model.states[column].name);
+      if (factor.op === "number" && factor.value === 1) return [rate];
+      const { text, latex } = written(factor);
+      return [{ text: `(${text})*${rate.text}`, latex: `\\left(${latex}\\right)\\,${rate.latex}` }];
+    });
+    const sum = (of: (part: Written) => string) => left.map(of).join(" + ");
+    const both = { text: sum(({ text }) => text), latex: sum(({ latex }) => latex) };
+    return equation(graph, model, model.states[row].name, side, both);
+  });
+}

@@ -1,0 +1,20 @@
+import type { FileView } from "./view-model.ts";
+
+/** What the page asks of the core's worker. `number` grows with every request: an older answer is dropped. */
+export type CoreRequest =
+  | {
+      readonly kind: "check";
+      readonly number: number;
+      readonly path: string;
+      /** null: the last system of the file. */
+      readonly system: string | null;
+      /** Only the texts that changed since the last request; null takes a file out of the set. */
+      readonly changed: readonly (readonly [path: string, text: string | null])[];
+    }
+  | { readonly kind: "format"; readonly number: number; readonly path: string; readonly text: string };
+
+export type CoreAnswer =
+  | { readonly kind: "view"; readonly number: number; readonly view: FileView; readonly milliseconds: number }
+  | { readonly kind: "formatted"; readonly number: number; readonly text: string }
+  /** A fault of ours, not of the text: shown as such, and the next key stroke tries again. */
+  | { readonly kind: "fault"; readonly number: number; readonly message: string };

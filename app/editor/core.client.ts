@@ -1,0 +1,75 @@
+import coreWorkerUrl from "./core.worker.ts?worker&url";
+import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
+import type { FileView } from "./view-model.ts";
+import { workerAddress } from "./worker-address.ts";
+
+export interface CoreListener {
+  view(view: FileView, milliseconds: number): void;
+  fault(message: string): void;
+}
+
+/** The page's end of the core: it sends what changed and hears only the newest answer. */
+export class Core {
+  readonly #worker: Worker;
+  readonly #listener: CoreListener;
+  readonly #sent = new Map<string, string>();
+  readonly #waiting = new Map<number, (text: string | null) => void>();
+  #number = 0;
+  #newestCheck = 0;
+
+  constructor(listener: CoreListener) {
+    this.#listener = listener;
+    this.#worker = new Worker(workerAddress(coreWorkerUrl), { type: "module" });
+    this.#worker.onmessage = (event: MessageEvent<CoreAnswer>) => this.#hear(event.data);
+    this.#worker.onerror = (event) =>
+      listener.fault(event.message || "the worker of the core could not be started");
+  }
+
+  check(texts: ReadonlyMap<string, string>, path: string, system: string | null): void {
+    const changed: [string, string | null][] = [];
+    for (const [file, text] of texts) {
+      if (this.#sent.get(file) !== text) {
+        changed.push([file, text]);
+        this.#sent.set(file, text);
+      }
+    }
+    for (const file of [...this.#sent.keys()]) {
+      if (!texts.has(file)) {
+        changed.push([file, null]);
+        this.#sent.delete(file);
+      }
+    }
+    this.#newestCheck = ++this.#number;
+    this.#post({ kind: "check", number: this.#newestCheck, path, system, changed });
+  }
+
+  /** The text laid out by the formatter; null where the core could not. */
+  format(path: string, text: string): Promise<string | null> {
+    const number = ++this.#number;
+    return new Promise((resolve) => {
+      this.#waiting.set(number, resolve);
+      this.#post({ kind: "format", number, path, text });
+    });
+  }
+
+  close(): void {
+    this.#worker.terminate();
+    for (const resolve of this.#waiting.values()) resolve(null);
+    this.#waiting.clear();
+  }
+
+  #post(request: CoreRequest): void {
+    this.#worker.postMessage(request);
+  }
+
+  #hear(answer: CoreAnswer): void {
+    const waiting = this.#waiting.get(answer.number);
+    if (waiting !== undefined) {
+      this.#waiting.delete(answer.number);
+      waiting(answer.kind === "formatted" ? answer.text : null);
+    } else if (answer.number === this.#newestCheck) {
+      if (answer.kind === "view") this.#listener.view(answer.view, answer.milliseconds);
+      else if (answer.kind === "fault") this.#listener.fault(answer.message);
+    }
+  }
+}

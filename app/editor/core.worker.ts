@@ -1,0 +1,56 @@
+import { checkFile, type TreeCache } from "../../grammar/pipeline.ts";
+import { SourceText } from "../../grammar/source/text.ts";
+import { formatText } from "../../grammar/syntax/format.ts";
+import { viewOf } from "./build-view.ts";
+import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
+
+/** The core beside the page: keeps the set's texts and trees, and works out only the newest request. */
+const files = new Map<string, SourceText>();
+const trees: TreeCache = new Map();
+let newest: (CoreRequest & { kind: "check" }) | null = null;
+
+self.onmessage = (event: MessageEvent<CoreRequest>) => {
+  const request = event.data;
+  if (request.kind === "format") {
+    answer(request.number, () => ({
+      kind: "formatted",
+      number: request.number,
+      text: formatText(new SourceText(request.path, request.text)),
+    }));
+    return;
+  }
+  for (const [path, text] of request.changed) replace(path, text);
+  const idle = newest === null;
+  newest = request;
+  // Key strokes that are already waiting come in first, so that only the last of them is worked out.
+  if (idle) setTimeout(checkNewest, 0);
+};
+
+function checkNewest(): void {
+  const request = newest;
+  newest = null;
+  if (request === null) return;
+  answer(request.number, () => {
+    const began = performance.now();
+    const report = checkFile(files, request.path, { cache: trees });
+    const view = viewOf(report, files, trees, request.system);
+    return { kind: "view", number: request.number, view, milliseconds: performance.now() - began };
+  });
+}
+
+function replace(path: string, text: string | null): void {
+  const known = files.get(path);
+  if (known !== undefined) trees.delete(known);
+  if (text === null) files.delete(path);
+  else files.set(path, new SourceText(path, text));
+}
+
+function answer(number: number, work: () => CoreAnswer): void {
+  let result: CoreAnswer;
+  try {
+    result = work();
+  } catch (fault) {
+    result = { kind: "fault", number, message: fault instanceof Error ? fault.message : String(fault) };
+  }
+  self.postMessage(result);
+}

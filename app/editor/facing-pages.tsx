@@ -1,0 +1,206 @@
+import { useCallback, useEffect, useMemo, useReducer, useRef, useState, useSyncExternalStore } from "react";
+import { useLocation, useNavigate } from "react-router";
+import { SourceText } from "../../grammar/source/text.ts";
+import { lineHash, lineOfHash, rememberLine } from "./address.ts";
+import { DraftNote } from "./draft-note.tsx";
+import { draftKey } from "./drafts.ts";
+import "./facing-pages.css";
+import { Fold } from "./fold.tsx";
+import { FileList, Text } from "./left-page.tsx";
+import type { Variables } from "./right-page/equations.tsx";
+import { LightingContext } from "./right-page/lighting.ts";
+import { WhatFollows } from "./right-page/what-follows.tsx";
+import { SaveForm } from "./save-form.tsx";
+import type { TextPageHandle } from "./text-page.client.tsx";
+import { TwoVersions } from "./two-versions.tsx";
+import { useCore } from "./use-core.ts";
+import { useDraft } from "./use-draft.ts";
+import { useLighting } from "./use-lighting.ts";
+import { useSaving } from "./use-saving.ts";
+import { next, opened, type Texts, unsaved as unsavedOf } from "./workspace.ts";
+
+interface FacingPagesProps {
+  readonly person: string;
+  readonly team: string;
+  readonly set: string;
+  readonly path: string;
+  readonly commit: string | null;
+  readonly files: Texts;
+  readonly mayWrite: boolean;
+}
+
+const never = () => () => {};
+const useAlive = () =>
+  useSyncExternalStore(
+    never,
+    () => true,
+    () => false,
+  );
+
+/** A model set opened as a book: the text of one file on the left, what follows from it on the right. */
+export function FacingPages({ person, team, set, path, commit, files, mayWrite }: FacingPagesProps) {
+  const base = `/sets/${team}/${set}`;
+  const alive = useAlive();
+  const navigate = useNavigate();
+  const location = useLocation();
+  const search = useMemo(() => new URLSearchParams(location.search), [location.search]);
+  const [workspace, step] = useReducer(next, null, () => opened(commit, files));
+  const unsaved = useMemo(() => unsavedOf(workspace), [workspace]);
+  const saving = useSaving(workspace, unsaved, step);
+  const kept = useDraft(draftKey(person, team, set), workspace, unsaved, step);
+  useEffect(() => step({ kind: "loaded", commit, files }), [commit, files]);
+
+  const core = useCore(workspace.texts, path, search.get("system"));
+  const lighting = useLighting(core.system?.tied ?? NOTHING_TIED);
+  const [turned, setTurned] = useState<Page>("text");
+  const textPage = useRef<TextPageHandle>(null);
+  const rightPage = useRef<HTMLElement>(null);
+  const messageField = useRef<HTMLInputElement>(null);
+
+  const inAddress = (name: string, value: string | null) => {
+    const wanted = new URLSearchParams(search);
+    if (value === null) wanted.delete(name);
+    else wanted.set(name, value);
+    void navigate(
+      { search: wanted.toString(), hash: window.location.hash },
+      { replace: true, preventScrollReset: true },
+    );
+  };
+  const goTo = useCallback(
+    ({ file, line, column }: { file: string; line: number; column: number }) => {
+      setTurned("text");
+      if (file !== path) void navigate(`${base}/edit/${file}${lineHash(line)}`, { preventScrollReset: true });
+      else requestAnimationFrame(() => textPage.current?.reveal(line, column));
+    },
+    [base, navigate, path],
+  );
+  const begin = (fresh: string): string | null => {
+    if (!fresh.endsWith(".wright")) return "The name of a model file ends in .wright";
+    if (workspace.texts.has(fresh)) return "The set has a file of this name";
+    step({ kind: "typed", path: fresh, text: "notation 1\n\n" });
+    void navigate(`${base}/edit/${fresh}`);
+    return null;
+  };
+  const { light, show, linesOf } = lighting;
+  const context = useMemo(
+    () => ({ light, show, linesOf, open: (line: number) => goTo({ file: path, line, column: 1 }) }),
+    [light, show, linesOf, goTo, path],
+  );
+
+  if (saving.behind !== null) {
+    return <TwoVersions behind={saving.behind} onSettled={saving.settle} onBack={saving.back} />;
+  }
+  const text = workspace.texts.get(path);
+  return (
+    <LightingContext value={context}>
+      <main className="book" data-turned={turned} id="main">
+        <PageTurn turned={turned} onTurn={setTurned} />
+        <form
+          method="post"
+          className="page left-page"
+          aria-label="Text"
+          onSubmit={(event) => {
+            event.preventDefault();
+            saving.save();
+          }}
+        >
+          <FileList
+            base={base}
+            paths={[...workspace.texts.keys()]}
+            current={path}
+            unsaved={new Set(unsaved.map((file) => file.path))}
+            onNew={mayWrite && alive ? begin : null}
+          />
+          <DraftNote restored={workspace.restored} step={step} />
+          {text === undefined ? (
+            <p className="flex-1 p-4">
+              There is no file {path} in this version of the set. Choose one of the files above
+              {mayWrite ? ", or begin a new one." : "."}
+            </p>
+          ) : (
+            <Text
+              alive={alive}
+              ref={textPage}
+              path={path}
+              text={text}
+              placed={workspace.placed}
+              line={lineOfHash(location.hash)}
+              readOnly={!mayWrite}
+              view={core.view}
+              tiedLines={lighting.tiedLines}
+              litLines={lighting.litLines}
+              onText={(file, typed) => step({ kind: "typed", path: file, text: typed })}
+              onCursor={(line) => {
+                lighting.setCursor(line);
+                rememberLine(line);
+              }}
+              onPoint={lighting.pointAtLine}
+              onScroll={lighting.redraw}
+              onSave={() => messageField.current?.focus()}
+              onOpen={goTo}
+              format={core.format}
+            />
+          )}
+          <SaveForm
+            ref={messageField}
+            base={base}
+            parent={workspace.commit}
+            path={path}
+            unsaved={unsaved.length}
+            alive={alive}
+            mayWrite={mayWrite}
+            kept={kept}
+            saving={saving}
+          />
+        </form>
+        <Fold
+          text={textPage}
+          page={rightPage}
+          tiedLines={lighting.tiedLines}
+          litLines={lighting.litLines}
+          redraw={lighting.redrawFold}
+        />
+        <WhatFollows
+          ref={rightPage}
+          core={core}
+          path={path}
+          variables={variablesOf(search)}
+          mayFix={mayWrite}
+          onVariables={(chosen) => inAddress("states", chosen === "energy" ? null : chosen)}
+          onSystem={(name) => inAddress("system", name)}
+          onFix={({ fix }) =>
+            textPage.current?.apply(fix?.edits.filter(({ place }) => place.file === path) ?? [])
+          }
+          onOpen={goTo}
+          onOpenSpan={({ file, start }) => goTo(placeInText(file, workspace.texts.get(file) ?? "", start))}
+        />
+      </main>
+    </LightingContext>
+  );
+}
+
+function placeInText(file: string, text: string, offset: number) {
+  const { line, column } = new SourceText(file, text).position(offset);
+  return { file, line, column };
+}
+
+const NOTHING_TIED: readonly never[] = [];
+
+function variablesOf(search: URLSearchParams): Variables {
+  return search.get("states") === "co-energy" ? "co-energy" : "energy";
+}
+
+type Page = "text" | "follows";
+
+function PageTurn({ turned, onTurn }: { turned: Page; onTurn(page: Page): void }) {
+  return (
+    <nav className="page-turn no-print" aria-label="Pages of the book">
+      <button type="button" aria-pressed={turned === "text"} onClick={() => onTurn("text")}>
+        Text
+      </button>
+      <button type="button" aria-pressed={turned === "follows"} onClick={() => onTurn("follows")}>
+        What follows
+      </button>
+    </nav>
+  );
+}

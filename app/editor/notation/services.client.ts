@@ -1,0 +1,167 @@
+import { monaco } from "../monaco.client.ts";
+import type { FileView, OutlineEntry, Place } from "../view-model.ts";
+import { suggestionsAt } from "./completion.ts";
+import { NOTATION } from "./language-id.ts";
+
+/** What the services ask of the page that holds the editor. */
+export interface ServiceSource {
+  view(): FileView | null;
+  format(path: string, text: string): Promise<string | null>;
+}
+
+export function uriOf(path: string): monaco.Uri {
+  return monaco.Uri.from({ scheme: "set", path: `/${path}` });
+}
+
+export function pathOf(uri: monaco.Uri): string {
+  return uri.path.slice(1);
+}
+
+export function rangeOf(place: Place): monaco.IRange {
+  return {
+    startLineNumber: place.line,
+    startColumn: place.column,
+    endLineNumber: place.endLine,
+    endColumn: place.endColumn,
+  };
+}
+
+type Provided<T> = T | null | undefined;
+
+/** Completion, hover, definition, outline, fixes and formatting, all out of what the core said last. */
+export function registerServices(source: ServiceSource): monaco.IDisposable {
+  const { languages } = monaco;
+  const services = [
+    languages.registerCompletionItemProvider(NOTATION, {
+      triggerCharacters: [".", " ", ">"],
+      provideCompletionItems: (model, position) => ({
+        suggestions: completions(source.view(), model, position),
+      }),
+    }),
+    languages.registerHoverProvider(NOTATION, {
+      provideHover(model, position): Provided<monaco.languages.Hover> {
+        const entry = entryAt(source.view(), model, position);
+        if (entry === null) return null;
+        const code = `\`\`\`${NOTATION}\n${entry.declaration}\n\`\`\``;
+        const where = entry.place.file === pathOf(model.uri) ? `line ${entry.place.line}` : entry.place.file;
+        return {
+          contents: [{ value: code }, { value: [entry.description, where].filter(Boolean).join("  \n") }],
+        };
+      },
+    }),
+    languages.registerDefinitionProvider(NOTATION, {
+      provideDefinition(model, position): Provided<monaco.languages.Definition> {
+        const used = /\buse\b[^"]*"([^"@]+)"/.exec(model.getLineContent(position.lineNumber));
+        if (used !== null) return { uri: uriOf(used[1]), range: new monaco.Range(1, 1, 1, 1) };
+        const entry = entryAt(source.view(), model, position);
+        return entry === null ? null : { uri: uriOf(entry.place.file), range: rangeOf(entry.place) };
+      },
+    }),
+    languages.registerDocumentSymbolProvider(NOTATION, {
+      provideDocumentSymbols: (model) => symbols(source.view(), pathOf(model.uri)),
+    }),
+    languages.registerCodeActionProvider(NOTATION, {
+      provideCodeActions: (model, range) => ({ actions: fixes(source.view(), model, range), dispose() {} }),
+    }),
+    languages.registerDocumentFormattingEditProvider(NOTATION, {
+      async provideDocumentFormattingEdits(model) {
+        const text = await source.format(pathOf(model.uri), model.getValue());
+        return text === null || text === model.getValue() ? [] : [{ range: model.getFullModelRange(), text }];
+      },
+    }),
+  ];
+  return {
+    dispose() {
+      for (const service of services) service.dispose();
+    },
+  };
+}
+
+/** The system or trial whose braces hold the line. */
+function withinAt(view: FileView, line: number): string | null {
+  const holder = view.outline.find(
+    ({ space, within, place, lastLine }) =>
+      within === null && (space === "system" || space === "trial") && place.line < line && line <= lastLine,
+  );
+  return holder?.name ?? null;
+}
+
+function completions(view: FileView | null, model: monaco.editor.ITextModel, position: monaco.Position) {
+  if (view === null) return [];
+  const before = model.getLineContent(position.lineNumber).slice(0, position.column - 1);
+  if (/^\s*#|\s--(\s|$)/.test(before)) return [];
+  const unit = /[\p{L}%µΩ°/*^\d]*$/u.exec(before)?.[0] ?? "";
+  const word = model.getWordUntilPosition(position);
+  const { CompletionItemKind: Kind } = monaco.languages;
+  const kinds = {
+    name: Kind.Variable,
+    kind: Kind.Struct,
+    statement: Kind.Keyword,
+    unit: Kind.Unit,
+    function: Kind.Function,
+    variable: Kind.Field,
+    domain: Kind.Enum,
+  };
+  return suggestionsAt(before, view.outline, withinAt(view, position.lineNumber)).map((suggestion) => {
+    const start = suggestion.sort === "unit" ? position.column - unit.length : word.startColumn;
+    return {
+      label: { label: suggestion.label, description: suggestion.detail },
+      insertText: suggestion.insert,
+      kind: kinds[suggestion.sort],
+      range: new monaco.Range(position.lineNumber, start, position.lineNumber, position.column),
+    };
+  });
+}
+
+function entryAt(
+  view: FileView | null,
+  model: monaco.editor.ITextModel,
+  position: monaco.Position,
+): OutlineEntry | null {
+  const word = model.getWordAtPosition(position);
+  if (view === null || word === null) return null;
+  const within = withinAt(view, position.lineNumber);
+  const meant = view.outline.filter(
+    ({ name, within: holder }) => name === word.word && (holder === within || holder === null),
+  );
+  // A node and a value may share a name: on a wiring line, and before a dot, the node is meant.
+  const line = model.getLineContent(position.lineNumber);
+  const node = line.includes("->") || line[word.endColumn - 1] === ".";
+  const declared = meant.find(
+    ({ place }) => place.line === position.lineNumber && place.column === word.startColumn,
+  );
+  return declared ?? meant.find(({ space }) => (space === "node") === node) ?? meant[0] ?? null;
+}
+
+function symbols(view: FileView | null, path: string): monaco.languages.DocumentSymbol[] {
+  const { SymbolKind: Kind } = monaco.languages;
+  const own = (view?.outline ?? []).filter(({ place }) => place.file === path);
+  const symbol = (entry: OutlineEntry): monaco.languages.DocumentSymbol => ({
+    name: entry.name,
+    detail: entry.word,
+    kind: entry.within === null ? Kind.Class : entry.space === "node" ? Kind.Object : Kind.Variable,
+    tags: [],
+    range: { ...rangeOf(entry.place), endLineNumber: Math.max(entry.place.endLine, entry.lastLine) },
+    selectionRange: rangeOf(entry.place),
+    children: entry.within === null ? own.filter(({ within }) => within === entry.name).map(symbol) : [],
+  });
+  return own.filter(({ within }) => within === null).map(symbol);
+}
+
+function fixes(
+  view: FileView | null,
+  model: monaco.editor.ITextModel,
+  range: monaco.Range,
+): monaco.languages.CodeAction[] {
+  const path = pathOf(model.uri);
+  return (view?.findings ?? []).flatMap(({ fix, place }) => {
+    if (fix === null || place.file !== path || !monaco.Range.areIntersectingOrTouching(range, rangeOf(place)))
+      return [];
+    const edits = fix.edits.map(({ place: at, text }) => ({
+      resource: uriOf(at.file),
+      versionId: undefined,
+      textEdit: { range: rangeOf(at), text },
+    }));
+    return [{ title: fix.title, kind: "quickfix", isPreferred: true, edit: { edits } }];
+  });
+}

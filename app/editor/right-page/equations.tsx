@@ -1,0 +1,166 @@
+import { useState } from "react";
+import type { EquationView, LoopView, ModelView, TermView } from "../view-model.ts";
+import { Typeset } from "./formula.tsx";
+import { useLit } from "./lighting.ts";
+import { Section } from "./section.tsx";
+
+export type Variables = "energy" | "co-energy";
+
+interface EquationsProps {
+  readonly model: ModelView;
+  readonly variables: Variables;
+  onVariables(variables: Variables): void;
+}
+
+export function Equations({ model, variables, onVariables }: EquationsProps) {
+  const shown = equationsIn(model, variables);
+  return (
+    <Section
+      title="Equations"
+      count={shown.length}
+      tools={
+        <>
+          <fieldset className="flex gap-3 items-baseline">
+            <legend className="sr-only">States as</legend>
+            <Choice chosen={variables === "energy"} choose={() => onVariables("energy")}>
+              energy p, q
+            </Choice>
+            <Choice chosen={variables === "co-energy"} choose={() => onVariables("co-energy")}>
+              co-energy f, e
+            </Choice>
+          </fieldset>
+          <Copy what="text" of={shown.map(({ left, text }) => `${left.text} = ${text}`)} />
+          <Copy what="LaTeX" of={shown.map(({ leftLatex, latex }) => `${leftLatex} = ${latex}`)} />
+        </>
+      }
+    >
+      {shown.length === 0 ? (
+        <p className="note">No stores: the outputs below are functions of the inputs alone.</p>
+      ) : (
+        <ol className="equations">
+          {shown.map((equation) => (
+            <Equation key={equation.state} equation={equation} />
+          ))}
+        </ol>
+      )}
+    </Section>
+  );
+}
+
+function equationsIn(model: ModelView, variables: Variables): readonly EquationView[] {
+  if (model.implicit.length > 0) return model.implicit;
+  return variables === "co-energy" && model.coEnergy !== null ? model.coEnergy : model.equations;
+}
+
+function Choice({
+  chosen,
+  choose,
+  children,
+}: {
+  chosen: boolean;
+  choose(): void;
+  children: React.ReactNode;
+}) {
+  return (
+    <button type="button" className="choice" aria-pressed={chosen} onClick={choose}>
+      {children}
+    </button>
+  );
+}
+
+function Copy({ what, of }: { what: string; of: readonly string[] }) {
+  const [copied, setCopied] = useState(false);
+  const copy = async () => {
+    await navigator.clipboard.writeText(`${of.join("\n")}\n`);
+    setCopied(true);
+    setTimeout(() => setCopied(false), 2000);
+  };
+  return (
+    <button type="button" className="word no-print" onClick={copy}>
+      {copied ? "Copied" : `Copy ${what}`}
+      <span role="status" className="sr-only">
+        {copied ? `Equations copied as ${what}` : ""}
+      </span>
+    </button>
+  );
+}
+
+/** One equation; it wraps between its terms, and each term can be pointed at and reached by keyboard. */
+export function Equation({ equation, unit }: { equation: EquationView; unit?: string }) {
+  const { lit } = useLit(equation);
+  return (
+    <li
+      className="equation"
+      data-tied=""
+      data-lit={lit}
+      data-text={`${equation.left.text} = ${equation.text}`}
+    >
+      <span className="left">
+        <Typeset formula={equation.left} />
+        <span className="sign" aria-hidden="true">
+          =
+        </span>
+        <span className="sr-only">equals</span>
+      </span>
+      <span className="right">
+        {equation.terms.map((term, index) => (
+          // biome-ignore lint/suspicious/noArrayIndexKey: the terms of one equation have no other identity
+          <Term key={index} term={term} first={index === 0} />
+        ))}
+        {unit !== undefined && <span className="unit">{unit}</span>}
+      </span>
+    </li>
+  );
+}
+
+function Term({ term, first }: { term: TermView; first: boolean }) {
+  const { lit, lighting, handlers } = useLit(term);
+  const lines = lighting.linesOf(term);
+  const sign = term.sign === "-" ? "−" : first ? "" : "+";
+  const from = lines.length === 0 ? "" : `, from line${lines.length > 1 ? "s" : ""} ${lines.join(", ")}`;
+  return (
+    <button
+      type="button"
+      className="term"
+      data-term={`${term.sign}${term.formula.text}`}
+      data-lit={lit}
+      aria-label={`${sign} ${term.formula.text}${from}`}
+      onClick={() => lines.length > 0 && lighting.open(lines[0])}
+      {...handlers}
+    >
+      {sign !== "" && <span className="sign">{sign}</span>}
+      <Typeset formula={term.formula} />
+    </button>
+  );
+}
+
+export function Loops({ loops }: { loops: readonly LoopView[] }) {
+  if (loops.length === 0) return null;
+  return (
+    <Section title="Algebraic loops" count={loops.length}>
+      <ol className="divide-y divide-rule">
+        {loops.map((loop) => (
+          <Loop key={loop.variables.join()} loop={loop} />
+        ))}
+      </ol>
+    </Section>
+  );
+}
+
+function Loop({ loop }: { loop: LoopView }) {
+  const { lit, handlers } = useLit(loop);
+  return (
+    <li className="py-2 settles" data-tied="" data-lit={lit} {...handlers}>
+      <p>
+        {loop.linear ? "Linear" : "Nonlinear"}, {loop.solved ? "solved in closed form" : "solved numerically"}
+        , in <span className="font-mono text-small">{loop.variables.join(", ")}</span>
+      </p>
+      {loop.residuals.map((residual) => (
+        <p key={residual.text} className="overflow-x-auto py-1">
+          <span className="typeset">0 = </span>
+          <Typeset formula={residual} />
+        </p>
+      ))}
+    </li>
+  );
+}

@@ -1,0 +1,81 @@
+import { type Dispatch, useEffect, useRef, useState } from "react";
+import { useFetcher, useRevalidator } from "react-router";
+import type { Behind } from "./two-versions.tsx";
+import type { Settled, Step, Unsaved, Workspace } from "./workspace.ts";
+
+/** What the server answers to a save. */
+export type SaveAnswer =
+  | {
+      readonly kind: "saved";
+      readonly commit: { readonly oid: string; readonly message: string };
+      readonly merged: boolean;
+    }
+  | { readonly kind: "unchanged"; readonly head: string | null }
+  | ({ readonly kind: "behind" } & Behind)
+  | {
+      readonly kind: "refused";
+      readonly problems: readonly { readonly path: string; readonly message: string }[];
+    };
+
+export interface Saving {
+  readonly busy: boolean;
+  readonly saying: string | null;
+  readonly problems: readonly { readonly path: string; readonly message: string }[];
+  /** Set while someone else's newer version of the same files is to be dealt with. */
+  readonly behind: Behind | null;
+  readonly message: string;
+  setMessage(message: string): void;
+  save(): void;
+  settle(files: Settled[]): void;
+  back(): void;
+}
+
+export function useSaving(workspace: Workspace, unsaved: readonly Unsaved[], step: Dispatch<Step>): Saving {
+  const fetcher = useFetcher<SaveAnswer>();
+  const { revalidate } = useRevalidator();
+  const sent = useRef<readonly Unsaved[]>([]);
+  const [dealtWith, setDealtWith] = useState<SaveAnswer | undefined>();
+  const [message, setMessage] = useState("");
+  const answer = fetcher.data === dealtWith ? undefined : fetcher.data;
+
+  useEffect(() => {
+    if (fetcher.data?.kind !== "saved") return;
+    step({ kind: "saved", commit: fetcher.data.commit.oid, files: sent.current });
+    setMessage("");
+    // Others had saved other files: fetch them, so that the whole set is the one that was saved.
+    if (fetcher.data.merged) void revalidate();
+  }, [fetcher.data, step, revalidate]);
+
+  return {
+    busy: fetcher.state !== "idle",
+    saying: sayingOf(fetcher.state !== "idle", answer),
+    problems: answer?.kind === "refused" ? answer.problems : [],
+    behind: answer?.kind === "behind" ? answer : null,
+    message,
+    setMessage,
+    save() {
+      if (fetcher.state !== "idle" || unsaved.length === 0) return;
+      sent.current = unsaved;
+      const files = unsaved.map(({ path, text }) => ({ path, text }));
+      const body = { parent: workspace.commit, message, files };
+      void fetcher.submit(body, { method: "post", encType: "application/json" });
+    },
+    settle(files) {
+      if (answer?.kind !== "behind") return;
+      step({ kind: "settled", head: answer.head, files });
+      setDealtWith(answer);
+      void revalidate();
+    },
+    back: () => setDealtWith(answer),
+  };
+}
+
+function sayingOf(busy: boolean, answer: SaveAnswer | undefined): string | null {
+  if (busy) return "Saving …";
+  if (answer?.kind === "saved") {
+    const version = `Saved as version ${answer.commit.oid.slice(0, 7)}.`;
+    return answer.merged ? `${version} Others had saved other files; theirs stand beside yours.` : version;
+  }
+  if (answer?.kind === "unchanged") return "The set holds this text already; there is nothing to save.";
+  return null;
+}
