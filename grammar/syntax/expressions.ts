@@ -41,7 +41,7 @@ export interface Slip {
 
 /**
  * The rules of expressions, names and units. Each rule is run for one line at a time, and the first mistake ends it:
- * the next line is read afresh, so that one slip costs one statement. `STATEMENTS` in `statements.ts` adds the rest.
+ * the next line is read afresh, so that one slip costs one statement. The rules of statements are added by those who extend this.
  */
 export class ExpressionParser extends EmbeddedActionsParser {
   text = "";
@@ -74,7 +74,7 @@ export class ExpressionParser extends EmbeddedActionsParser {
   }
 
   protected to(start: number): Range {
-    return { start, end: (this.LA(0).endOffset as number) + 1 };
+    return { start, end: ends(this.LA(0)) };
   }
 
   readonly expression = this.RULE("expression", (): Expression => {

@@ -1,6 +1,4 @@
 import type { IToken } from "chevrotain";
-import { identifier } from "./expressions.ts";
-import type { Head, LineFacts } from "./statements.ts";
 import { Arrow, Close, Colon, Comma, clauseToken, Equals, Name, NumberText, Open } from "./tokens.ts";
 import type {
   CurveDeclaration,
@@ -12,6 +10,7 @@ import type {
   Use,
 } from "./tree.ts";
 import { TrialStatements } from "./trial-statements.ts";
+import type { Head, LineFacts } from "./value-statements.ts";
 
 const FromWord = clauseToken("from");
 const PseudoWord = clauseToken("pseudo");

@@ -17,7 +17,6 @@ import {
   NumberText,
   OneWay,
   Open,
-  Slip,
   Strange,
   Text,
 } from "./tokens.ts";
@@ -102,7 +101,8 @@ export function explainSign(token: IToken, path: string): { range: Range; messag
   const range = extent(token);
   const first = String.fromCodePoint(token.image.codePointAt(0) ?? 0);
   const known = SIGNS.get(token.image) ?? (token.tokenType === Strange ? SIGNS.get(first) : undefined);
-  if (token.tokenType === Slip && token.image.startsWith("--") && known === undefined) {
+  if (token.image.startsWith("--") && known === undefined) {
+    const range = { start: token.startOffset, end: token.startOffset + 2 };
     const message =
       "`--` begins a remark and wants a blank on both sides; to take away a negative value write `a - (-b)`.";
     return { range, message };

@@ -128,19 +128,13 @@ export class OutlineReader {
   #close(end: number): void {
     const { head, line, body } = this.#blocks.pop() as Block;
     const into = (this.#blocks.at(-1) as Block).body;
-    const start = line === null ? 0 : (line.tokens[0] ?? line.opens).startOffset;
-    const range = { start, end };
-    const block = { start: (line?.opens as IToken).startOffset, end };
-    if (this.#blocks.length > LIMITS.depth) return;
+    if (line === null || this.#blocks.length > LIMITS.depth) return;
+    const opens = line.opens as IToken;
+    const range = { start: (line.tokens[0] ?? opens).startOffset, end };
+    const block = { start: opens.startOffset, end };
     if (head === null || head.kind === "unreadable") {
       const declares = head?.declares ?? null;
-      into.push({
-        kind: "unreadable",
-        range,
-        declares,
-        description: head?.description ?? null,
-        remark: null,
-      });
+      into.push({ kind: "unreadable", range, declares, description: line.description, remark: null });
     } else {
       into.push({ ...head, range, block, body } as System | Trial | Repeat);
     }

@@ -8,9 +8,9 @@ import { type NotationParser, notationParser } from "./grammar.ts";
 import { LIMITS } from "./limits.ts";
 import type { Line } from "./lines.ts";
 import { explain, explainSign, show } from "./messages.ts";
-import type { Declared, LineFacts } from "./statements.ts";
 import { AnyArrow, belongs, Comma, Dot, Equals, Name, NumberText, OpenIndex, Text } from "./tokens.ts";
 import type { File, Unreadable } from "./tree.ts";
+import type { Declared, LineFacts } from "./value-statements.ts";
 import { ELEMENT_WORDS, FILE_WORDS, STATEMENT_WORDS, SYSTEM_WORDS, TRIAL_WORDS } from "./words.ts";
 
 export type Place = "file" | "system" | "trial";
@@ -242,7 +242,7 @@ export class StatementReader {
       this.#report(
         "syntax",
         rangeOf(line.tokens[0]),
-        `${what} stands ${where}${place === "file" ? "" : `, not in a ${place}`}.`,
+        `${what} belongs ${where}${place === "file" ? "" : `, not in a ${place}`}.`,
       );
     }
     return unreadable(facts, null);

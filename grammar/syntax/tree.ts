@@ -1,4 +1,14 @@
 import type { Range } from "../source/span.ts";
+import type {
+  Expression,
+  Identifier,
+  IndexedName,
+  Reference,
+  StringLiteral,
+  UnitText,
+} from "./expression-tree.ts";
+
+export type * from "./expression-tree.ts";
 
 /**
  * The syntax tree of one `.wright` file: what was written, in the order it was written, with nothing looked up.
@@ -34,11 +44,6 @@ export interface Comment {
   readonly description: boolean;
 }
 
-export interface Identifier {
-  readonly text: string;
-  readonly range: Range;
-}
-
 /** What may stand after a declaration: the joined `##` lines above it and the `-- text` behind it. */
 export interface Described {
   readonly description: string | null;
@@ -63,11 +68,6 @@ export interface Use extends Described {
   readonly path: StringLiteral;
 }
 
-export interface StringLiteral {
-  readonly value: string;
-  readonly range: Range;
-}
-
 export interface DomainDeclaration extends Described {
   readonly kind: "domain";
   readonly range: Range;
@@ -75,12 +75,6 @@ export interface DomainDeclaration extends Described {
   readonly pseudo: boolean;
   readonly effort: UnitText;
   readonly flow: UnitText;
-}
-
-/** A unit as written, without blanks; its meaning is looked up by the resolver. */
-export interface UnitText {
-  readonly text: string;
-  readonly range: Range;
 }
 
 export interface FunctionDeclaration extends Described {
@@ -178,13 +172,6 @@ export interface TrackDeclaration extends Described {
   readonly indices: readonly Expression[];
   readonly rate: Expression;
   readonly from: Expression | null;
-}
-
-/** A name that may carry indices: `cell[i-1]`, `grid[i][j]`. */
-export interface IndexedName {
-  readonly name: Identifier;
-  readonly indices: readonly Expression[];
-  readonly range: Range;
 }
 
 export interface JunctionDeclaration extends Described {
@@ -390,57 +377,3 @@ export interface Compare extends Described {
     readonly value: Expression;
   } | null;
 }
-
-/** `armature.f`, `cell[i-1].spring.q`, `u`: a path of names, each with its indices. */
-export interface Reference {
-  readonly kind: "reference";
-  readonly path: readonly IndexedName[];
-  readonly range: Range;
-}
-
-/**
- * A chain of left-associative operators (`a + b - c`) nests to the left, up to 20,000 deep: walk it with a loop.
- * Every other nesting is at most 200 deep.
- */
-export type Expression =
-  | { readonly kind: "number"; readonly value: number; readonly text: string; readonly range: Range }
-  | {
-      readonly kind: "quantity";
-      readonly value: number;
-      readonly text: string;
-      readonly unit: UnitText;
-      readonly range: Range;
-    }
-  | { readonly kind: "string"; readonly value: string; readonly range: Range }
-  | Reference
-  | {
-      readonly kind: "unary";
-      readonly operator: "-" | "+" | "not";
-      readonly operand: Expression;
-      readonly range: Range;
-    }
-  | {
-      readonly kind: "binary";
-      readonly operator: BinaryOperator;
-      readonly left: Expression;
-      readonly right: Expression;
-      readonly range: Range;
-    }
-  | {
-      readonly kind: "call";
-      readonly name: Identifier;
-      readonly arguments: readonly Expression[];
-      readonly range: Range;
-    }
-  | {
-      readonly kind: "where";
-      readonly then: Expression;
-      readonly condition: Expression;
-      readonly otherwise: Expression;
-      readonly range: Range;
-    }
-  | { readonly kind: "group"; readonly inner: Expression; readonly range: Range }
-  /** What stands where an expression could not be read; a `syntax` finding says why. */
-  | { readonly kind: "missing"; readonly range: Range };
-
-export type BinaryOperator = "+" | "-" | "*" | "/" | "^" | "<" | "<=" | ">" | ">=" | "=" | "and" | "or";

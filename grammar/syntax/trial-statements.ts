@@ -1,18 +1,24 @@
 import type { IToken } from "chevrotain";
-import { identifier } from "./expressions.ts";
-import { type Head, SystemStatements } from "./statements.ts";
+import type { Range } from "../source/span.ts";
+import { isComparison } from "./chain.ts";
+import { identifier, NOWHERE } from "./expressions.ts";
+import { NodeStatements } from "./node-statements.ts";
 import { Comma, clauseToken, DotDot, Equals, Less, LessEqual, Name } from "./tokens.ts";
 import type {
   Compare,
+  Condition,
   Drive,
+  Expect,
   Expression,
   RecordSignals,
   Run,
   Scatter,
   SetValue,
+  Start,
   Trial,
   Vary,
 } from "./tree.ts";
+import type { Head } from "./value-statements.ts";
 
 const OfWord = clauseToken("of");
 const ForWord = clauseToken("for");
@@ -22,9 +28,12 @@ const OverWord = clauseToken("over");
 const StepsWord = clauseToken("steps");
 const WithWord = clauseToken("with");
 const ColumnsWord = clauseToken("columns");
+const WithinWord = clauseToken("within");
+const BetweenWord = clauseToken("between");
+const SteadyWord = clauseToken("steady");
 
-/** The rules of a trial and of the statements in it; `start` and `expect` are those of a system. */
-export class TrialStatements extends SystemStatements {
+/** The rules of trials, with `start` and `expect`, which a system has too. */
+export class TrialStatements extends NodeStatements {
   readonly trial = this.RULE("trial", (): Head<Trial> => {
     this.CONSUME(Name);
     const name = this.SUBRULE1(this.newName);
@@ -121,4 +130,85 @@ export class TrialStatements extends SystemStatements {
     });
     return { kind: "compare", ...this.line, signal, path, columns, limit: limit ?? null };
   });
+
+  readonly start = this.RULE("start", (): Start => {
+    this.CONSUME(Name);
+    const { target, value } = this.OR<Pick<Start, "target" | "value">>([
+      {
+        GATE: () => this.LA(2).tokenType !== Equals,
+        ALT: () => {
+          this.CONSUME(SteadyWord);
+          return { target: null, value: null };
+        },
+      },
+      {
+        ALT: () => {
+          const target = this.SUBRULE(this.reference);
+          this.CONSUME(Equals);
+          return { target, value: this.SUBRULE(this.expression) };
+        },
+        IGNORE_AMBIGUITIES: true,
+      },
+    ]);
+    return { kind: "start", ...this.line, target, value };
+  });
+
+  readonly expect = this.RULE("expect", (): Expect => {
+    this.CONSUME(Name);
+    const measure = this.SUBRULE1(this.simple);
+    const relation = this.OPTION1(() =>
+      this.OR<Condition>([
+        {
+          ALT: () => {
+            this.CONSUME(Equals);
+            const right = this.SUBRULE2(this.simple);
+            return { kind: "comparison", left: measure, operator: "=", right, within: null, range: NOWHERE };
+          },
+        },
+        {
+          ALT: () => {
+            this.CONSUME(BetweenWord);
+            return this.#between(measure, this.SUBRULE3(this.simple));
+          },
+        },
+      ]),
+    );
+    const within = this.OPTION2(() => {
+      this.CONSUME(WithinWord);
+      return this.SUBRULE4(this.simple);
+    });
+    const condition = relation ?? { kind: "fact", measure, within: null, range: NOWHERE };
+    if (this.RECORDING_PHASE) return { kind: "expect", ...this.line, condition };
+    const range = this.to(measure.range.start);
+    return { kind: "expect", ...this.line, condition: this.#settle(condition, within ?? null, range) };
+  });
+
+  /** `b and c` after `between` was read as one expression. */
+  #between(measure: Expression, bounds: Expression): Condition {
+    if (bounds.kind === "binary" && bounds.operator === "and") {
+      return { kind: "between", measure, low: bounds.left, high: bounds.right, range: NOWHERE };
+    }
+    this.slip("syntax", bounds.range, "`between` wants two bounds, as in `between 2 and 3`.");
+    return { kind: "between", measure, low: bounds, high: bounds, range: NOWHERE };
+  }
+
+  #settle(condition: Condition, within: Expression | null, range: Range): Condition {
+    if (condition.kind === "fact" && condition.measure.kind === "binary" && isComparison(condition.measure)) {
+      const { left, right, operator } = condition.measure;
+      return {
+        kind: "comparison",
+        left,
+        operator: operator as "<" | "<=" | ">" | ">=",
+        right,
+        within,
+        range,
+      };
+    }
+    if (condition.kind === "between") {
+      if (within !== null)
+        this.slip("syntax", within.range, "`between` has its own bounds; leave `within` out.");
+      return { ...condition, range };
+    }
+    return { ...condition, within, range };
+  }
 }
