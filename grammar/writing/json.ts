@@ -9,17 +9,23 @@ import { unitText } from "../units/unit-text.ts";
 import type { CheckDocument, EquationsDocument, FindingDocument } from "./schemas.ts";
 import { expressionText } from "./text.ts";
 
+/** A file that was checked, the set it was checked in, and how paths of that set are shown to the reader. */
+export interface CheckedFile {
+  readonly report: FileReport;
+  readonly files: FileSet;
+  readonly shown: (path: string) => string;
+}
+
 /** What `equations --format json` says of one system; a refused one has empty arrays beside its findings. */
 export function equationsDocument(
-  report: SystemReport | null,
-  findings: readonly Finding[],
-  files: FileSet,
-  model: StateModel | null = report?.model ?? null,
+  { report, files, shown }: CheckedFile,
+  system: SystemReport | null,
+  model: StateModel | null = system?.model ?? null,
 ): EquationsDocument {
   const graph = model === null ? null : model.causal.graph;
   return {
     schema: "bondwright/equations@1",
-    system: report?.system ?? null,
+    system: system?.system ?? null,
     states: (model?.states ?? []).map(({ name, unit, start, kind }) => ({
       name,
       unit: unitOfSI(unit),
@@ -57,7 +63,7 @@ export function equationsDocument(
       solved,
     })),
     bonds: graph === null ? [] : graph.bonds.map((bond) => bondDocument(graph, bond, model)),
-    findings: findings.map((found) => findingDocument(found, files)),
+    findings: report.findings.map((found) => findingDocument(found, files, shown)),
   };
 }
 
@@ -89,30 +95,37 @@ function bondDocument(
 }
 
 /** What `check --format json` says of all files it looked at. */
-export function checkDocument(reports: readonly FileReport[], files: FileSet): CheckDocument {
-  const findings = reports.flatMap((report) => report.findings);
-  const expectations = reports.flatMap(({ path, systems }) =>
-    systems.flatMap((system) =>
-      system.expectations.map(({ trial, ...result }) => ({
+export function checkDocument(checked: readonly CheckedFile[]): CheckDocument {
+  const findings = findingsOf(checked).map(({ found, from }) =>
+    findingDocument(found, from.files, from.shown),
+  );
+  const expectations = checked.flatMap(({ report, shown }) =>
+    report.systems.flatMap((system) =>
+      system.expectations.map(({ system: name, trial, ...result }) => ({
+        system: name,
         ...(trial === null ? {} : { trial }),
-        file: path,
+        file: shown(report.path),
         ...result,
       })),
     ),
   );
   const count = (severity: Finding["severity"]) =>
     findings.filter((found) => found.severity === severity).length;
-  const systems = reports.flatMap(({ path, systems: own }) =>
-    own.map(({ system, model }) => ({ name: system, file: path, derived: model !== null })),
+  const systems = checked.flatMap(({ report, shown }) =>
+    report.systems.map(({ system, model }) => ({
+      name: system,
+      file: shown(report.path),
+      derived: model !== null,
+    })),
   );
   return {
     schema: "bondwright/check@1",
-    files: reports.map(({ path }) => path),
+    files: checked.map(({ report, shown }) => shown(report.path)),
     systems,
-    findings: findings.map((found) => findingDocument(found, files)),
+    findings,
     expectations,
     summary: {
-      files: reports.length,
+      files: checked.length,
       systems: systems.length,
       errors: count("error"),
       warnings: count("warning"),
@@ -126,32 +139,50 @@ export function checkDocument(reports: readonly FileReport[], files: FileSet): C
   };
 }
 
-export function findingDocument(found: Finding, files: FileSet): FindingDocument {
+/** All findings, each once: a file that others use is seen again with each of them. */
+export function findingsOf(checked: readonly CheckedFile[]): { found: Finding; from: CheckedFile }[] {
+  const seen = new Set<string>();
+  return checked.flatMap((from) =>
+    from.report.findings.flatMap((found) => {
+      const { file, start, end } = found.span;
+      const key = [from.shown(file), start, end, found.name, found.message].join("\n");
+      if (seen.has(key)) return [];
+      seen.add(key);
+      return [{ found, from }];
+    }),
+  );
+}
+
+type Shown = CheckedFile["shown"];
+
+export function findingDocument(
+  found: Finding,
+  files: FileSet,
+  shown: Shown = (path) => path,
+): FindingDocument {
   const { name, severity, message, span, facts, fix } = found;
+  const at = (where: Span) => place(where, files, shown);
   return {
     name,
     severity,
     message,
-    ...place(span, files),
+    ...at(span),
     facts: facts.map((fact) => ({
       message: fact.message,
-      ...(fact.span === undefined ? {} : place(fact.span, files)),
+      ...(fact.span === undefined ? {} : at(fact.span)),
     })),
     ...(fix === undefined
       ? {}
       : {
-          fix: {
-            title: fix.title,
-            edits: fix.edits.map(({ span: at, text }) => ({ ...place(at, files), text })),
-          },
+          fix: { title: fix.title, edits: fix.edits.map((edit) => ({ ...at(edit.span), text: edit.text })) },
         }),
   };
 }
 
-function place({ file, start, end }: Span, files: FileSet): Pick<FindingDocument, "file" | "start" | "end"> {
+function place({ file, start, end }: Span, files: FileSet, shown: Shown) {
   const source = files.get(file);
   const at = (offset: number) => source?.position(offset) ?? { line: 1, column: 1 };
-  return { file, start: at(start), end: at(end) };
+  return { file: shown(file), start: at(start), end: at(end) };
 }
 
 /** JSON has no word for what isn't finite. */
@@ -161,6 +192,6 @@ function quantity(value: number): number | "inf" | "-inf" | "nan" {
 }
 
 /** The unit that belongs to an SI value: the written one only where it is an SI unit itself. */
-function unitOfSI(unit: Unit): string {
+export function unitOfSI(unit: Unit): string {
   return unit.factor === 1 && unit.offset === 0 ? unit.text : unitText(unit.dimension);
 }

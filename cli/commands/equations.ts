@@ -1,0 +1,100 @@
+import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
+import { derivationOf } from "../../grammar/equations/derivation.ts";
+import type { StateModel } from "../../grammar/equations/model.ts";
+import { checkFile, type SystemReport } from "../../grammar/pipeline.ts";
+import { type CheckedFile, equationsDocument } from "../../grammar/writing/json.ts";
+import { systemMarkdown } from "../../grammar/writing/markdown.ts";
+import { modelLatex } from "../../grammar/writing/system-latex.ts";
+import { columns, glossaryText, modelText, type TextSection } from "../../grammar/writing/system-text.ts";
+import { expressionText } from "../../grammar/writing/text.ts";
+import { modelFiles } from "../model-files.ts";
+import { findingText } from "../output/findings.ts";
+import { type ColourChoice, inert, type Paint, paintFor, print, remark } from "../output/print.ts";
+import { WrongUse } from "../wrong-use.ts";
+
+export interface EquationsArguments {
+  readonly format: "text" | "json" | "latex" | "markdown";
+  readonly system?: string;
+  readonly steps?: boolean;
+  readonly states: "energy" | "co-energy";
+  readonly color: ColourChoice;
+  readonly stdinName: string;
+}
+
+/** Prints the equations of one system; findings go beside them, to standard error. 1 where an error refused it. */
+export function equations(file: string, options: EquationsArguments): number {
+  const [model, ...others] = modelFiles([file], options.stdinName);
+  if (others.length > 0) throw new WrongUse(`${file} is a folder; equations are derived for one file.`);
+  const report = checkFile(model.files, model.path);
+  const from: CheckedFile = { report, files: model.files, shown: model.shown };
+  const system = chooseSystem(from, options.system);
+  const text = reportText(from, system, options);
+  if (text !== "") print(text);
+  if (options.format === "text" || options.format === "latex") remarkFindings(from, system, options.color);
+  const refused = system?.model == null || report.findings.some(({ severity }) => severity === "error");
+  return refused ? 1 : 0;
+}
+
+/** The last system of the file, unless one is named. null where the text holds none that could be read. */
+function chooseSystem({ report, shown }: CheckedFile, name: string | undefined): SystemReport | null {
+  const system =
+    name === undefined ? report.systems.at(-1) : report.systems.find((one) => one.system === name);
+  if (system === undefined && name !== undefined) {
+    const names = report.systems.map((one) => one.system).join(", ") || "none";
+    throw new WrongUse(`${shown(report.path)} holds no system ${name}; it holds: ${names}.`);
+  }
+  return system ?? null;
+}
+
+function reportText(from: CheckedFile, system: SystemReport | null, options: EquationsArguments): string {
+  const model =
+    system?.model == null ? null : options.states === "co-energy" ? inCoEnergy(system.model) : system.model;
+  if (options.format === "json") return JSON.stringify(equationsDocument(from, system, model), null, 2);
+  if (system === null) return "";
+  if (options.format === "markdown") return systemMarkdown(from, { ...system, model });
+  if (model === null) return "";
+  if (options.format === "latex") return latexText(system, model);
+  const sections = [
+    ...modelText(model),
+    ...(options.steps ? stepSections(from, system.model as StateModel) : []),
+    ...glossaryText(model),
+  ];
+  return textReport(system, sections, paintFor(options.color));
+}
+
+function latexText(system: SystemReport, model: StateModel): string {
+  const sections = modelLatex(model).map(({ title, equations: lines }) =>
+    [`% ${title}`, ...lines.map((line) => `\\[ ${line} \\]`)].join("\n"),
+  );
+  return [`% ${inert(system.system)}`, ...sections].join("\n");
+}
+
+function textReport({ system, graph }: SystemReport, sections: readonly TextSection[], paint: Paint): string {
+  const about = graph?.description ? `: ${inert(graph.description.split("\n")[0])}` : "";
+  const blocks = sections.map(({ title, lines }) =>
+    [paint("strong", title), ...lines.map((line) => `  ${inert(line)}`)].join("\n"),
+  );
+  return [`${paint("strong", inert(system))}${about}`, ...blocks].join("\n\n");
+}
+
+/** Each equation's way from the rate of its store to what is collected, with the line that each step stands on. */
+function stepSections({ files, shown }: CheckedFile, model: StateModel): TextSection[] {
+  return model.states.map(({ name }) => ({
+    title: `Steps to ${name}'`,
+    lines: columns(
+      derivationOf(model, name).map(({ left, right, rule, span }) => {
+        const line = files.get(span.file)?.position(span.start).line ?? 1;
+        return [`${expressionText(left)} = ${expressionText(right)}`, `${rule}, ${shown(span.file)}:${line}`];
+      }),
+    ),
+  }));
+}
+
+function remarkFindings(from: CheckedFile, system: SystemReport | null, color: ColourChoice): void {
+  const paint = paintFor(color, process.stderr);
+  const refused = system?.model == null;
+  for (const found of from.report.findings) {
+    if (refused ? found.severity === "error" : found.severity !== "note")
+      remark(findingText(found, from, paint));
+  }
+}

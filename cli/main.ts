@@ -1,0 +1,107 @@
+#!/usr/bin/env node
+import { Command, CommanderError, Option } from "commander";
+import { version } from "../package.json";
+import { WrongUse } from "./wrong-use.ts";
+
+/**
+ * The command line. Exit codes: 0 clean, 1 findings at or over the asked severity or failed requirements,
+ * 2 wrong use, an unreadable file or an internal fault. What a command does is loaded when it is asked for.
+ */
+const EXIT_HELP =
+  "\nExit codes: 0 clean; 1 findings or failed requirements; 2 wrong use or an internal fault.";
+
+const ROOT_HELP = `
+Paths after \`use\` count from the root of the model set: the nearest parent folder that holds a
+bondwright.json; without one the folder given, or the nearest folder above the file in which they
+lead to files.`;
+
+const color = () =>
+  new Option("--color <when>", "colour the report").choices(["auto", "always", "never"]).default("auto");
+const stdinName = () =>
+  new Option(
+    "--stdin-name <path>",
+    "what standard input (-) is called, and where its `use` paths count from",
+  ).default("stdin.wright");
+
+const program = new Command("bondwright")
+  .description("Checks bond-graph models, derives their equations, formats their text.")
+  .version(version, "-V, --version")
+  .addHelpText("after", EXIT_HELP)
+  .exitOverride();
+
+program
+  .command("check")
+  .description("say what is wrong with models, and whether they meet their requirements")
+  .argument("[paths...]", "files, folders with all .wright files below, or - for standard input", ["."])
+  .addOption(new Option("--format <form>", "form of the report").choices(["text", "json"]).default("text"))
+  .addOption(
+    new Option("--fail-on <severity>", "least severity that fails")
+      .choices(["error", "warning", "note"])
+      .default("error"),
+  )
+  .option("--system <name>", "only this system")
+  .option("--quiet", "print only what fails")
+  .addOption(color())
+  .addOption(stdinName())
+  .addHelpText("after", ROOT_HELP + EXIT_HELP)
+  .action(async (paths, options) => {
+    const { check } = await import("./commands/check.ts");
+    process.exitCode = check(paths, options);
+  });
+
+program
+  .command("equations")
+  .description("derive the state equations of a system")
+  .argument("<file>", "a .wright file, or - for standard input")
+  .option("--system <name>", "this system of the file (default: the last)")
+  .addOption(
+    new Option("--format <form>", "form of the report")
+      .choices(["text", "json", "latex", "markdown"])
+      .default("text"),
+  )
+  .option("--steps", "show how each equation came about")
+  .addOption(
+    new Option("--states <variables>", "show stores by their energy or co-energy variables")
+      .choices(["energy", "co-energy"])
+      .default("energy"),
+  )
+  .addOption(color())
+  .addOption(stdinName())
+  .addHelpText("after", ROOT_HELP + EXIT_HELP)
+  .action(async (file, options) => {
+    const { equations } = await import("./commands/equations.ts");
+    process.exitCode = equations(file, options);
+  });
+
+program
+  .command("format")
+  .description("bring files into the notation's one layout")
+  .argument("[paths...]", "files, folders with all .wright files below, or - for standard input", ["."])
+  .option("--check", "change nothing; fail when a file would change")
+  .option("--stdout", "print the formatted text instead of changing files")
+  .addOption(stdinName())
+  .addHelpText("after", EXIT_HELP)
+  .action(async (paths, options) => {
+    const { format } = await import("./commands/format.ts");
+    process.exitCode = format(paths, options);
+  });
+
+// A reader that has seen enough (`| head`) is no fault of the report.
+process.stdout.on("error", (error: NodeJS.ErrnoException) => {
+  process.exit(error.code === "EPIPE" ? process.exitCode : 2);
+});
+
+try {
+  await program.parseAsync();
+} catch (error) {
+  if (error instanceof CommanderError) process.exitCode = error.exitCode === 0 ? 0 : 2;
+  else {
+    const wrongUse = error instanceof WrongUse;
+    const detail =
+      error instanceof Error ? ((wrongUse ? error.message : error.stack) ?? error.message) : String(error);
+    process.stderr.write(
+      wrongUse ? `bondwright: ${detail}\n` : `bondwright: internal fault, please report it: ${detail}\n`,
+    );
+    process.exitCode = 2;
+  }
+}
