@@ -1,6 +1,8 @@
+import { readFile } from "node:fs/promises";
 import { beforeAll, describe, expect, test } from "vitest";
 import { readFiles } from "../../app/operations/read-files.server.ts";
 import { saveFiles } from "../../app/operations/save-files.server.ts";
+import routes from "../../app/routes.ts";
 import { doorOf } from "../../app/session/door.server.ts";
 import { permissionsOf } from "../../app/session/permissions.server.ts";
 import { Commit, JournalEntry, Membership, roles } from "../../db/models/index.ts";
@@ -19,6 +21,7 @@ const promised = {
 
 /** Who passes each loader and action, and what the role must allow. A route that is not named here fails. */
 const table: Record<string, { loader?: string; action?: string }> = {
+  root: { loader: "anyone" },
   "routes/my-sets/route.tsx": { loader: "signed-in" },
   "routes/sign-in/route.tsx": { loader: "anyone", action: "anyone" },
   "routes/sign-out/route.ts": { loader: "anyone", action: "anyone" },
@@ -108,6 +111,15 @@ test("every loader and action of every route stands in the table and has the doo
     ]),
   );
   expect(found).toEqual(said);
+});
+
+test("a page has no loader or action of its own beside those of its server half", async () => {
+  for (const { file } of routes) {
+    const page = await readFile(new URL(`../../app/${file}`, import.meta.url), "utf8");
+    expect(page, file).not.toMatch(/export\s+(async\s+)?(function|const|let)\s+(loader|action)\b/);
+    for (const [, from] of page.matchAll(/export\s*\{[^}]*\b(?:loader|action)\b[^}]*\}\s*from\s*"([^"]+)"/g))
+      expect(from, file).toMatch(/^\.\/[a-z-]+\.server\.ts$/);
+  }
 });
 
 describe("every guarded address", () => {

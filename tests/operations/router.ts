@@ -8,8 +8,8 @@ import {
   RouterContextProvider,
   type ServerBuild,
 } from "react-router";
+import * as root from "../../app/root.server.ts";
 import routes from "../../app/routes.ts";
-import { middleware } from "../../app/session/middleware.server.ts";
 
 const app = new URL("../../app/", import.meta.url).pathname;
 
@@ -18,9 +18,12 @@ interface ServerHalf {
   action?: ActionFunction;
 }
 
-/** The server half of every route of `routes.ts`: what the modules beside its page export. */
+/** The server half of the root and of every route of `routes.ts`: what the modules beside its page export. */
 export async function serverHalves() {
-  const halves = [];
+  const rootModule: ServerHalf = { loader: root.loader as LoaderFunction };
+  const halves: { id: string; path?: string; index?: boolean; module: ServerHalf }[] = [
+    { id: "root", path: "", module: rootModule },
+  ];
   for (const { file, path, index } of routes) {
     const folder = dirname(join(app, file));
     const module: ServerHalf = {};
@@ -36,11 +39,12 @@ export async function serverHalves() {
  * page would be given.
  */
 export async function newRouter() {
-  const routesOfBuild: Record<string, unknown> = {
-    root: { id: "root", path: "", module: { default: () => null, middleware } },
-  };
-  for (const half of await serverHalves())
-    routesOfBuild[half.id] = { ...half, parentId: "root", module: { default: () => null, ...half.module } };
+  const routesOfBuild: Record<string, unknown> = {};
+  for (const { module, ...half } of await serverHalves()) {
+    const parent = half.id === "root" ? { middleware: root.middleware } : {};
+    const parentId = half.id === "root" ? undefined : "root";
+    routesOfBuild[half.id] = { ...half, parentId, module: { default: () => null, ...parent, ...module } };
+  }
   const build = {
     entry: {
       module: {

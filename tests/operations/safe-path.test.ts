@@ -1,0 +1,80 @@
+import { expect, test } from "vitest";
+import { clashes, pathProblem } from "../../app/storage/safe-path.ts";
+
+test.each([
+  "a.wright",
+  "parts/rope 2.wright",
+  "Ålesund/båt.wright",
+  "データ/巻上機.wright",
+  ".notes",
+  "git.wright",
+  "console.csv",
+  "com.wright",
+  "a..b",
+  "__proto__",
+])("%j is a path", (path) => expect(pathProblem(path)).toBeNull());
+
+test.each([
+  "",
+  "/a",
+  "a/",
+  "a//b",
+  ".",
+  "..",
+  "../a",
+  "a/../b",
+  "./a",
+  ".git",
+  ".GIT/config",
+  "a/.Git",
+  "GIT~1",
+  "git~2/x",
+  ".gitmodules",
+  ".gitattributes",
+  "a\\b",
+  "C:a",
+  "con",
+  "CON.wright",
+  "parts/nul.txt",
+  "com1",
+  "lpt9.csv",
+  "a.",
+  "a ",
+  " a",
+  "a\u00a0",
+  "a./b",
+  "a\nb",
+  "a\tb",
+  "a\0b",
+  "a\u007f",
+  "a\u202eb",
+  "a\u2066b",
+  "a\u200db",
+  "\ufeffa",
+  ".g\u200cit",
+  "a\u2028b",
+  "a\ud800",
+  "A\u030alesund",
+  "what?",
+  "a*b",
+  'a"b',
+  "a|b",
+  "a<b",
+  "x".repeat(201),
+  "x/".repeat(20).concat("x"),
+  Array(11).fill("y".repeat(150)).join("/"),
+])("%j is refused, in words", (path) => expect(pathProblem(path)).toMatch(/\.$/));
+
+test.each([
+  [["a.wright", "A.wright"]],
+  [["båt", "BÅT"]],
+  [["stra\u00dfe", "STRASSE"]],
+  [["parts/a", "Parts/b"]],
+  [["a", "a/b"]],
+  [["a/b", "a"]],
+  [["\ufb01n", "fin"]],
+])("%j cannot stand side by side", (paths) => expect(clashes(paths).size).toBe(1));
+
+test("the same folder, and names that merely begin alike, can", () => {
+  expect(clashes(["parts/a", "parts/b", "parts.wright", "part"]).size).toBe(0);
+});
