@@ -12,6 +12,10 @@ export const meta: Route.MetaFunction = () => [
   { name: "description", content: "Bond graphs as text, with the equations that follow from them." },
 ];
 
+export const links: Route.LinksFunction = () => [
+  { rel: "icon", href: "/favicon.svg", type: "image/svg+xml" },
+];
+
 export function Layout({ children }: { children: ReactNode }) {
   const root = useRouteLoaderData<typeof import("./root.server.ts").loader>("root");
   const theme = root?.theme ?? "system";

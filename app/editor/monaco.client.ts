@@ -74,6 +74,9 @@ function theme(
       "editorSuggestWidget.foreground": `#${ink}`,
       "editorSuggestWidget.selectedBackground": `#${selection}`,
       "editorSuggestWidget.selectedForeground": `#${ink}`,
+      ...Object.fromEntries(
+        [1, 2, 3, 4, 5, 6].map((depth) => [`editorBracketHighlight.foreground${depth}`, `#${ink}`]),
+      ),
       focusBorder: "#00000000",
     },
   } satisfies monaco.editor.IStandaloneThemeData;

@@ -38,7 +38,7 @@ export const notationTokens: languages.IMonarchLanguage = {
       [/"[^"\n]*"?/, "string"],
       [/->\||\|->|->/, "arrow"],
       [/<-|<=|>=|\.\.|[-+*/^=<>]/, "operator"],
-      [/[{}()[\],]/, "@brackets"],
+      [/[{}()[\],]/, "delimiter"],
       [WORDS, "keyword"],
       [FUNCTIONS, "function"],
       [/[\p{L}_][\p{L}\p{N}_]*/u, "name"],
