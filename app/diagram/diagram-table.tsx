@@ -32,7 +32,7 @@ export function DiagramTable({ model, isLit, onPoint, onOpen }: DiagramTableProp
             <th scope="col">Symbol</th>
             <th scope="col">Name</th>
             <th scope="col">Domain</th>
-            <th scope="col">State</th>
+            <th scope="col">Marked</th>
             <th scope="col">Description</th>
           </tr>
         </thead>
@@ -70,7 +70,7 @@ export function DiagramTable({ model, isLit, onPoint, onOpen }: DiagramTableProp
             <tr key={bond.id} {...lights({ kind: "bond", id: bond.id })}>
               <th scope="row">
                 <button type="button" className="word" onClick={() => onOpen(bond.span)}>
-                  <code>{bond.id}</code>
+                  <code style={{ whiteSpace: "nowrap" }}>{bond.id}</code>
                 </button>
               </th>
               <td>{bond.domain}</td>

@@ -41,7 +41,9 @@ export function Diagram({ model, lit, onLight, onOpen }: DiagramProps) {
   if (asTable) {
     return (
       <div className="diagram">
-        <p className="no-print diagram-tools">{asTableButton}</p>
+        <p className="no-print diagram-tools" style={{ fontSize: "0.8125rem" }}>
+          {asTableButton}
+        </p>
         <DiagramTable model={model} isLit={isLit} onPoint={onPoint} onOpen={onOpen} />
       </div>
     );

@@ -10,6 +10,7 @@ import { useViewBox } from "./use-view-box.ts";
 import { moved, revealing, zoomed } from "./view-box.ts";
 
 const NOTHING: Box = { x: 0, y: 0, width: 600, height: 200 };
+const TOOLS = { display: "flex", flexWrap: "wrap", gap: "0.25rem", fontSize: "0.8125rem" } as const;
 const WAYS: Readonly<Record<string, Way>> = {
   ArrowLeft: "left",
   ArrowRight: "right",
@@ -136,7 +137,7 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
         {fault === null && drawing === null ? "The drawing is being laid out." : null}
       </p>
       {marks.length === 0 ? null : <p className="note">{marks.join(" · ")}</p>}
-      <p className="no-print diagram-tools" style={{ display: "flex", flexWrap: "wrap", gap: "0.25rem" }}>
+      <p className="no-print diagram-tools" style={TOOLS}>
         {children}
         <button type="button" className="button" onClick={() => zoom(1.25)}>
           Closer
@@ -167,11 +168,14 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
           Save as SVG
         </button>
       </p>
-      <p id={help} className="note no-print">
-        Drag or use the arrow keys to move, + and − or the wheel with Ctrl to zoom, 0 for the whole. Tab goes
-        on to the elements: there the arrow keys lead from one to the next, Enter opens its line, Escape leads
-        back.
-      </p>
+      <details className="note no-print">
+        <summary style={{ minHeight: "1.5rem" }}>Keys and pointer</summary>
+        <p id={help}>
+          Drag or use the arrow keys to move, + and − or the wheel with Ctrl to zoom, 0 for the whole. Tab
+          goes on to the elements: there the arrow keys lead from one to the next, Enter opens its line,
+          Escape leads back.
+        </p>
+      </details>
     </div>
   );
 }

@@ -1,5 +1,12 @@
 import { type KeyboardEvent, memo } from "react";
-import { boxOf, type DrawnPart, LETTERING, type Shape, SUBSCRIPT } from "../../grammar/writing/drawing.ts";
+import {
+  type Box,
+  boxOf,
+  type DrawnPart,
+  LETTERING,
+  type Shape,
+  SUBSCRIPT,
+} from "../../grammar/writing/drawing.ts";
 import { LETTERS, PENS, pathData, type Theme } from "../../grammar/writing/drawing-svg.ts";
 import type { Part } from "./nearest.ts";
 
@@ -56,12 +63,21 @@ export const DrawnPartView = memo(function DrawnPartView(props: DrawnPartProps) 
   );
 });
 
+/** Under the symbol and under what is written beside it, each by itself, so that no stroke is hidden. */
 function NodeGround({ part, lit }: { part: DrawnPart; lit: boolean }) {
-  const { x, y, width, height } = boxOf(part.shapes);
-  const style = lit
-    ? { fill: LIT, stroke: PAGE.ink, strokeWidth: 1 }
-    : { fill: "transparent", stroke: "none" };
-  return <rect x={x - 4} y={y - 3} width={width + 8} height={height + 6} rx={2} style={style} />;
+  const written = part.shapes.filter((shape) => shape.kind === "text" && shape.lettering !== "symbol");
+  const drawn = part.shapes.filter((shape) => !written.includes(shape));
+  return (
+    <>
+      <Ground box={boxOf(drawn)} stroke={lit ? PAGE.ink : "none"} fill={lit ? LIT : "transparent"} />
+      <Ground box={boxOf(written)} stroke="none" fill={lit ? LIT : "transparent"} />
+    </>
+  );
+}
+
+function Ground({ box, fill, stroke }: { box: Box; fill: string; stroke: string }) {
+  const { x, y, width, height } = box;
+  return <rect x={x - 2} y={y - 1} width={width + 4} height={height + 2} rx={2} style={{ fill, stroke }} />;
 }
 
 function BondGround({ part, lit }: { part: DrawnPart; lit: boolean }) {

@@ -88,8 +88,8 @@ function graphOf(model: DiagramModel): Graph {
 
 /**
  * Directs the bonds of the spine by distance from a root, so that a chain is drawn as a chain whatever way its power
- * counts. The root of a connected part is an end with a source; else one of the two ends farthest from each other, the
- * first in the text; where there is no end, the first node with a source.
+ * counts. The root of a connected part is one of the two ends farthest from each other, the first in the text; where
+ * there is no end, the first node with a source.
  */
 function linksOutwards(
   model: DiagramModel,
@@ -113,11 +113,7 @@ function linksOutwards(
     const inText = [...part].sort((a, b) => a - b);
     const farEnd = part.findLast(isEnd);
     const otherEnd = farEnd === undefined ? undefined : sweep(graph, inSpine, farEnd).findLast(isEnd);
-    const root =
-      inText.filter(isEnd).find(sourced) ??
-      inText.find((hub) => hub === farEnd || hub === otherEnd) ??
-      inText.find(sourced) ??
-      first;
+    const root = inText.find((hub) => hub === farEnd || hub === otherEnd) ?? inText.find(sourced) ?? first;
     for (const hub of sweep(graph, inSpine, root)) {
       order[hub] = reached;
       reached += 1;

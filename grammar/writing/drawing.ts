@@ -60,8 +60,8 @@ export type Lettering = "symbol" | "name" | "domain" | "word";
 
 /** Sizes in user units; widths are estimates that hold for the fonts named in the SVG and for their stand-ins. */
 export const LETTERING: Record<Lettering, { readonly size: number; readonly advance: number }> = {
-  symbol: { size: 19, advance: 11.6 },
-  name: { size: 11, advance: 6.65 },
+  symbol: { size: 20, advance: 12.2 },
+  name: { size: 12, advance: 7.25 },
   domain: { size: 10, advance: 5.3 },
   word: { size: 10, advance: 5.6 },
 };
