@@ -1,36 +1,33 @@
 import { existsSync } from "node:fs";
-import { dirname, join } from "node:path";
+import { dirname } from "node:path";
 import { describe, expect, test } from "vitest";
 import { read, trackedFiles } from "./tracked.ts";
 
-const folders = new Set(trackedFiles.flatMap((path) => parents(path)));
+const folders = new Set(trackedFiles.flatMap(foldersAbove));
 
 describe.each(["README.md", "DEVELOPERS.md"])("%s", (document) => {
-  const words = [...read(document).matchAll(/`([^`\s]+)`/g)].map(([, word]) => word as string);
+  const text = read(document);
 
   test("names only paths that exist", () => {
-    const paths = words.filter((word) => isPath(word)).map((word) => word.replace(/\/$/, ""));
-    expect(paths.length).toBeGreaterThan(3);
-    expect(paths.filter((path) => !existsSync(path) && !folders.has(path))).toEqual([]);
+    const words = [...text.matchAll(/`([^`\s]+)`/g)].map(([, word]) => word as string);
+    const named = [...words.filter(isPath), ...pathsInTree(text)];
+    expect(named).not.toEqual([]);
+    expect(named.filter((path) => !exists(path))).toEqual([]);
   });
 
   test("names only scripts that package.json has", () => {
     const { scripts } = JSON.parse(read("package.json"));
-    const named = [...read(document).matchAll(/npm (?:run )?(start|test|[\w:]+)`/g)].map(
-      ([, name]) => name as string,
-    );
-    expect(named.filter((name) => !(name in scripts) && name !== "ci")).toEqual([]);
+    const named = [...text.matchAll(/npm (?:run )?(start|test|[\w:]+)`/g)].map(([, name]) => name as string);
+    expect(named.filter((name) => !(name in scripts))).toEqual([]);
   });
 
   test("shows only pictures and links that are there", () => {
-    const links = [...read(document).matchAll(/\]\(([^)#:]+)(?:#[^)]*)?\)/g)].map(
-      ([, path]) => path as string,
-    );
-    expect(links.filter((path) => !existsSync(path))).toEqual([]);
+    const links = [...text.matchAll(/\]\(([^)#:]+)(?:#[^)]*)?\)/g)].map(([, path]) => path as string);
+    expect(links.filter((path) => !exists(path))).toEqual([]);
   });
 });
 
-/** A word with a slash that starts in one of the project's folders, or a file at the root; no pattern, nothing built. */
+/** A word that starts in one of the project's folders, or a file at the root; no pattern, nothing that is built. */
 function isPath(word: string): boolean {
   if (/[<>*{}=:]/.test(word)) return false;
   return (
@@ -38,7 +35,25 @@ function isPath(word: string): boolean {
   );
 }
 
-function parents(path: string): string[] {
+/** The folders and files at the head of the lines of a drawn tree; what is in a folder stands two blanks deeper. */
+function pathsInTree(text: string): string[] {
+  const tree = /```\n(grammar\/ [\s\S]*?)```/.exec(text)?.[1] ?? "";
+  const found: string[] = [];
+  let top = "";
+  for (const line of tree.split("\n")) {
+    const [, indent, heads] = /^( {0,2})((?:[\w-]+(?:\/|\.ts) )+)/.exec(line) ?? [];
+    const names = heads?.trim().split(" ") ?? [];
+    if (indent === "") top = names[0] ?? "";
+    found.push(...names.map((name) => (indent === "" ? name : top + name)));
+  }
+  return found;
+}
+
+function exists(path: string): boolean {
+  return existsSync(path) && (trackedFiles.includes(path) || folders.has(path.replace(/\/$/, "")));
+}
+
+function foldersAbove(path: string): string[] {
   const parent = dirname(path);
-  return parent === "." ? [] : [...parents(parent), join(parent)];
+  return parent === "." ? [] : [...foldersAbove(parent), parent];
 }
