@@ -1,6 +1,6 @@
 import { type Fact, type Finding, type Fix, finding } from "../diagnostics/finding.ts";
 import type { FlatNode } from "../resolve/graph.ts";
-import { chainTo, reasonSpan, reasonText, titleOf } from "./explain.ts";
+import { chainTo, code, reasonSpan, reasonText, titleOf } from "./explain.ts";
 import { type Clash, opposite } from "./propagation.ts";
 import type { CausalGraph, Reason, Stroke } from "./strokes.ts";
 
@@ -32,7 +32,7 @@ export function singularFinding(causal: CausalGraph, bond: number, first: Clash,
       nodes.add(graph.nodes[node]);
   }
   const facts = [...nodes].map((node) => ({ message: `${titleOf(node)} takes part`, span: node.span }));
-  const message = `Neither stroke can stand on ${graph.bonds[bond].id}: the junctions round it contradict each other, so their efforts and flows have no solution.`;
+  const message = `Neither stroke can stand on ${code(graph.bonds[bond].id)}: the junctions round it contradict each other, so their efforts and flows have no solution.`;
   return finding("singular-junctions", graph.bonds[bond].span, message, { facts });
 }
 
@@ -44,7 +44,7 @@ function conflictWords(causal: CausalGraph, { bond, kept, refused }: Clash): str
   // The side that sets the stroke at its far end gives the effort; where both do, the effort comes from both ends.
   const keptSide = kept.node === from ? "from" : "to";
   const variable = keptSide === opposite(refused.stroke) ? "flow" : "effort";
-  return `The ${variable} of ${id} is set at both ends: ${first}, but ${second}.`;
+  return `The ${variable} of ${code(id)} is set at both ends: ${first}, but ${second}.`;
 }
 
 interface Root {
@@ -65,7 +65,7 @@ function refusedWords(
   const against = reasonText(causal, bond, stroke, other);
   const demanded = graph.bonds[asked.bond];
   if (asked.reason.rule === "demanded") {
-    const message = `The stroke that the text demands on ${demanded.id} cannot stand: ${against}.`;
+    const message = `The stroke that the text demands on ${code(demanded.id)} cannot stand: ${against}.`;
     const span = demanded.demanded?.span;
     const fix =
       span === undefined

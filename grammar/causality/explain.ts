@@ -67,7 +67,7 @@ function stepOf(causal: CausalGraph, index: number): ReasonStep {
     return {
       bond: index,
       stroke: "to",
-      text: `the stroke of ${bond.id} is open, because of a conflict`,
+      text: `the stroke of ${code(bond.id)} is open, because of a conflict`,
       span: bond.span,
     };
   }
@@ -98,27 +98,27 @@ export function reasonText(causal: CausalGraph, index: number, stroke: Stroke, r
   const gives = here ? "flow" : "effort";
   switch (reason.rule) {
     case "source":
-      return `${title} sets the ${gives} of ${bond.id}`;
+      return `${title} sets the ${gives} of ${code(bond.id)}`;
     case "demanded":
-      return `the text demands the stroke of ${bond.id} at ${graph.nodes[stroke === "from" ? bond.from : bond.to].name}`;
+      return `the text demands the stroke of ${code(bond.id)} at ${code(graph.nodes[stroke === "from" ? bond.from : bond.to].name)}`;
     case "one-way-law":
-      return `the one-way law of ${title} gives the ${gives} of ${bond.id}`;
+      return `the one-way law of ${title} gives the ${gives} of ${code(bond.id)}`;
     case "heat-bond":
-      return `${title} gives the flow of its heat bond ${bond.id}`;
+      return `${title} gives the flow of its heat bond ${code(bond.id)}`;
     case "integral-store":
-      return `${title} integrates, and so gives the ${gives} of ${bond.id}`;
+      return `${title} integrates, and so gives the ${gives} of ${code(bond.id)}`;
     case "derivative-store":
       return `${title} cannot integrate: that would contradict ${listBonds(causal, reason.premises)}`;
     case "law-not-invertible":
-      return `the law of ${title} cannot be turned round, so it gives the ${gives} of ${bond.id}`;
+      return `the law of ${title} cannot be turned round, so it gives the ${gives} of ${code(bond.id)}`;
     case "chosen-resistor":
-      return `${title} gives the ${gives} of ${bond.id}, as its law is written; nothing forces it`;
+      return `${title} gives the ${gives} of ${code(bond.id)}, as its law is written; nothing forces it`;
     case "chosen-bond":
-      return `the stroke of ${bond.id} is free, and taken at ${graph.nodes[stroke === "from" ? bond.from : bond.to].name}`;
+      return `the stroke of ${code(bond.id)} is free, and taken at ${code(graph.nodes[stroke === "from" ? bond.from : bond.to].name)}`;
     case "excluded":
-      return `the other stroke on ${bond.id} would contradict ${listBonds(causal, reason.premises)}`;
+      return `the other stroke on ${code(bond.id)} would contradict ${listBonds(causal, reason.premises)}`;
     case "open-port":
-      return `open port ${node.name} is taken to give the ${gives} of ${bond.id}`;
+      return `open port ${code(node.name)} is taken to give the ${gives} of ${code(bond.id)}`;
     case "transformer":
     case "gyrator":
       return twoPortText(causal, index, gives, reason, title);
@@ -138,11 +138,11 @@ function junctionText(
   const bond = causal.graph.bonds[index];
   const title = titleOf(node);
   if (gives === variable) {
-    return `${title} has its ${variable} from ${listBonds(causal, reason.premises)}, and passes it on to ${bond.id}`;
+    return `${title} has its ${variable} from ${listBonds(causal, reason.premises)}, and passes it on to ${code(bond.id)}`;
   }
   if (reason.premises.length === 0)
-    return `${title} has no bond but ${bond.id}, which must bring its ${variable}`;
-  return `no other bond of ${title} brings its ${variable}, so ${bond.id} must`;
+    return `${title} has no bond but ${code(bond.id)}, which must bring its ${variable}`;
+  return `no other bond of ${title} brings its ${variable}, so ${code(bond.id)} must`;
 }
 
 function twoPortText(
@@ -154,23 +154,29 @@ function twoPortText(
 ): string {
   const given = reason.rule === "transformer" ? gives : gives === "effort" ? "flow" : "effort";
   const premise = listBonds(causal, reason.premises);
-  const id = causal.graph.bonds[index].id;
+  const id = code(causal.graph.bonds[index].id);
   return reason.rule === "transformer"
     ? `${title} passes the ${given} of ${premise} on to ${id}`
     : `${title} turns the ${given} of ${premise} into the ${gives} of ${id}`;
 }
 
-/** `1-junction shaft`, `Se supply`, `open port top`. */
+/** 1-junction `shaft`, Se `supply`, open port `top`. */
 export function titleOf(node: FlatNode): string {
-  if (node.kind === "0" || node.kind === "1") return `${node.kind}-junction ${node.name}`;
-  if (node.kind === "port") return `open port ${node.name}`;
-  return `${node.modulated ? "M" : ""}${node.kind} ${node.name}`;
+  const name = code(node.name);
+  if (node.kind === "0" || node.kind === "1") return `${node.kind}-junction ${name}`;
+  if (node.kind === "port") return `open port ${name}`;
+  return `${node.modulated ? "M" : ""}${node.kind} ${name}`;
+}
+
+/** Names stand in backquotes in every message. */
+export function code(name: string): string {
+  return `\`${name}\``;
 }
 
 const NAMED_BONDS = 4;
 
 function listBonds(causal: CausalGraph, bonds: readonly number[]): string {
-  const names = bonds.slice(0, NAMED_BONDS).map((bond) => causal.graph.bonds[bond].id);
+  const names = bonds.slice(0, NAMED_BONDS).map((bond) => code(causal.graph.bonds[bond].id));
   const rest = bonds.length - names.length;
   if (rest > 0) return `${names.join(", ")} and ${rest} more`;
   if (names.length === 0) return "the junctions themselves";

@@ -53,7 +53,7 @@ export interface StorePort {
 export interface ReasonStep {
   readonly bond: number;
   readonly stroke: Stroke;
-  /** In the trade's words: `Se supply sets the effort of supply->armature`. */
+  /** In the trade's words: Se `supply` sets the effort of `supply->armature`. */
   readonly text: string;
   readonly span: Span;
 }

@@ -102,7 +102,7 @@ function factVerdict(condition: Condition & { readonly kind: "fact" }, model: St
   if (name !== null && Object.hasOwn(COUNTS, name)) {
     return {
       kind: "none",
-      message: `${name} is a number, so a requirement compares it: \`expect ${name} = …\`.`,
+      message: `\`${name}\` is a number, so a requirement compares it: \`expect ${name} = …\`.`,
     };
   }
   return { kind: "none", message: "This is neither a fact nor a comparison." };
@@ -139,7 +139,7 @@ function shown({ value, dimension }: Value): string {
 }
 
 function laterText(name: string): string {
-  return `${name} is read, but not yet judged.`;
+  return `\`${name}\` is read, but not yet judged.`;
 }
 
 function resultOf(system: string, text: string, verdict: Verdict): ExpectationResult {

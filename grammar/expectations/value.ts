@@ -34,7 +34,7 @@ export function measure(expr: Expression, model: StateModel, depth = 0): Measure
       return value(expr.value);
     case "quantity": {
       const unit = parseUnit(expr.unit.text);
-      if (unit === null) return none(`${expr.unit.text} is not a known unit.`);
+      if (unit === null) return none(`\`${expr.unit.text}\` is not a known unit.`);
       return value(toSI(expr.value, unit), unit.dimension, unit.text === "%" || unit.text === "ppm");
     }
     case "group":
@@ -69,12 +69,13 @@ export function measure(expr: Expression, model: StateModel, depth = 0): Measure
 function nameOf(name: string, model: StateModel): Measured {
   if (Object.hasOwn(COUNTS, name)) return value(COUNTS[name](model));
   if (LATER.has(name)) return later(name);
-  if (Object.hasOwn(FACTS, name)) return none(`${name} holds or does not; it is not a number to compare.`);
+  if (Object.hasOwn(FACTS, name))
+    return none(`\`${name}\` holds or does not; it is not a number to compare.`);
   if (name === "pi") return value(Math.PI);
   const parameter = model.causal.graph.parameters.find((one) => one.name === name);
   if (parameter !== undefined) return value(parameter.value, parameter.unit.dimension);
   return none(
-    `${name} is neither a measure of a system nor a parameter; order, dependent, loops and integral are.`,
+    `\`${name}\` is neither a measure of a system nor a parameter; \`order\`, \`dependent\`, \`loops\` and \`integral\` are measures.`,
   );
 }
 
@@ -102,11 +103,12 @@ function combine(operator: string, left: Measured, right: Measured): Measured {
 }
 
 function callOf(name: string, args: readonly Measured[]): Measured {
-  if (!NUMBERS.has(name)) return none(`${name} is not a measure of a system.`);
+  if (!NUMBERS.has(name)) return none(`\`${name}\` is not a measure of a system.`);
   const values: number[] = [];
   for (const arg of args) {
     if (arg.kind !== "value") return arg;
-    if (!isDimensionless(arg.dimension)) return none(`${name} takes numbers without a unit in a condition.`);
+    if (!isDimensionless(arg.dimension))
+      return none(`\`${name}\` takes numbers without a unit in a condition.`);
     values.push(arg.value);
   }
   return value(applyFunction(name as FunctionName, values));

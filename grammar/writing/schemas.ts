@@ -48,7 +48,7 @@ export const EquationsDocument = z.strictObject({
       name: Name,
       unit: Unit,
       start: Quantity,
-      kind: z.enum(["p", "q", "e", "f", "tracked"]),
+      kind: z.enum(["p", "q", "tracked"]),
     }),
   ),
   dependent: z.array(
