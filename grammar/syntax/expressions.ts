@@ -79,7 +79,7 @@ export class ExpressionParser extends EmbeddedActionsParser {
 
   readonly expression = this.RULE("expression", (): Expression => {
     let last = this.SUBRULE(this.simple);
-    const arms: { readonly then: Expression; readonly condition: Expression }[] = [];
+    const arms: { readonly value: Expression; readonly condition: Expression }[] = [];
     const outside = this.#depth;
     this.MANY(() => {
       this.CONSUME(Where);
@@ -88,14 +88,15 @@ export class ExpressionParser extends EmbeddedActionsParser {
       const condition = this.SUBRULE1(this.simple);
       this.equality -= 1;
       this.CONSUME(Else);
-      arms.push({ then: last, condition });
+      arms.push({ value: last, condition });
       last = this.SUBRULE2(this.simple);
     });
     this.#depth = outside;
     if (this.RECORDING_PHASE) return last;
     for (let arm = arms.pop(); arm !== undefined; arm = arms.pop()) {
-      const range = { start: arm.then.range.start, end: last.range.end };
-      last = { kind: "where", then: arm.then, condition: arm.condition, otherwise: last, range };
+      const range = { start: arm.value.range.start, end: last.range.end };
+      // biome-ignore lint/suspicious/noThenProperty: the branch is an expression, nothing that could be awaited.
+      last = { kind: "where", then: arm.value, condition: arm.condition, otherwise: last, range };
     }
     return last;
   });

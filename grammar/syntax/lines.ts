@@ -137,7 +137,7 @@ class LineMaker {
   #endRow(at: number): void {
     if (this.#current.length === 0) {
       if (!this.#row.comment) this.#above = [];
-    } else if (!this.#goesOn() || this.#beginsStatement(at + 1)) this.#finish(null, null);
+    } else if (!this.#goesOn(at) || this.#beginsStatement(at + 1)) this.#finish(null, null);
     this.#row = { comment: false, line: null };
   }
 
@@ -172,10 +172,19 @@ class LineMaker {
     return token.startOffset === 0 || /\s/.test(this.#text[token.startOffset - 1]);
   }
 
-  #goesOn(): boolean {
+  #goesOn(at: number): boolean {
     if (this.#open.length > 0) return true;
+    if (this.#current[0].image === "curve" && this.#tokens[this.#nextSpeaking(at)]?.tokenType === Open)
+      return true;
     const type = (this.#current.at(-1) as IToken).tokenType;
     return GOES_ON.has(type) || belongs(type, Binary) || belongs(type, AnyArrow);
+  }
+
+  /** Index of the next token that is neither a line end nor a comment. */
+  #nextSpeaking(from: number): number {
+    let at = from;
+    while (at < this.#tokens.length && SILENT.has(this.#tokens[at].tokenType)) at += 1;
+    return at;
   }
 
   /**
@@ -183,8 +192,7 @@ class LineMaker {
    * and it costs this statement alone. No expression holds two words side by side, nor an arrow inside brackets.
    */
   #beginsStatement(from: number): boolean {
-    let at = from;
-    while (at < this.#tokens.length && SILENT.has(this.#tokens[at].tokenType)) at += 1;
+    const at = this.#nextSpeaking(from);
     const first = this.#tokens[at];
     const second = this.#tokens[at + 1];
     if (first === undefined || second === undefined) return false;
