@@ -90,7 +90,15 @@ export interface AlgebraicLoop {
 
 /** One auditable step from a rate relation to the collected equation. */
 export interface DerivationStep {
-  readonly rule: "rate" | "junction-sum" | "junction-equal" | "law" | "transformer" | "gyrator" | "substitution" | "collected";
+  readonly rule:
+    | "rate"
+    | "junction-sum"
+    | "junction-equal"
+    | "law"
+    | "transformer"
+    | "gyrator"
+    | "substitution"
+    | "collected";
   readonly left: Expr;
   readonly right: Expr;
   readonly bonds: readonly number[];

@@ -2,12 +2,14 @@ import type { Expr } from "./expression.ts";
 
 /**
  * Calls `visit` once for every distinct expression below `roots`, arguments before what they stand in, without
- * recursion: a chain of laws may be 10^5 deep. `known` says which ones need not be looked into.
+ * recursion: a chain of laws may be 10^5 deep. `known` ones are passed over; a `leaf` is visited without
+ * what stands below it.
  */
 export function postorder(
   roots: readonly Expr[],
   known: (expr: Expr) => boolean,
   visit: (expr: Expr) => void,
+  leaf: (expr: Expr) => boolean = () => false,
 ): void {
   const stack: Expr[] = [];
   const next: number[] = [];
@@ -19,7 +21,7 @@ export function postorder(
       const top = stack.length - 1;
       const expr = stack[top];
       const at = next[top];
-      if (at < expr.args.length) {
+      if (at < expr.args.length && (at > 0 || !leaf(expr))) {
         next[top] = at + 1;
         if (!known(expr.args[at])) {
           stack.push(expr.args[at]);

@@ -7,14 +7,22 @@ export function substitute(pool: Pool, expr: Expr, map: ReadonlyMap<Expr, Expr>)
   return substitution(pool, map)(expr);
 }
 
-/** As `substitute` for many expressions and one map: what they share is rebuilt once. */
-export function substitution(pool: Pool, map: ReadonlyMap<Expr, Expr>): (expr: Expr) => Expr {
-  const done = new Map<Expr, Expr>(map);
+/**
+ * As `substitute` for many expressions: what they share is rebuilt once. The map may grow between calls, as long as
+ * no expression given before held a key that came later. What is `untouched` holds no key and isn't looked into.
+ */
+export function substitution(
+  pool: Pool,
+  map: { get(key: Expr): Expr | undefined },
+  untouched: (expr: Expr) => boolean = () => false,
+): (expr: Expr) => Expr {
+  const done = new Map<Expr, Expr>();
   return (root) => {
     postorder(
       [root],
       (expr) => done.has(expr),
-      (expr) => done.set(expr, rebuilt(pool, expr, done)),
+      (expr) => done.set(expr, map.get(expr) ?? (untouched(expr) ? expr : rebuilt(pool, expr, done))),
+      untouched,
     );
     return done.get(root) as Expr;
   };

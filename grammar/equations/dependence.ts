@@ -1,0 +1,37 @@
+import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Assignments, Store } from "./assignments.ts";
+import { RateFinder } from "./rates.ts";
+
+export interface Tied {
+  readonly store: Store;
+  /** g(x, u, t), for `forced` with rates in it. */
+  readonly value: Expr;
+}
+
+/**
+ * The stores of a model: `independent` ones integrate; `followers` have a state that other states and inputs settle;
+ * `forced` ones got derivative causality from a demanded stroke or a one-way law alone: their law, read that way,
+ * holds a rate, so they are states all the same, with an implicit rate.
+ */
+export interface Dependence {
+  readonly independent: readonly Store[];
+  readonly followers: readonly Tied[];
+  readonly forced: readonly Tied[];
+}
+
+export function classifyStores(assignments: Assignments, values: ReadonlyMap<Symbol, Expr>): Dependence {
+  const independent: Store[] = [];
+  const followers: Tied[] = [];
+  const forced: Tied[] = [];
+  const finder = new RateFinder();
+  for (const store of assignments.stores) {
+    if (store.integral) {
+      independent.push(store);
+      continue;
+    }
+    const value = values.get(store.symbol);
+    if (value === undefined) continue;
+    (finder.holds(value) ? forced : followers).push({ store, value });
+  }
+  return { independent, followers, forced };
+}

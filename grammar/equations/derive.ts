@@ -1,0 +1,229 @@
+import type { CausalGraph } from "../causality/strokes.ts";
+import type { Finding } from "../diagnostics/finding.ts";
+import { compareNames } from "../resolve/graph.ts";
+import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { linearForms } from "../symbolic/linear.ts";
+import type { Pool } from "../symbolic/pool.ts";
+import { substitution } from "../symbolic/substitute.ts";
+import { symbolsOf } from "../symbolic/symbols.ts";
+import { type Assignments, assignmentsOf, type Store } from "./assignments.ts";
+import { coEnergyOf } from "./coenergy-value.ts";
+import { classifyStores, type Dependence } from "./dependence.ts";
+import { dependenceFinding, inputRateFinding, refusedRates } from "./dependence-findings.ts";
+import type { DependentStore, ModelInput, RateEquation, State, StateModel } from "./model.ts";
+import { followPaths } from "./paths.ts";
+import { type Follower, RateFinder, type RateRow, type SolvedRates, solveRates } from "./rates.ts";
+import { startValues } from "./start.ts";
+
+/**
+ * The state model of a causal graph: assignments as the strokes give them → followed along causal paths, loops
+ * solved → rates of dependent stores put in and solved for. Null, with findings, where the graph has no equations.
+ */
+export function deriveEquations(causal: CausalGraph): { model: StateModel | null; findings: Finding[] } {
+  if (causal.strokes.some((stroke) => stroke === null)) return { model: null, findings: [] };
+  const { graph } = causal;
+  const { pool } = graph;
+  const assignments = assignmentsOf(causal);
+  const followed = followPaths(assignments);
+  const findings = [...followed.findings];
+  if (followed.refused) return { model: null, findings };
+
+  const settle = substitution(pool, followed.values as ReadonlyMap<Expr, Expr>);
+  const dependence = classifyStores(assignments, followed.values);
+  const rows = rateRows(assignments, dependence, followed.values, settle);
+  const followers = dependence.followers.map(
+    ({ store, value }): Follower => ({ name: store.name, rateSymbol: store.rateSymbol, value }),
+  );
+  const solved = solveRates(pool, rows, followers);
+  const refused = refusedRates(assignments, dependence, solved);
+  findings.push(...refused);
+  if (refused.length > 0) return { model: null, findings };
+
+  const finder = new RateFinder();
+  const finish = substitution(pool, solved.rates, (expr) => !finder.holds(expr));
+  const dependent = dependence.followers.map((follower) =>
+    dependentStore(assignments, follower.store, follower.value, finish),
+  );
+  const paths = dependence.followers.map(({ store, value }) => dependenceFinding(assignments, store, value));
+  findings.push(...paths);
+
+  const { starts, findings: startFindings } = startValues(assignments, dependence);
+  findings.push(...startFindings);
+  const states = rows.map((row) => stateOf(assignments, row, starts.get(row.symbol) ?? 0));
+  const efforts = graph.bonds.map(({ effort }) => finishOrNull(followed.values.get(effort), finish));
+  const flows = graph.bonds.map(({ flow }) => finishOrNull(followed.values.get(flow), finish));
+  const outputs = graph.outputs.map(({ name, unit, value, span }) => ({
+    name,
+    unit,
+    span,
+    value: finish(settle(value)),
+  }));
+  const equations = states.map(({ name, span }, i): RateEquation => {
+    const rate = solved.rates.get(rows[i].rateSymbol) ?? rows[i].rateSymbol;
+    return { state: name, rate, span };
+  });
+
+  const inputs = modelInputs(assignments, solved, dependent);
+  for (const { store } of dependence.followers) {
+    const rate = dependent.find(({ name }) => name === store.name)?.rate;
+    const driven = rate === undefined ? null : inputRateFinding(assignments, store, rate);
+    if (driven !== null) findings.push(driven);
+  }
+  const model: StateModel = {
+    causal,
+    states,
+    dependent,
+    inputs,
+    equations,
+    implicit: implicitSystem(pool, rows, solved),
+    loops: followed.loops,
+    outputs,
+    efforts,
+    flows,
+  };
+  return { model, findings };
+}
+
+function finishOrNull(value: Expr | undefined, finish: (expr: Expr) => Expr): Expr | null {
+  return value === undefined ? null : finish(value);
+}
+
+/** Stores that integrate, those that a demanded stroke forced, and tracks: all states, by name. */
+function rateRows(
+  assignments: Assignments,
+  dependence: Dependence,
+  values: ReadonlyMap<Symbol, Expr>,
+  settle: (expr: Expr) => Expr,
+): RateRow[] {
+  const { graph } = assignments.causal;
+  const { pool } = graph;
+  const rows: RateRow[] = dependence.independent.map(({ name, symbol, rateSymbol, rateVariable, sign }) => ({
+    name,
+    symbol,
+    rateSymbol,
+    rate: pool.product(pool.number(sign), values.get(rateVariable) ?? pool.zero),
+    constraint: null,
+  }));
+  for (const { store, value } of dependence.forced) {
+    const { name, symbol, rateSymbol } = store;
+    rows.push({ name, symbol, rateSymbol, rate: null, constraint: value });
+  }
+  for (const { name, symbol, rate } of graph.tracks) {
+    rows.push({ name, symbol, rateSymbol: pool.symbol("rate", name), rate: settle(rate), constraint: null });
+  }
+  return rows.sort((a, b) => compareNames(a.name, b.name));
+}
+
+function stateOf(assignments: Assignments, row: RateRow, start: number): State {
+  const { graph } = assignments.causal;
+  const { name, symbol } = row;
+  const track = graph.tracks.find((each) => each.symbol === symbol);
+  if (track !== undefined) {
+    const { unit, span } = track;
+    return { name, symbol, kind: "tracked", unit, start, node: null, bond: null, span, coEnergy: null };
+  }
+  const store = storeBySymbol(assignments).get(symbol) as Store;
+  const node = graph.nodes[store.node];
+  return {
+    name,
+    symbol,
+    kind: store.variable,
+    unit: unitOf(assignments, store),
+    start,
+    node: store.node,
+    bond: store.bond,
+    span: node.span,
+    coEnergy: coEnergyOf(assignments, store),
+  };
+}
+
+const bySymbol = new WeakMap<Assignments, Map<Symbol, Store>>();
+
+function storeBySymbol(assignments: Assignments): Map<Symbol, Store> {
+  let stores = bySymbol.get(assignments);
+  if (stores === undefined) {
+    stores = new Map(assignments.stores.map((store) => [store.symbol, store]));
+    bySymbol.set(assignments, stores);
+  }
+  return stores;
+}
+
+function unitOf({ causal }: Assignments, store: Store) {
+  const { domain } = causal.graph.bonds[store.bond];
+  return store.variable === "p" ? domain.momentum : domain.displacement;
+}
+
+function dependentStore(
+  assignments: Assignments,
+  store: Store,
+  value: Expr,
+  finish: (expr: Expr) => Expr,
+): DependentStore {
+  const of = [...symbolsOf(value)].filter(({ role }) => role === "state").map(({ name }) => name);
+  return {
+    name: store.name,
+    symbol: store.symbol,
+    kind: store.variable,
+    unit: unitOf(assignments, store),
+    node: store.node,
+    bond: store.bond,
+    of: of.sort(compareNames),
+    value,
+    rate: finish(store.rateSymbol),
+    span: assignments.causal.graph.nodes[store.node].span,
+  };
+}
+
+function modelInputs(
+  assignments: Assignments,
+  solved: SolvedRates,
+  dependent: readonly DependentStore[],
+): ModelInput[] {
+  const used = new Set<string>();
+  const expressions = dependent.length === 0 ? [] : [...solved.rates.values()];
+  for (const { role, name } of symbolsOf(...expressions)) if (role === "inputRate") used.add(name);
+  const declared = assignments.causal.graph.inputs.map(({ name, symbol, unit, nominal }) => ({
+    name,
+    symbol,
+    unit,
+    nominal,
+    differentiated: used.has(symbol.name),
+  }));
+  return [
+    ...declared,
+    ...assignments.outside.map((input) => ({ ...input, differentiated: used.has(input.symbol.name) })),
+  ].sort((a, b) => compareNames(a.name, b.name));
+}
+
+/** M(x)·ẋ = h for all states, where some rates stay coupled; the others have a 1 in their row. */
+function implicitSystem(pool: Pool, rows: readonly RateRow[], solved: SolvedRates): StateModel["implicit"] {
+  if (solved.coupled.length === 0) return null;
+  const { zero, one }: { zero: Expr; one: Expr } = pool;
+  const at = new Map(rows.map((row, i) => [row.name, i]));
+  const mass = rows.map((_, i) => rows.map((_, j) => (i === j ? one : zero)));
+  const right = rows.map((row) => solved.rates.get(row.rateSymbol) ?? zero);
+  const finder = new RateFinder();
+  for (const group of solved.coupled) {
+    group.names.forEach((name, i) => {
+      const row = at.get(name) as number;
+      right[row] = group.right[i];
+      mass[row] = rows.map(() => zero);
+      group.names.forEach((other, j) => {
+        mass[row][at.get(other) as number] = group.mass[i][j];
+      });
+    });
+  }
+  // A rate that only hangs on coupled ones goes to the left side with them.
+  const formOf = linearForms(pool, new Set(rows.map(({ rateSymbol }) => rateSymbol)));
+  rows.forEach((_, i) => {
+    if (!finder.holds(right[i])) return;
+    const form = formOf(right[i]);
+    if (form === null) return;
+    right[i] = form.constant;
+    rows.forEach(({ rateSymbol }, j) => {
+      const coefficient = form.coefficients.get(rateSymbol);
+      if (coefficient !== undefined) mass[i][j] = pool.subtract(mass[i][j], coefficient);
+    });
+  });
+  return { mass, right };
+}

@@ -1,0 +1,67 @@
+import type { Finding } from "../diagnostics/finding.ts";
+import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { substitution } from "../symbolic/substitute.ts";
+import { symbolsOf } from "../symbolic/symbols.ts";
+import type { Assignment, Assignments } from "./assignments.ts";
+import { connectedGroups } from "./dependency.ts";
+import { solveLoop } from "./loops.ts";
+import type { AlgebraicLoop } from "./model.ts";
+
+/**
+ * Every variable followed along its causal paths, till only states, inputs, parameters, time, the rates of dependent
+ * stores and what loops leave unknown are left.
+ */
+export interface Followed {
+  readonly values: ReadonlyMap<Symbol, Expr>;
+  readonly loops: readonly AlgebraicLoop[];
+  readonly findings: readonly Finding[];
+  /** A singular loop: there are no equations. */
+  readonly refused: boolean;
+}
+
+export function followPaths(assignments: Assignments): Followed {
+  const { graph } = assignments.causal;
+  const { pool } = graph;
+  const list = [...assignments.of.values()];
+  const index = new Map(list.map(({ variable }, i) => [variable, i]));
+  const edges = list.map((assignment) => dependenciesOf(assignment, index));
+  const values = new Map<Symbol, Expr>();
+  const settle = substitution(pool, values as ReadonlyMap<Expr, Expr>);
+  const loops: AlgebraicLoop[] = [];
+  const findings: Finding[] = [];
+  let refused = false;
+
+  for (const group of connectedGroups(list.length, (i) => edges[i])) {
+    const [first] = group;
+    const assignment = list[first];
+    if (group.length === 1 && assignment.right !== null && !edges[first].includes(first)) {
+      values.set(assignment.variable, settle(assignment.right));
+      continue;
+    }
+    const solution = solveLoop(
+      assignments,
+      group.map((i) => list[i]),
+      values,
+    );
+    for (const [variable, value] of solution.values) values.set(variable, value);
+    if (solution.loop !== null) loops.push(solution.loop);
+    findings.push(...solution.findings);
+    refused ||= solution.refused;
+  }
+  return { values, loops, findings, refused };
+}
+
+function dependenciesOf({ right, residual }: Assignment, index: ReadonlyMap<Symbol, number>): number[] {
+  const expr = (right ?? residual) as Expr;
+  // Most rights are one variable or a short sum of them.
+  if (expr.op === "symbol") {
+    const at = index.get(expr as Symbol);
+    return at === undefined ? [] : [at];
+  }
+  const found: number[] = [];
+  for (const symbol of symbolsOf(expr)) {
+    const at = index.get(symbol);
+    if (at !== undefined) found.push(at);
+  }
+  return found;
+}

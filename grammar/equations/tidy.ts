@@ -1,0 +1,25 @@
+import type { Expr } from "../symbolic/expression.ts";
+import type { Pool } from "../symbolic/pool.ts";
+import { rationalForm } from "../symbolic/rational-form.ts";
+
+const SMALL = 60;
+
+/** One fraction instead of several, where that is the shorter way to write it and cheap to find. */
+export function tidy(pool: Pool, expr: Expr): Expr {
+  const before = writtenSize(expr, 4 * SMALL);
+  if (before >= 4 * SMALL) return expr;
+  const form = rationalForm(pool, expr, SMALL);
+  return form !== null && writtenSize(form, before + 1) <= before ? form : expr;
+}
+
+/** The number of leaves in the text of an expression, counted up to `limit`. */
+function writtenSize(expr: Expr, limit: number): number {
+  let size = 0;
+  const stack = [expr];
+  while (stack.length > 0 && size < limit) {
+    const top = stack.pop() as Expr;
+    if (top.args.length === 0) size += 1;
+    for (const arg of top.args) stack.push(arg);
+  }
+  return size;
+}
