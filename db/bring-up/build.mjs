@@ -25,6 +25,9 @@ const SOURCES = {
   db: ["db", "app", "grammar", "models-demo"],
 };
 
+/** @type {Record<Part, string>} */
+const TITLES = { application: "the application", cli: "the command line", db: "the database's program" };
+
 /** @type {Record<Part, string[]>} */
 const COMMANDS = {
   application: ["@react-router/dev/bin.js", "build"],
@@ -42,7 +45,7 @@ export function buildWhenChanged(parts) {
     const mark = join(ROOT, "build", `${part}.sources`);
     if (existsSync(mark) && readFileSync(mark, "utf8") === now) continue;
     rmSync(mark, { force: true });
-    console.log(`Building ${part === "application" ? "the application" : part} …`);
+    console.log(`Building ${TITLES[part]} …`);
     build(part);
     mkdirSync(join(ROOT, "build"), { recursive: true });
     writeFileSync(mark, now);
