@@ -89,7 +89,7 @@ export class StatementWriter {
         return { family: kind, cells: [cell(0, `port ${this.#expressions.indexed(name)}`), cell(1, rest)] };
       }
       case "wiring":
-        return { family: kind, cells: this.#wiring(statement) };
+        return this.#wiring(statement);
       case "start": {
         const { target, value } = statement;
         if (target === null || value === null) return alone("start steady");
@@ -227,7 +227,8 @@ export class StatementWriter {
     ];
   }
 
-  #wiring({ groups, arrows, as }: Wiring): Cell[] {
+  /** Lines that begin with one name are aligned on their first arrow; a path or a list stands for itself. */
+  #wiring({ groups, arrows, as }: Wiring): Written {
     const first = groups[0];
     let text = "";
     for (const [i, { stroke, range }] of arrows.entries()) {
@@ -236,8 +237,8 @@ export class StatementWriter {
       text += `${i === 0 ? "" : " "}${sign}${this.#expressions.gap(range.end, group[0].range.start)}${this.#ends(group)}`;
     }
     if (as !== null) text += ` as ${this.#expressions.indexed(as)}`;
-    const loose = first.length > 1 || first[0].path.length > 1;
-    return [cell(0, this.#ends(first)), cell(1, text, { loose })];
+    const plain = first.length === 1 && first[0].path.length === 1;
+    return { family: plain ? "wiring" : null, cells: [cell(0, this.#ends(first)), cell(1, text)] };
   }
 
   #ends(group: Wiring["groups"][number]): string {
