@@ -43,6 +43,9 @@ function chooseSystem({ report, shown }: CheckedFile, name: string | undefined):
     const names = report.systems.map((one) => one.system).join(", ") || "none";
     throw new WrongUse(`${shown(report.path)} holds no system ${name}; it holds: ${names}.`);
   }
+  if (system === undefined && report.findings.length === 0) {
+    throw new WrongUse(`${shown(report.path)} holds no system.`);
+  }
   return system ?? null;
 }
 
