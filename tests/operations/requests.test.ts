@@ -1,5 +1,8 @@
+import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
 import { Client } from "pg";
-import { beforeAll, describe, expect, test, vi } from "vitest";
+import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
 import { Commit, JournalEntry, Session } from "../../db/models/index.ts";
 import { testDatabase } from "../support/database.ts";
 import { newTeam, password } from "./people.ts";
@@ -10,12 +13,22 @@ vi.hoisted(() => {
   process.env.LOG_LEVEL = "silent";
 });
 
+const built = vi.hoisted(() => ({ assetsBuildDirectory: "" }));
+vi.mock("virtual:react-router/server-build", () => built);
+
 let ask: Awaited<ReturnType<typeof newRouter>>;
 
 beforeAll(async () => {
   await testDatabase();
   ask = await newRouter();
+  built.assetsBuildDirectory = mkdtempSync(join(tmpdir(), "bondwright-"));
+  mkdirSync(join(built.assetsBuildDirectory, "assets"));
+  writeFileSync(join(built.assetsBuildDirectory, "assets", "core.worker-1a2b.js"), "postMessage(1)");
+  writeFileSync(join(built.assetsBuildDirectory, "assets", ".hidden.js"), "secret");
+  writeFileSync(join(built.assetsBuildDirectory, "secret.js"), "secret");
 });
+
+afterAll(() => rmSync(built.assetsBuildDirectory, { recursive: true }));
 
 describe("every response", () => {
   test.each(["/", "/sign-in", "/health", "/no/such/page", "/w/none.js", "/sets/a/b", "/sign-in.data"])(
@@ -116,6 +129,25 @@ describe("a request that changes something", () => {
       (await ask(new Request(`${origin}/sign-in`, { method: "POST", headers: large, body: "x" }))).status,
     ).toBe(413);
   });
+});
+
+test("a worker is served from the build, with a policy of its own, and nothing else is", async () => {
+  const worker = await new Visitor(ask).get("/w/core.worker-1a2b.js");
+  expect(await worker.text()).toBe("postMessage(1)");
+  expect(worker.headers.get("Content-Security-Policy")).toBe(
+    "default-src 'none'; script-src 'self' 'wasm-unsafe-eval'",
+  );
+  expect(worker.headers.get("Content-Type")).toMatch(/^text\/javascript/);
+  for (const name of [
+    "none.js",
+    "..%2Fsecret.js",
+    "%2e%2e%2fsecret.js",
+    "..%5Csecret.js",
+    ".hidden.js",
+    "a.css",
+    "%00.js",
+  ])
+    expect((await new Visitor(ask).get(`/w/${name}`)).status, name).toBe(404);
 });
 
 test("reading changes nothing but when a session was last seen", async () => {

@@ -42,8 +42,10 @@ export async function newRouter() {
   const routesOfBuild: Record<string, unknown> = {};
   for (const { module, ...half } of await serverHalves()) {
     const parent = half.id === "root" ? { middleware: root.middleware } : {};
+    // A route that is no `.tsx` has no page: what it answers is the response itself.
+    const page = half.id.endsWith(".ts") ? {} : { default: () => null };
     const parentId = half.id === "root" ? undefined : "root";
-    routesOfBuild[half.id] = { ...half, parentId, module: { default: () => null, ...parent, ...module } };
+    routesOfBuild[half.id] = { ...half, parentId, module: { ...page, ...parent, ...module } };
   }
   const build = {
     entry: {

@@ -112,6 +112,22 @@ describe("a save", () => {
     expect(await Commit.count({ where: world.key })).toBe(2);
   });
 
+  test("of 10 people at once into an empty set: one begins it, 9 are told", async () => {
+    const world = await newTeam("modeller");
+    const saves = Array.from({ length: 10 }, (_, i) => save(world, null, { "a.wright": `text of ${i}` }));
+    const kinds = (await Promise.all(saves)).map(({ kind }) => kind).sort();
+    expect(kinds).toEqual([...Array(9).fill("behind"), "saved"]);
+  });
+
+  test("may take the last file away, and begin anew", async () => {
+    const world = await newTeam("modeller");
+    const first = await saved(world, null, { "parts/a.wright": "a" });
+    const empty = await saved(world, first, { "parts/a.wright": null });
+    expect(await filesOf(world)).toEqual({});
+    await saved(world, empty, { "b.wright": "b" });
+    expect(await filesOf(world)).toEqual({ "b.wright": "b" });
+  });
+
   test("of 20 people at once, each another file: all stand", async () => {
     const world = await newTeam("modeller");
     const base = await saved(world, null, { "a.wright": "base" });
