@@ -1,0 +1,240 @@
+import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { describe } from "./describe.ts";
+import { type DraftNode, type Instance, spanOf, type Value } from "./draft.ts";
+import { fixedNumber, workOut } from "./evaluate-values.ts";
+import { spanIn } from "./files.ts";
+import type {
+  Domain,
+  FlatBond,
+  FlatExpectation,
+  FlatGraph,
+  FlatInput,
+  FlatNode,
+  FlatOutput,
+  FlatParameter,
+  FlatPort,
+  FlatStart,
+  FlatTrack,
+} from "./graph.ts";
+import { lawsOf } from "./laws.ts";
+import { portNames, translateReference } from "./references.ts";
+import type { Scope, Translator } from "./translate.ts";
+
+/** Params first, since laws that learn a domain need their units; what depends on bonds comes after domains. */
+export function workOutParameters(translator: Translator): void {
+  for (const instance of translator.draft.instances)
+    workOutValues(translator, instance, ["param", "const", "input"]);
+}
+
+export function workOutSignals(translator: Translator): void {
+  for (const instance of translator.draft.instances)
+    workOutValues(translator, instance, ["let", "track", "output"]);
+}
+
+function workOutValues(translator: Translator, instance: Instance, kinds: readonly string[]): void {
+  for (const name of instance.template.valueOrder) {
+    const value = instance.values.get(name);
+    if (value !== undefined && kinds.includes(value.statement.kind)) workOut(translator, value);
+  }
+  if (instance.template.valueOrder.length === instance.values.size) return;
+  for (const value of instance.values.values())
+    if (kinds.includes(value.statement.kind)) workOut(translator, value);
+}
+
+/** The flat graph, or null where bonds or domains are not settled. Laws are read in any case, for their findings. */
+export function assemble(translator: Translator): FlatGraph | null {
+  const { draft } = translator;
+  const root = draft.instances[0];
+  const nodes = draft.nodes.map((node) => flatNode(translator, node));
+  const starts = flatStarts(translator);
+  if (draft.broken) return null;
+  const values = draft.instances.flatMap((instance) => [...instance.values.values()]);
+  const { system } = root.template;
+  return {
+    system: system.name.text,
+    description: describe(system),
+    span: spanOf(root, system.range),
+    pool: draft.pool,
+    nodes,
+    bonds: draft.bonds.map(
+      (bond): FlatBond => ({
+        index: bond.index,
+        id: bond.id,
+        from: bond.from.index,
+        to: bond.to.index,
+        domain: bond.domain as Domain,
+        demanded: bond.demanded,
+        effort: bond.effort as Symbol,
+        flow: bond.flow as Symbol,
+        span: bond.span,
+      }),
+    ),
+    parameters: [...values.flatMap((value) => flatParameter(translator, value)), ...fileConsts(translator)],
+    inputs: values.flatMap((value) => flatInput(translator, value)),
+    outputs: [...root.values.values()].flatMap(flatOutput),
+    tracks: values.flatMap((value) => flatTrack(translator, value)),
+    starts,
+    expectations: draft.expects.map(
+      ({ statement, instance }): FlatExpectation => ({
+        condition: statement.condition,
+        text: instance.file.source.text.slice(statement.condition.range.start, statement.condition.range.end),
+        span: spanOf(instance, statement.range),
+      }),
+    ),
+  };
+}
+
+function flatNode(translator: Translator, node: DraftNode): FlatNode {
+  const { laws, modulated } = lawsOf(translator, node);
+  const names = portNames(node);
+  const ends =
+    names === null ? node.ends : names.flatMap((name) => node.ends.filter(({ port }) => port === name));
+  const ports = ends.map(
+    (end): FlatPort => ({
+      name: names === null ? "" : end.port,
+      bond: end.bond.index,
+      end: end.side,
+      domain: end.bond.domain as Domain,
+    }),
+  );
+  return {
+    index: node.index,
+    name: node.name,
+    kind: node.type,
+    modulated,
+    domain: names === null ? (ports[0]?.domain ?? null) : null,
+    ports,
+    laws,
+    description: describe(node.declaration),
+    span: spanOf(node.instance, node.declaration.range),
+  };
+}
+
+function flatParameter(translator: Translator, value: Value): FlatParameter[] {
+  if (value.parameter === null) return [];
+  const { definition, number, unit, range } = value.parameter;
+  return [
+    {
+      name: value.name,
+      symbol: translator.draft.pool.symbol("parameter", value.name),
+      definition,
+      value: number,
+      unit,
+      constant: value.statement.kind === "const" || value.instance.structural.has(value.local),
+      range,
+      description: describe(value.statement),
+      span: spanOf(value.instance, value.statement.range),
+    },
+  ];
+}
+
+function fileConsts(translator: Translator): FlatParameter[] {
+  return [...translator.draft.consts.values()].flatMap((one) => {
+    if (one === "open") return [];
+    const { definition, number, unit, range } = one.parameter;
+    const symbol = translator.draft.pool.symbol("parameter", one.name);
+    const description = describe(one.item);
+    return [
+      {
+        name: one.name,
+        symbol,
+        definition,
+        value: number,
+        unit,
+        constant: true,
+        range,
+        description,
+        span: spanIn(one.file, one.item.range),
+      },
+    ];
+  });
+}
+
+function flatInput(translator: Translator, value: Value): FlatInput[] {
+  if (value.input === null) return [];
+  return [
+    {
+      name: value.name,
+      symbol: translator.draft.pool.symbol("input", value.name),
+      unit: value.input.unit,
+      nominal: value.input.nominal,
+      description: describe(value.statement),
+      span: spanOf(value.instance, value.statement.range),
+    },
+  ];
+}
+
+function flatOutput(value: Value): FlatOutput[] {
+  if (value.statement.kind !== "output" || value.unit === null || value.typed === null) return [];
+  const span = spanOf(value.instance, value.statement.range);
+  return [
+    {
+      name: value.name,
+      value: value.typed.expr,
+      unit: value.unit,
+      description: describe(value.statement),
+      span,
+    },
+  ];
+}
+
+function flatTrack(translator: Translator, value: Value): FlatTrack[] {
+  if (value.track === null) return [];
+  const symbol = translator.draft.pool.symbol("state", value.name);
+  return [{ name: value.name, symbol, ...value.track, span: spanOf(value.instance, value.statement.range) }];
+}
+
+function flatStarts(translator: Translator): FlatStart[] {
+  const { draft } = translator;
+  const startable = new Set<Expr>();
+  for (const node of draft.nodes) {
+    if (node.type !== "C" && node.type !== "I" && node.type !== "IC") continue;
+    for (const { bond } of node.ends) {
+      if (bond.effort !== null) startable.add(bond.effort);
+      if (bond.flow !== null) startable.add(bond.flow);
+    }
+  }
+  const seen = new Set<Expr>();
+  return draft.starts.flatMap(({ statement, instance, indices }): FlatStart[] => {
+    const scope: Scope = { file: instance.file, instance, indices, fixed: true };
+    const { target, value } = statement;
+    if (target === null || value === null) {
+      translator.refuse(
+        "syntax",
+        statement.range,
+        scope,
+        "`start steady` belongs in a trial; here a state gets a value: `start spring.q = 4 mm`.",
+      );
+      return [];
+    }
+    const typed = translateReference(translator, target, { ...scope, fixed: false });
+    if (typed.measure === "unknown") return [];
+    const symbol = typed.expr as Symbol;
+    if (symbol.op !== "symbol" || (symbol.role !== "state" && !startable.has(symbol))) {
+      translator.refuse(
+        "unknown-variable",
+        target.range,
+        scope,
+        "Only what a store or a track holds can be given a start: its p or q, or its effort or flow.",
+      );
+      return [];
+    }
+    if (seen.has(symbol)) {
+      translator.refuse("duplicate-name", target.range, scope, "This start is given already.");
+      return [];
+    }
+    seen.add(symbol);
+    const number = fixedNumber(
+      translator,
+      value,
+      scope,
+      typed.measure,
+      typed.shown,
+      "The start value",
+      "this state",
+    );
+    return number === null
+      ? []
+      : [{ target: symbol, value: number, span: spanOf(instance, statement.range) }];
+  });
+}

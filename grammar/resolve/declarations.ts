@@ -1,0 +1,31 @@
+import type { Finding } from "../diagnostics/finding.ts";
+import { finding } from "../diagnostics/finding.ts";
+import { parseUnit } from "../units/parse-unit.ts";
+import { Draft, NO_INDICES } from "./draft.ts";
+import { fileConst } from "./evaluate-values.ts";
+import { type SourceFile, spanIn } from "./files.ts";
+import { type Scope, Translator, unknownUnit } from "./translate.ts";
+
+/**
+ * Consts, functions and curves of a file, looked at for themselves: a function's names even where nothing calls
+ * it (its units are checked at each call), a curve's units and points.
+ */
+export function checkDeclarations(file: SourceFile): Finding[] {
+  const draft = new Draft(file);
+  const translator = new Translator(draft);
+  const scope: Scope = { file, instance: null, indices: NO_INDICES, fixed: true };
+  for (const item of file.tree.items) {
+    if (item.kind === "const" || item.kind === "param")
+      fileConst(translator, { file, item }, scope, item.name.range);
+    else if (item.kind === "function") {
+      const bound = new Map(item.parameters.map(({ text }) => [text, translator.unknown]));
+      translator.whole(item.body, { ...scope, bound, fixed: false });
+    } else if (item.kind === "curve") {
+      for (const unit of [item.from, item.to]) {
+        if (parseUnit(unit.text) === null)
+          draft.report(finding("unknown-unit", spanIn(file, unit.range), unknownUnit(unit.text)));
+      }
+    }
+  }
+  return draft.findings;
+}

@@ -1,0 +1,75 @@
+import type { Finding } from "../diagnostics/finding.ts";
+import type { FileSet } from "../source/text.ts";
+import type { System } from "../syntax/tree.ts";
+import { assemble, workOutParameters, workOutSignals } from "./assemble.ts";
+import { checkDeclarations } from "./declarations.ts";
+import { Draft } from "./draft.ts";
+import { checkElements } from "./elements.ts";
+import { expand, type FindSystem } from "./expand.ts";
+import { Library, type Parse, type SourceFile } from "./files.ts";
+import type { FlatGraph } from "./graph.ts";
+import { inferDomains } from "./infer-domains.ts";
+import { joinPorts } from "./join-ports.ts";
+import { systemNotes, unusedFunctions } from "./notes.ts";
+import { numberBonds } from "./number-bonds.ts";
+import { fitsLimits } from "./size.ts";
+import { Translator } from "./translate.ts";
+import { checkTrials } from "./trials.ts";
+
+export interface Resolved {
+  /** Of the file itself: its `use` lines, functions, trials. */
+  readonly findings: readonly Finding[];
+  readonly systems: readonly ResolvedSystem[];
+}
+
+export interface ResolvedSystem {
+  readonly name: string;
+  /** null where the structure is at fault; where only a law is, the graph stands without it. */
+  readonly graph: FlatGraph | null;
+  readonly findings: readonly Finding[];
+}
+
+/** From syntax trees to flat bond graphs: each system of the file at `path`, with all that it uses. */
+export function resolve(files: FileSet, path: string, parse: Parse): Resolved {
+  const findings: Finding[] = [];
+  const library = new Library(files, parse, (found) => findings.push(found));
+  const file = library.open(path);
+  if (file === null) throw new Error(`resolve was asked for ${path}, which is not in the set`);
+  const findSystem = systemFinder(files, path);
+  const systems = file.tree.items
+    .filter((item) => item.kind === "system")
+    .map((system) => resolveSystem(system, file, findSystem));
+  findings.push(...checkDeclarations(file), ...unusedFunctions(file), ...checkTrials(file));
+  return { findings, systems };
+}
+
+function resolveSystem(system: System, file: SourceFile, findSystem: FindSystem): ResolvedSystem {
+  const draft = new Draft(file);
+  const name = system.name.text;
+  if (!fitsLimits(draft, system, file)) return { name, graph: null, findings: draft.findings };
+  expand(draft, system, file, findSystem);
+  joinPorts(draft);
+  checkElements(draft);
+  numberBonds(draft);
+  const translator = new Translator(draft);
+  workOutParameters(translator);
+  inferDomains(translator);
+  workOutSignals(translator);
+  const graph = assemble(translator);
+  systemNotes(draft, system, file);
+  return { name, graph, findings: draft.findings };
+}
+
+/** Looks through the text of the other files of the set, which are not parsed for a suggestion's sake. */
+function systemFinder(files: FileSet, own: string): FindSystem {
+  return (name) => {
+    for (const [path, source] of files) {
+      if (path === own || !path.endsWith(".wright") || !source.text.includes(name)) continue;
+      for (const line of source.text.split("\n")) {
+        const [word, declared] = line.trim().split(/[\s{]+/, 2);
+        if (word === "system" && declared === name) return path;
+      }
+    }
+    return null;
+  };
+}
