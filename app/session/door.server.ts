@@ -67,7 +67,13 @@ function explain(fault: Error, { request, url, context }: Asked): void {
   const { name, message, stack } = fault;
   if (databaseUnavailable(fault)) {
     log.warn({ ...event, name, message }, "database unavailable");
-    refuse(503, "The database cannot be reached at the moment. Nothing was changed; try again in a minute.");
+    const away = "The database cannot be reached at the moment.";
+    if (request.method === "GET" || request.method === "HEAD") refuse(503, `${away} Try again in a minute.`);
+    // When the last word of a transaction is lost, nobody knows on which side of it the line broke.
+    refuse(
+      503,
+      `${away} What you sent may not be stored; send it again in a minute. It is not stored twice.`,
+    );
   }
   log.error({ ...event, name, message, stack }, "request failed");
   if (fault instanceof DamagedObject)
