@@ -142,18 +142,14 @@ class Formatter {
     this.#lines.push((this.#lines.pop() ?? "") + this.#rest());
   }
 
-  /** A remark or comment behind what ends at `#end`, as it was written. */
+  /** The remark or comment behind what ends at `#end`, as it was written, blanks and all. */
   #rest(): string {
-    const comment = this.#trailingComment();
-    if (comment !== null) return ` ${comment.text}`;
-    const rest = this.#lineRest(this.#end);
-    return rest.startsWith("--") ? ` ${rest}` : "";
-  }
-
-  #lineRest(from: number): string {
+    const from = this.#end;
+    const isRemark = /^[ \t]+--(?=[ \t\r\n{}]|$)/.test(this.#text.slice(from, from + 80));
+    if (this.#trailingComment() === null && !isRemark) return "";
     let end = from;
     while (end < this.#text.length && this.#text[end] !== "\n" && this.#text[end] !== "\r") end += 1;
-    return this.#text.slice(from, end).trim();
+    return this.#text.slice(from, end).trimEnd();
   }
 
   #tail(remark: string | null, loose: boolean): Row["tail"] {

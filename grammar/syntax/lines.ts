@@ -70,7 +70,11 @@ class LineMaker {
   /** The `##` lines, by index in `#comments`, that the next line stands directly under. */
   #above: number[] = [];
   /** What the current physical line holds up to here. */
-  #row: { comment: boolean; line: Line | null } = { comment: false, line: null };
+  #row: { comment: boolean; words: boolean; line: Line | null } = {
+    comment: false,
+    words: false,
+    line: null,
+  };
 
   constructor(text: string, tokens: readonly IToken[]) {
     this.#text = text;
@@ -103,6 +107,7 @@ class LineMaker {
     } else if (type === Close || type === CloseIndex) this.#open.pop();
     else if (type === Slip || type === Strange || type === Remark) this.#stray ??= token;
     this.#current.push(token);
+    this.#row.words = true;
   }
 
   #finish(opens: IToken | null, closes: IToken | null): void {
@@ -138,7 +143,7 @@ class LineMaker {
     if (this.#current.length === 0) {
       if (!this.#row.comment) this.#above = [];
     } else if (!this.#goesOn(at) || this.#beginsStatement(at + 1)) this.#finish(null, null);
-    this.#row = { comment: false, line: null };
+    this.#row = { comment: false, words: false, line: null };
   }
 
   #comment(token: IToken): void {
@@ -155,9 +160,9 @@ class LineMaker {
   #takeRemark(token: IToken): void {
     const text = token.image.slice(2).trim();
     const line = this.#row.line;
-    if (this.#current.length > 0) {
+    if (this.#current.length > 0 && this.#row.words) {
       this.#remark = join(this.#remark, text);
-    } else if (line !== null && line.closes === null) {
+    } else if (this.#current.length === 0 && line !== null && line.closes === null) {
       line.remark = join(line.remark, text);
     } else {
       this.#homeless.push(token);

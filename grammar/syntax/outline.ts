@@ -101,13 +101,13 @@ export class OutlineReader {
 
   #closeAt(brace: IToken): void {
     const margin = this.#margin(brace.startOffset);
-    const inner = this.#blocks.length - 1;
     if (this.#missing > 0 && margin !== null) {
       const owner = this.#blocks.findLastIndex(
         (block) => block.line !== null && this.#marginOf(block.line) === margin,
       );
       if (owner !== -1) while (this.#blocks.length - 1 > owner) this.#leaveOpen({ tokens: [brace] });
     }
+    const inner = this.#blocks.length - 1;
     const stray =
       inner === 0 ||
       (this.#missing < 0 && margin !== null && margin !== this.#marginOf(this.#blocks[inner].line as Line));

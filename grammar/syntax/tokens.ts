@@ -35,7 +35,7 @@ const blank = createToken({
 export const LineEnd = createToken({ name: "LineEnd", pattern: /\r?\n|\r/, line_breaks: true });
 export const Comment = createToken({ name: "Comment", pattern: /#[^\r\n]*/ });
 /** `-- text`, with a blank on both sides; that one stands before it is seen when lines are made. */
-export const Remark = createToken({ name: "Remark", pattern: /--(?=[ \t\r\n]|$)[^\r\n]*/ });
+export const Remark = createToken({ name: "Remark", pattern: /--(?=[ \t\r\n{}]|$)[^\r\n]*/ });
 /** Signs of other languages, or of none here; a message says what to write instead. */
 export const Slip = createToken({
   name: "Slip",
