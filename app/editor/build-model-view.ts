@@ -19,13 +19,20 @@ import type {
   ModelView,
   StateView,
   TermView,
+  Variables,
 } from "./view-model.ts";
 
 type LineOf = (span: Span) => number | null;
 
-export function modelView(graph: FlatGraph, model: StateModel, lineOf: LineOf): ModelView {
-  const coEnergy = inCoEnergy(model);
+export function modelView(
+  graph: FlatGraph,
+  derived: StateModel,
+  variables: Variables,
+  lineOf: LineOf,
+): ModelView {
+  const model = variables === "co-energy" ? inCoEnergy(derived) : derived;
   return {
+    variables,
     states: model.states.map(
       (state): StateView => ({
         name: state.name,
@@ -39,9 +46,10 @@ export function modelView(graph: FlatGraph, model: StateModel, lineOf: LineOf): 
         values: [],
       }),
     ),
-    equations: model.equations.map(({ state, rate }) => equation(graph, model, state, rate)),
-    coEnergy: coEnergy.equations.map(({ state, rate }) => equation(graph, coEnergy, state, rate)),
-    implicit: implicitRows(graph, model),
+    equations:
+      model.implicit === null
+        ? model.equations.map(({ state, rate }) => equation(graph, model, state, rate))
+        : implicitRows(graph, model),
     dependent: model.dependent.map(
       (store): DependentView => ({
         name: store.name,
@@ -105,7 +113,7 @@ function equation(
   right: Expr,
   left: Written = rateOf(state),
 ): EquationView {
-  const terms = traced(graph, model, right);
+  const terms = traced(graph, model, model.implicit === null ? state : right);
   return {
     state,
     left: formula(left.text, left.latex),
@@ -117,8 +125,8 @@ function equation(
 }
 
 /** The summands of a right side, each with all it came through and with the parameters and inputs it holds. */
-function traced(graph: FlatGraph, model: StateModel, right: Expr): TermView[] {
-  return traceTerms(model, right).map(({ term, nodes, bonds }) => {
+function traced(graph: FlatGraph, model: StateModel, what: Expr | string): TermView[] {
+  return traceTerms(model, what).map(({ term, nodes, bonds }) => {
     const text = expressionText(term);
     const latex = expressionLatex(term);
     const negative = text.startsWith("-");

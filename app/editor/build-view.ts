@@ -8,32 +8,45 @@ import { outlineOf } from "./outline.ts";
 import { lineOf, placeOf } from "./place.ts";
 import { shownIn } from "./shown-number.ts";
 import { tiedLines } from "./tied-lines.ts";
-import type { ExpectationView, FileView, FindingView, SystemView, ValueView } from "./view-model.ts";
+import type {
+  ExpectationView,
+  FileView,
+  FindingView,
+  SystemView,
+  ValueView,
+  Variables,
+} from "./view-model.ts";
 
 /** Report of the core → what the right page shows. */
 export function viewOf(
   report: FileReport,
   files: FileSet,
   trees: TreeCache,
-  wanted: string | null,
+  wanted: { readonly system: string | null; readonly variables: Variables },
 ): FileView {
-  const shown = report.systems.find(({ system }) => system === wanted) ?? report.systems.at(-1) ?? null;
+  const shown =
+    report.systems.find(({ system }) => system === wanted.system) ?? report.systems.at(-1) ?? null;
   return {
     path: report.path,
     systems: report.systems.map(({ system }) => system),
-    system: shown === null ? null : systemView(shown, report, files),
+    system: shown === null ? null : systemView(shown, report, files, wanted.variables),
     findings: report.findings.map((found) => findingView(found, files)),
     outline: outlineOf(report, files, trees),
   };
 }
 
-function systemView(system: SystemReport, report: FileReport, files: FileSet): SystemView {
+function systemView(
+  system: SystemReport,
+  report: FileReport,
+  files: FileSet,
+  variables: Variables,
+): SystemView {
   const { graph, causal, model } = system;
   const line = (span: Span) => (span.file === report.path ? lineOf(span, files) : null);
   return {
     name: system.system,
     description: graph?.description ?? null,
-    model: graph === null || model === null ? null : modelView(graph, model, line),
+    model: graph === null || model === null ? null : modelView(graph, model, variables, line),
     diagram: graph === null ? null : diagramModel(graph, causal, model, system.findings),
     parameters: (graph?.parameters ?? []).map((parameter): ValueView => {
       const { range, unit } = parameter;

@@ -1,4 +1,4 @@
-import type { FileView } from "./view-model.ts";
+import type { FileView, Variables } from "./view-model.ts";
 
 /** What the page asks of the core's worker. `number` grows with every request: an older answer is dropped. */
 export type CoreRequest =
@@ -8,6 +8,7 @@ export type CoreRequest =
       readonly path: string;
       /** null: the last system of the file. */
       readonly system: string | null;
+      readonly variables: Variables;
       /** Only the texts that changed since the last request; null takes a file out of the set. */
       readonly changed: readonly (readonly [path: string, text: string | null])[];
     }

@@ -1,6 +1,6 @@
 import coreWorkerUrl from "./core.worker.ts?worker&url";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
-import type { FileView } from "./view-model.ts";
+import type { FileView, Variables } from "./view-model.ts";
 import { workerAddress } from "./worker-address.ts";
 
 export interface CoreListener {
@@ -25,7 +25,7 @@ export class Core {
       listener.fault(event.message || "the worker of the core could not be started");
   }
 
-  check(texts: ReadonlyMap<string, string>, path: string, system: string | null): void {
+  check(texts: ReadonlyMap<string, string>, path: string, system: string | null, variables: Variables): void {
     const changed: [string, string | null][] = [];
     for (const [file, text] of texts) {
       if (this.#sent.get(file) !== text) {
@@ -40,7 +40,7 @@ export class Core {
       }
     }
     this.#newestCheck = ++this.#number;
-    this.#post({ kind: "check", number: this.#newestCheck, path, system, changed });
+    this.#post({ kind: "check", number: this.#newestCheck, path, system, variables, changed });
   }
 
   /** The text laid out by the formatter; null where the core could not. */

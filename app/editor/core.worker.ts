@@ -33,7 +33,7 @@ function checkNewest(): void {
   answer(request.number, () => {
     const began = performance.now();
     const report = checkFile(files, request.path, { cache: trees });
-    const view = viewOf(report, files, trees, request.system);
+    const view = viewOf(report, files, trees, request);
     return { kind: "view", number: request.number, view, milliseconds: performance.now() - began };
   });
 }

@@ -7,7 +7,6 @@ import { draftKey } from "./drafts.ts";
 import "./facing-pages.css";
 import { Fold } from "./fold.tsx";
 import { FileList, Text } from "./left-page.tsx";
-import type { Variables } from "./right-page/equations.tsx";
 import { LightingContext } from "./right-page/lighting.ts";
 import { WhatFollows } from "./right-page/what-follows.tsx";
 import { SaveForm } from "./save-form.tsx";
@@ -17,6 +16,7 @@ import { useCore } from "./use-core.ts";
 import { useDraft } from "./use-draft.ts";
 import { useLighting } from "./use-lighting.ts";
 import { useSaving } from "./use-saving.ts";
+import type { Variables } from "./view-model.ts";
 import { next, opened, type Texts, unsaved as unsavedOf } from "./workspace.ts";
 
 interface FacingPagesProps {
@@ -50,7 +50,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite }
   const kept = useDraft(draftKey(person, team, set), workspace, unsaved, step);
   useEffect(() => step({ kind: "loaded", commit, files }), [commit, files]);
 
-  const core = useCore(workspace.texts, path, search.get("system"));
+  const core = useCore(workspace.texts, path, search.get("system"), variablesOf(search));
   const lighting = useLighting(core.system?.tied ?? NOTHING_TIED);
   const [turned, setTurned] = useState<Page>("text");
   const textPage = useRef<TextPageHandle>(null);
@@ -164,7 +164,6 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite }
           ref={rightPage}
           core={core}
           path={path}
-          variables={variablesOf(search)}
           mayFix={mayWrite}
           onVariables={(chosen) => inAddress("states", chosen === "energy" ? null : chosen)}
           onSystem={(name) => inAddress("system", name)}

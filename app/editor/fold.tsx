@@ -31,8 +31,12 @@ export function Fold({ text, page, tiedLines, litLines, redraw }: FoldProps) {
     const moved = page.current;
     moved?.addEventListener("scroll", draw, { passive: true });
     window.addEventListener("resize", draw);
+    // Drawings and fonts come later and move what stands below them.
+    const grown = new ResizeObserver(draw);
+    for (const part of moved?.children ?? []) grown.observe(part);
     draw();
     return () => {
+      grown.disconnect();
       cancelAnimationFrame(waiting);
       moved?.removeEventListener("scroll", draw);
       window.removeEventListener("resize", draw);

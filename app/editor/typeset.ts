@@ -10,7 +10,7 @@ export function typesetLatex(latex: string): string {
   const known = typeset.get(latex);
   if (known !== undefined) return known;
   if (typeset.size >= KEPT) typeset.clear();
-  const html = katex.renderToString(latex, {
+  const html = katex.renderToString(`\\displaystyle ${latex}`, {
     throwOnError: false,
     trust: false,
     strict: "ignore",

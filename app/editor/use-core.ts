@@ -1,6 +1,6 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { Core } from "./core.client.ts";
-import type { FileView, SystemView } from "./view-model.ts";
+import type { FileView, SystemView, Variables } from "./view-model.ts";
 import type { Texts } from "./workspace.ts";
 
 export interface CoreState {
@@ -17,7 +17,7 @@ export interface CoreState {
 const NOTHING: CoreState = { view: null, system: null, stale: false, fault: null, milliseconds: 0 };
 
 /** Runs the core in its worker over the texts as they are typed. */
-export function useCore(texts: Texts, path: string, wanted: string | null) {
+export function useCore(texts: Texts, path: string, wanted: string | null, variables: Variables) {
   const core = useRef<Core | null>(null);
   const good = useRef(new Map<string, SystemView>());
   const [state, setState] = useState(NOTHING);
@@ -38,8 +38,8 @@ export function useCore(texts: Texts, path: string, wanted: string | null) {
   }, []);
 
   useEffect(() => {
-    if (texts.has(path)) core.current?.check(texts, path, wanted);
-  }, [texts, path, wanted]);
+    if (texts.has(path)) core.current?.check(texts, path, wanted, variables);
+  }, [texts, path, wanted, variables]);
 
   const format = useCallback(
     (file: string, text: string) => core.current?.format(file, text) ?? Promise.resolve(null),

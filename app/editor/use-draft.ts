@@ -15,10 +15,20 @@ export function useDraft(
   const newest = useRef({ commit, unsaved });
   newest.current = { commit, unsaved };
   const looked = useRef(false);
+  const waiting = useRef(false);
 
   useEffect(() => {
     const draft = readDraft(key);
     if (draft !== null && draft.files.length > 0) step({ kind: "restored", draft });
+    const keep = () => {
+      if (waiting.current) keepDraft(key, newest.current.commit, newest.current.unsaved);
+      waiting.current = false;
+    };
+    window.addEventListener("pagehide", keep);
+    return () => {
+      window.removeEventListener("pagehide", keep);
+      keep();
+    };
   }, [key, step]);
 
   // biome-ignore lint/correctness/useExhaustiveDependencies: what is kept is the newest, when it has changed
@@ -28,13 +38,12 @@ export function useDraft(
       looked.current = true;
       return;
     }
-    const keep = () => setKept(keepDraft(key, newest.current.commit, newest.current.unsaved));
-    const soon = setTimeout(keep, SETTLES_MS);
-    window.addEventListener("pagehide", keep);
-    return () => {
-      clearTimeout(soon);
-      window.removeEventListener("pagehide", keep);
-    };
+    waiting.current = true;
+    const soon = setTimeout(() => {
+      waiting.current = false;
+      setKept(keepDraft(key, newest.current.commit, newest.current.unsaved));
+    }, SETTLES_MS);
+    return () => clearTimeout(soon);
   }, [key, commit, unsaved]);
 
   return kept;

@@ -27,12 +27,14 @@ export interface SystemView {
   readonly tied: readonly TiedLine[];
 }
 
+/** States as p and q, or as f of an inertia and e of a compliance. */
+export type Variables = "energy" | "co-energy";
+
 export interface ModelView {
+  readonly variables: Variables;
   readonly states: readonly StateView[];
+  /** One a state; where the rates stay coupled, one a row of M(x)·ẋ = h(x, u, t). */
   readonly equations: readonly EquationView[];
-  /** The same with f of an inertia and e of a compliance as the states. */
-  readonly coEnergy: readonly EquationView[] | null;
-  readonly implicit: readonly EquationView[];
   readonly dependent: readonly DependentView[];
   readonly loops: readonly LoopView[];
   readonly outputs: readonly OutputView[];

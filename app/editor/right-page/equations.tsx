@@ -1,19 +1,16 @@
 import { useState } from "react";
-import type { EquationView, LoopView, ModelView, TermView } from "../view-model.ts";
+import type { EquationView, LoopView, ModelView, TermView, Variables } from "../view-model.ts";
 import { Typeset } from "./formula.tsx";
 import { useLit } from "./lighting.ts";
 import { Section } from "./section.tsx";
 
-export type Variables = "energy" | "co-energy";
-
 interface EquationsProps {
   readonly model: ModelView;
-  readonly variables: Variables;
   onVariables(variables: Variables): void;
 }
 
-export function Equations({ model, variables, onVariables }: EquationsProps) {
-  const shown = equationsIn(model, variables);
+export function Equations({ model, onVariables }: EquationsProps) {
+  const { variables, equations: shown } = model;
   return (
     <Section
       title="Equations"
@@ -45,11 +42,6 @@ export function Equations({ model, variables, onVariables }: EquationsProps) {
       )}
     </Section>
   );
-}
-
-function equationsIn(model: ModelView, variables: Variables): readonly EquationView[] {
-  if (model.implicit.length > 0) return model.implicit;
-  return variables === "co-energy" && model.coEnergy !== null ? model.coEnergy : model.equations;
 }
 
 function Choice({
@@ -107,7 +99,7 @@ export function Equation({ equation, unit }: { equation: EquationView; unit?: st
           // biome-ignore lint/suspicious/noArrayIndexKey: the terms of one equation have no other identity
           <Term key={index} term={term} first={index === 0} />
         ))}
-        {unit !== undefined && <span className="unit">{unit}</span>}
+        {unit !== undefined && <span className="unit">shown in {unit}</span>}
       </span>
     </li>
   );

@@ -1,8 +1,8 @@
 import type { Ref } from "react";
 import type { CoreState } from "../use-core.ts";
-import type { FindingView } from "../view-model.ts";
+import type { FindingView, Variables } from "../view-model.ts";
 import { DiagramPart } from "./diagram-part.tsx";
-import { Equations, Loops, type Variables } from "./equations.tsx";
+import { Equations, Loops } from "./equations.tsx";
 import { Findings } from "./findings.tsx";
 import { idOf } from "./section.tsx";
 import { DependentStores, Expectations, factsOf, Inputs, Outputs, Parameters, States } from "./tables.tsx";
@@ -10,7 +10,6 @@ import { DependentStores, Expectations, factsOf, Inputs, Outputs, Parameters, St
 interface WhatFollowsProps {
   readonly core: CoreState;
   readonly path: string;
-  readonly variables: Variables;
   readonly mayFix: boolean;
   readonly ref: Ref<HTMLElement>;
   onVariables(variables: Variables): void;
@@ -121,7 +120,7 @@ function Results(props: WhatFollowsProps & { system: NonNullable<CoreState["syst
       )}
       {model !== null && (
         <div className={core.stale ? "stale settles" : "settles"}>
-          <Equations model={model} variables={props.variables} onVariables={props.onVariables} />
+          <Equations model={model} onVariables={props.onVariables} />
           <States states={model.states} />
           <DependentStores stores={model.dependent} />
           <Loops loops={model.loops} />
