@@ -66,7 +66,7 @@ export const CONFLICT = `${HEAD}system Lines {
   Se a e = 5 bar
   Se b e = 6 bar
   0 node : hydraulic
-  R leak e = 3e9 Pa*s/m^3*f
+  R leak e = 3e9 Pa*s/m^3 * f
   a -> node
   b -> node
   node -> leak
