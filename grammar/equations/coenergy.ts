@@ -6,6 +6,7 @@ import { substitution } from "../symbolic/substitute.ts";
 import { turnRound } from "../symbolic/turn.ts";
 import { assignmentsOf } from "./assignments.ts";
 import type { RateEquation, State, StateModel } from "./model.ts";
+import { tidy } from "./tidy.ts";
 
 /** How a model in co-energy variables came from the one in energy variables. */
 interface Origin {
@@ -43,6 +44,9 @@ export function inCoEnergy(model: StateModel): StateModel {
   const put = substitution(pool, old);
   const slopes = changes.map((change) => (change === null ? pool.one : put(change.slope)));
 
+  // Only solved rates and loops leave quotients in which the change cancels something.
+  const quotients = model.dependent.length + model.loops.length > 0;
+  const shorter = (expr: Expr) => (quotients ? tidy(pool, expr) : expr);
   const view: StateModel = {
     ...model,
     states: model.states.map((state, i) => {
@@ -52,13 +56,13 @@ export function inCoEnergy(model: StateModel): StateModel {
     dependent: model.dependent.map((store) => ({
       ...store,
       of: store.of.map((name) => newName(model, name)),
-      value: put(store.value),
-      rate: put(store.rate),
+      value: shorter(put(store.value)),
+      rate: shorter(put(store.rate)),
     })),
     equations: model.equations.map(
       ({ state, rate, span }, i): RateEquation => ({
         state: newName(model, state),
-        rate: pool.product(slopes[i], put(rate)),
+        rate: shorter(pool.product(slopes[i], put(rate))),
         span,
       }),
     ),
@@ -67,7 +71,7 @@ export function inCoEnergy(model: StateModel): StateModel {
       right: model.implicit.right.map(put),
     },
     loops: model.loops.map((loop) => ({ ...loop, residuals: loop.residuals.map(put) })),
-    outputs: model.outputs.map((output) => ({ ...output, value: put(output.value) })),
+    outputs: model.outputs.map((output) => ({ ...output, value: shorter(put(output.value)) })),
     efforts: model.efforts.map((effort) => effort && put(effort)),
     flows: model.flows.map((flow) => flow && put(flow)),
   };

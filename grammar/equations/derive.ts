@@ -14,6 +14,7 @@ import type { DependentStore, ModelInput, RateEquation, State, StateModel } from
 import { followPaths } from "./paths.ts";
 import { type Follower, RateFinder, type RateRow, type SolvedRates, solveRates } from "./rates.ts";
 import { startValues } from "./start.ts";
+import { tidy } from "./tidy.ts";
 
 /**
  * The state model of a causal graph: assignments as the strokes give them → followed along causal paths, loops
@@ -31,16 +32,16 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const settle = substitution(pool, followed.values as ReadonlyMap<Expr, Expr>);
   const dependence = classifyStores(assignments, followed.values);
   const rows = rateRows(assignments, dependence, followed.values, settle);
+  const tied = dependence.followers.length + dependence.forced.length > 0;
   const followers = dependence.followers.map(
     ({ store, value }): Follower => ({ name: store.name, rateSymbol: store.rateSymbol, value }),
   );
-  const solved = solveRates(pool, rows, followers);
+  const solved = tied ? solveRates(pool, rows, followers) : plainRates(rows);
   const refused = refusedRates(assignments, dependence, solved);
   findings.push(...refused);
   if (refused.length > 0) return { model: null, findings };
 
-  const finder = new RateFinder();
-  const finish = substitution(pool, solved.rates, (expr) => !finder.holds(expr));
+  const finish = tied ? rateFree(pool, solved) : (expr: Expr) => expr;
   const dependent = dependence.followers.map((follower) =>
     dependentStore(assignments, follower.store, follower.value, finish),
   );
@@ -82,6 +83,19 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
     flows,
   };
   return { model, findings };
+}
+
+/** Without dependent stores no rate stands in another's equation. */
+function plainRates(rows: readonly RateRow[]): SolvedRates {
+  const rates = new Map<Expr, Expr>(rows.map(({ rateSymbol, rate }) => [rateSymbol, rate as Expr]));
+  return { rates, coupled: [], singular: [], nonlinear: [] };
+}
+
+/** Puts the solved rates in, and writes what they changed as one fraction where that is shorter. */
+function rateFree(pool: Pool, solved: SolvedRates): (expr: Expr) => Expr {
+  const finder = new RateFinder();
+  const put = substitution(pool, solved.rates, (expr) => !finder.holds(expr));
+  return (expr) => (finder.holds(expr) ? tidy(pool, put(expr)) : expr);
 }
 
 function finishOrNull(value: Expr | undefined, finish: (expr: Expr) => Expr): Expr | null {
@@ -133,7 +147,10 @@ function stateOf(assignments: Assignments, row: RateRow, start: number): State {
     node: store.node,
     bond: store.bond,
     span: node.span,
-    coEnergy: coEnergyOf(assignments, store),
+    // Only the view in co-energy variables asks for it.
+    get coEnergy() {
+      return coEnergyOf(assignments, store);
+    },
   };
 }
 

@@ -32,7 +32,8 @@ export function assignElement(into: AssignmentsBuilder, node: FlatNode): void {
     }
   });
   for (const settled of settleRelations(pool, relations, unknowns, into.valueOf)) {
-    into.set({ ...settled, node: node.index, rule: "law" });
+    const { variable, right, residual, span } = settled;
+    into.set({ variable, right, residual, node: node.index, rule: "law", span });
   }
   if (node.kind === "RS") assignHeat(into, node);
 }

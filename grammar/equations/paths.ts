@@ -1,7 +1,7 @@
 import type { Finding } from "../diagnostics/finding.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { substitution } from "../symbolic/substitute.ts";
-import { symbolsOf } from "../symbolic/symbols.ts";
+import { eachSymbol } from "../symbolic/symbols.ts";
 import type { Assignment, Assignments } from "./assignments.ts";
 import { connectedGroups } from "./dependency.ts";
 import { solveLoop } from "./loops.ts";
@@ -35,7 +35,8 @@ export function followPaths(assignments: Assignments): Followed {
     const [first] = group;
     const assignment = list[first];
     if (group.length === 1 && assignment.right !== null && !edges[first].includes(first)) {
-      values.set(assignment.variable, settle(assignment.right));
+      const { right } = assignment;
+      values.set(assignment.variable, values.get(right as Symbol) ?? settle(right));
       continue;
     }
     const solution = solveLoop(
@@ -59,9 +60,9 @@ function dependenciesOf({ right, residual }: Assignment, index: ReadonlyMap<Symb
     return at === undefined ? [] : [at];
   }
   const found: number[] = [];
-  for (const symbol of symbolsOf(expr)) {
+  eachSymbol(expr, (symbol) => {
     const at = index.get(symbol);
     if (at !== undefined) found.push(at);
-  }
+  });
   return found;
 }

@@ -7,6 +7,7 @@ import { solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { connectedGroups } from "./dependency.ts";
+import { tidy } from "./tidy.ts";
 
 /** A state whose rate is `rate`, or, where it is null, one that has to satisfy `constraint` = its own value. */
 export interface RateRow {
@@ -114,10 +115,11 @@ export function solveRates(
       return;
     }
     if (solution.kind === "large") coupled.push({ names, mass, right });
-    else for (const [i, unknown] of unknowns.entries()) rates.set(unknown, solution.values[i]);
+    else for (const [i, unknown] of unknowns.entries()) rates.set(unknown, tidy(pool, solution.values[i]));
     // Put in after the states' rates are known.
     const finish = substitution(pool, rates, restful);
-    for (const { item } of dependent) rates.set(item.rateSymbol, finish(inside.get(item.rateSymbol) as Expr));
+    for (const { item } of dependent)
+      rates.set(item.rateSymbol, tidy(pool, finish(inside.get(item.rateSymbol) as Expr)));
   }
 }
 

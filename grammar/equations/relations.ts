@@ -3,7 +3,7 @@ import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { linearForms } from "../symbolic/linear.ts";
 import type { Pool } from "../symbolic/pool.ts";
 import { solveLinear } from "../symbolic/solve-linear.ts";
-import { symbolsOf } from "../symbolic/symbols.ts";
+import { holdsSymbol } from "../symbolic/symbols.ts";
 import { turnRound, type ValueOf } from "../symbolic/turn.ts";
 
 export interface Relation {
@@ -30,9 +30,8 @@ export function settleRelations(
   valueOf: ValueOf,
 ): Settled[] {
   if (relations.length !== unknowns.length) return [];
-  const asked = new Set(unknowns);
-  const free = (relation: Relation) => ![...symbolsOf(relation.right)].some((symbol) => asked.has(symbol));
-  if (relations.every((relation) => asked.has(relation.variable) && free(relation))) {
+  const free = ({ right }: Relation) => !unknowns.some((unknown) => holdsSymbol(right, unknown));
+  if (relations.every((relation) => unknowns.includes(relation.variable) && free(relation))) {
     return relations.map(({ variable, right, span }) => ({ variable, right, residual: null, span }));
   }
   if (relations.length === 1) return [settleOne(pool, relations[0], unknowns[0], valueOf)];

@@ -65,7 +65,16 @@ function nonNegative(op: Operator, args: readonly Node[], value: number, name: s
   }
 }
 
-/** The base and the exponent of a factor; the exponent of what isn't a power with a number above is null (1). */
+/**
+ * May x^a, and with it any x^b, be collected by adding exponents? For all real x (but 0) when they are whole. With a
+ * root it holds only where the root is real: sqrt(x)*sqrt(x) is not x for x < 0, where it isn't a number; so the base
+ * must be known not to be negative. Other powers count as a base of their own.
+ */
+export function collects(power: Node): boolean {
+  const [base, exponent] = power.args;
+  return base.nonNegative || (exponent.op === "number" && Number.isInteger(exponent.value));
+}
+
 export function baseOf(factor: Node): Node {
   return factor.op === "power" ? factor.args[0] : factor;
 }

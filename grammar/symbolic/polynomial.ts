@@ -1,6 +1,6 @@
 import * as exact from "./exact.ts";
 import type { Expr } from "./expression.ts";
-import { baseOf, type Node } from "./node.ts";
+import { collects, type Node } from "./node.ts";
 import { compareFactors } from "./order.ts";
 import type { Pool } from "./pool.ts";
 import { restOf } from "./sum.ts";
@@ -100,7 +100,7 @@ export function commonMonomial(pool: Pool, polynomial: Polynomial): Expr {
   let common: Map<Expr, number> | null = null;
   for (const monomial of polynomial.keys()) {
     const powers = new Map<Expr, number>();
-    for (const factor of factorsOf(monomial as Node)) powers.set(baseOf(factor), exponentOf(factor));
+    for (const factor of factorsOf(monomial as Node)) powers.set(atomOf(factor), exponentOf(factor));
     if (common === null) common = powers;
     else {
       for (const [base, exponent] of common) {
@@ -143,8 +143,8 @@ function compareMonomials(a: Node, b: Node): number {
   let i = x.length - 1;
   let j = y.length - 1;
   while (i >= 0 && j >= 0) {
-    const baseX = baseOf(x[i]);
-    const baseY = baseOf(y[j]);
+    const baseX = atomOf(x[i]);
+    const baseY = atomOf(y[j]);
     if (baseX !== baseY) return compareFactors(baseX, baseY);
     const difference = exponentOf(x[i]) - exponentOf(y[j]);
     if (difference !== 0) return difference;
@@ -159,7 +159,15 @@ function factorsOf(monomial: Node): readonly Node[] {
   return monomial.op === "number" ? [] : [monomial];
 }
 
-/** The exponent of a factor; what has another than a number above it is an atom by itself. */
+/** The exponent of a factor; a power that does not collect with others is an atom by itself. */
 function exponentOf(factor: Node): number {
-  return factor.op === "power" && factor.args[1].op === "number" ? factor.args[1].value : 1;
+  return isPowerOfAtom(factor) ? factor.args[1].value : 1;
+}
+
+function atomOf(factor: Node): Node {
+  return isPowerOfAtom(factor) ? factor.args[0] : factor;
+}
+
+function isPowerOfAtom(factor: Node): boolean {
+  return factor.op === "power" && factor.args[1].op === "number" && collects(factor);
 }

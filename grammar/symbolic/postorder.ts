@@ -15,6 +15,10 @@ export function postorder(
   const next: number[] = [];
   for (const root of roots) {
     if (known(root)) continue;
+    if (root.args.length === 0) {
+      visit(root);
+      continue;
+    }
     stack.push(root);
     next.push(0);
     while (stack.length > 0) {
@@ -23,8 +27,11 @@ export function postorder(
       const at = next[top];
       if (at < expr.args.length && (at > 0 || !leaf(expr))) {
         next[top] = at + 1;
-        if (!known(expr.args[at])) {
-          stack.push(expr.args[at]);
+        const arg = expr.args[at];
+        if (known(arg)) continue;
+        if (arg.args.length === 0) visit(arg);
+        else {
+          stack.push(arg);
           next.push(0);
         }
         continue;

@@ -1,5 +1,5 @@
 import * as exact from "./exact.ts";
-import type { Node } from "./node.ts";
+import { collects, type Node } from "./node.ts";
 import { compareFactors } from "./order.ts";
 import type { Pool } from "./pool.ts";
 import { canonicalPower } from "./power.ts";
@@ -7,7 +7,6 @@ import { canonicalSum, contentOf, FLATTEN_UP_TO, scaleSum } from "./sum.ts";
 
 interface Collected {
   coefficient: number;
-  /** Each base once for each way its exponents may be added. */
   readonly bases: Node[];
   readonly exponents: Node[];
 }
@@ -55,8 +54,9 @@ function collect(pool: Pool, into: Collected, factor: Node): void {
   }
   let base = factor;
   let exponent = pool.one;
-  if (factor.op === "power") [base, exponent] = factor.args;
-  else if (factor.op === "sum") {
+  if (factor.op === "power") {
+    if (collects(factor)) [base, exponent] = factor.args;
+  } else if (factor.op === "sum") {
     const content = contentOf(factor);
     if (content !== 1) {
       into.coefficient = exact.multiply(into.coefficient, content);
@@ -64,21 +64,13 @@ function collect(pool: Pool, into: Collected, factor: Node): void {
     }
   }
   for (let i = 0; i < into.bases.length; i += 1) {
-    if (into.bases[i] === base && mayAdd(base, into.exponents[i], exponent)) {
+    if (into.bases[i] === base) {
       into.exponents[i] = canonicalSum(pool, [into.exponents[i], exponent]);
       return;
     }
   }
   into.bases.push(base);
   into.exponents.push(exponent);
-}
-
-/**
- * x^a * x^b = x^(a+b) for all real x (but 0) when a and b are whole. With a root it holds only where the root is
- * real: sqrt(x)*sqrt(x) is not x for x < 0, where it isn't a number; so the base must be known not to be negative.
- */
-function mayAdd(base: Node, a: Node, b: Node): boolean {
-  return base.nonNegative || (isWhole(a) && isWhole(b));
 }
 
 function isWhole(exponent: Node): boolean {
@@ -118,8 +110,7 @@ function assemble(pool: Pool, into: Collected): Node {
     if (factor.op === "number") coefficient = exact.multiply(coefficient, factor.value);
     else {
       // A collected power may fall apart again: |x|*|x| is x^2, which has to meet another x.
-      again ||=
-        factor.op === "product" || (factor.op === "power" ? factor.args[0] : factor) !== into.bases[i];
+      again ||= factor !== into.bases[i] && (factor.op !== "power" || factor.args[0] !== into.bases[i]);
       factors.push(factor);
     }
   }

@@ -42,7 +42,11 @@ export function quotientOf(pool: Pool, expr: Expr, limit = LIMIT): Quotient | nu
 
 export function quotientExpr(pool: Pool, { numerator, denominator }: Quotient): Expr {
   const factors = [...denominator].map(([base, exponent]) => pool.power(base, pool.number(-exponent)));
-  return pool.product(polynomialExpr(pool, numerator), ...factors);
+  const common = commonMonomial(pool, numerator);
+  if (common === pool.one) return pool.product(polynomialExpr(pool, numerator), ...factors);
+  const rest = divideExactly(pool, numerator, new Map([[common, 1]]), numerator.size);
+  const top = rest === null ? [polynomialExpr(pool, numerator)] : [common, polynomialExpr(pool, rest)];
+  return pool.product(...top, ...factors);
 }
 
 /**
@@ -163,7 +167,8 @@ class Quotients {
     const pool = this.#pool;
     const monomial = commonMonomial(pool, numerator);
     const content = numericContent(numerator);
-    const rest = divideExactly(pool, numerator, new Map([[monomial, content]]), this.#limit) ?? numerator;
+    const rest = divideExactly(pool, numerator, new Map([[monomial, content]]), this.#limit);
+    if (rest === null) return null;
     const bases = new Map<Expr, number>();
     const factors = monomial.op === "product" ? monomial.args : [monomial];
     for (const factor of factors) {

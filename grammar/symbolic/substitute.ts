@@ -17,21 +17,26 @@ export function substitution(
   untouched: (expr: Expr) => boolean = () => false,
 ): (expr: Expr) => Expr {
   const done = new Map<Expr, Expr>();
+  const known = (expr: Expr) => done.has(expr);
+  const visit = (expr: Expr) => {
+    done.set(expr, map.get(expr) ?? (untouched(expr) ? expr : rebuilt(pool, expr, done)));
+  };
   return (root) => {
-    postorder(
-      [root],
-      (expr) => done.has(expr),
-      (expr) => done.set(expr, map.get(expr) ?? (untouched(expr) ? expr : rebuilt(pool, expr, done))),
-      untouched,
-    );
+    postorder([root], known, visit, untouched);
     return done.get(root) as Expr;
   };
 }
 
 function rebuilt(pool: Pool, expr: Expr, done: ReadonlyMap<Expr, Expr>): Expr {
   if (expr.args.length === 0) return expr;
-  const args = expr.args.map((arg) => done.get(arg) as Expr);
-  return args.every((arg, i) => arg === expr.args[i]) ? expr : withArgs(pool, expr, args);
+  const args: Expr[] = [];
+  let same = true;
+  for (const arg of expr.args) {
+    const put = done.get(arg) as Expr;
+    same &&= put === arg;
+    args.push(put);
+  }
+  return same ? expr : withArgs(pool, expr, args);
 }
 
 /** The expression `expr` with other arguments, canonical again. */

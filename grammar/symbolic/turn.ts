@@ -2,7 +2,7 @@ import { evaluate } from "./evaluate.ts";
 import type { Expr, Symbol } from "./expression.ts";
 import { affineIn } from "./linear.ts";
 import type { Pool } from "./pool.ts";
-import { symbolsOf } from "./symbols.ts";
+import { holdsSymbol } from "./symbols.ts";
 
 /** Values of parameters, where the sign of a coefficient decides; undefined for what has no fixed value. */
 export type ValueOf = (symbol: Symbol) => number | undefined;
@@ -29,7 +29,7 @@ export function turnRound(
   const free: Expr[] = [];
   const powers: SignedPower[] = [];
   for (const term of right.op === "sum" ? right.args : [right]) {
-    if (!symbolsOf(term).has(own)) {
+    if (!holdsSymbol(term, own)) {
       free.push(term);
       continue;
     }
@@ -62,7 +62,7 @@ function signedPower(pool: Pool, term: Expr, own: Symbol): SignedPower | null {
   let exponent = 0;
   let odd = false;
   for (const factor of term.op === "product" ? term.args : [term]) {
-    if (!symbolsOf(factor).has(own)) {
+    if (!holdsSymbol(factor, own)) {
       outside.push(factor);
       continue;
     }

@@ -1,4 +1,5 @@
 import fc from "fast-check";
+import { fractionOf } from "../../grammar/symbolic/exact.ts";
 import type { Expr, Symbol } from "../../grammar/symbolic/expression.ts";
 import type { Pool } from "../../grammar/symbolic/pool.ts";
 
@@ -103,4 +104,9 @@ export function shown(expr: Expr): string {
   if (expr.op === "number") return String(expr.value);
   if (expr.op === "symbol") return expr.name;
   return `${expr.name || expr.op}(${expr.args.map(shown).join(", ")})`;
+}
+
+/** Are all its coefficients small fractions? Sums of other doubles depend on their order by rounding. */
+export function isExact(expr: Expr): boolean {
+  return expr.op === "number" ? fractionOf(expr.value) !== null : expr.args.every(isExact);
 }
