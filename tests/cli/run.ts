@@ -51,8 +51,8 @@ export const CLEAN = `${HEAD}system Cart {
 
   input F : N        -- push
 
-  Se push   e = F
-  1  rail   : translation
+  Se push     e = F
+  1  rail     : translation
   I  body   = m
   R  damper = b
 

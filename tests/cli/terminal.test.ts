@@ -42,7 +42,7 @@ describe("what a model may do to a terminal", () => {
 describe("where paths after `use` count from", () => {
   const part = "notation 1\nsystem Part {\n  port a takes translation\n  R r e = 1 N*s/m * f\n  a -> r\n}\n";
   const whole =
-    'notation 1\nuse "parts/part.wright"\nsystem Whole {\n  Sf v f = 1 m/s\n  sub p = Part()\n  v -> p.a\n}\n';
+    'notation 1\nuse "parts/part.wright"\nsystem Whole {\n  Sf v f = 1 m/s\n  sub part = Part()\n  v -> part.a\n}\n';
 
   it("is the folder above in which they lead to files, or the one that is marked", () => {
     place.write("set/parts/part.wright", part).write("set/models/whole.wright", whole);
