@@ -1,5 +1,14 @@
 import type { RandomGraph } from "./random-graph.ts";
 
+/** A number is null where the relations leave it open. */
+export interface Solution {
+  /** By name of a store. */
+  readonly rates: ReadonlyMap<string, number | null>;
+  /** By bond. */
+  readonly efforts: readonly (number | null)[];
+  readonly flows: readonly (number | null)[];
+}
+
 /**
  * The rates of all stores of a linear bond graph, found without causality: every relation of every node, and each of
  * them differentiated once in time, as one linear system in the efforts e, flows f, the values z of stores that are not
@@ -7,13 +16,9 @@ import type { RandomGraph } from "./random-graph.ts";
  * Ordinary Differential Equations II, 2nd edition, chapter VII, reduction of the index by differentiation; recalled from
  * memory). Solved by Gauss–Jordan elimination with complete pivoting.
  *
- * `given` holds the values of the independent stores. Answers by name of a store; null where the relations leave its
- * rate open. Throws where they contradict each other.
+ * `given` holds the values of the independent stores. Throws where the relations contradict each other.
  */
-export function ratesWithoutCausality(
-  graph: RandomGraph,
-  given: ReadonlyMap<string, number>,
-): ReadonlyMap<string, number | null> {
+export function solvedWithoutCausality(graph: RandomGraph, given: ReadonlyMap<string, number>): Solution {
   const { nodes, bonds } = graph;
   const count = bonds.length;
   const stores = nodes.flatMap(({ kind }, i) => (kind === "C" || kind === "I" ? [i] : []));
@@ -95,7 +100,11 @@ export function ratesWithoutCausality(
     }
   }
   const solution = eliminated(rows, columns);
-  return new Map(stores.map((store) => [nodes[store].name, solution(rate(store))]));
+  return {
+    rates: new Map(stores.map((store) => [nodes[store].name, solution(rate(store))])),
+    efforts: bonds.map((_, b) => solution(value("e", b))),
+    flows: bonds.map((_, b) => solution(value("f", b))),
+  };
 }
 
 const SMALL = 1e-9;
