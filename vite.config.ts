@@ -3,16 +3,26 @@ import { reactRouter } from "@react-router/dev/vite";
 import tailwindcss from "@tailwindcss/vite";
 import { defineConfig, type UserConfig } from "vite";
 
+/** Packages that run on the server alone. */
+const SERVER_ONLY = [
+  ...["sequelize", "pg", "isomorphic-git", "@node-rs/argon2"],
+  ...["pino", "rate-limiter-flexible", "remix-auth", "remix-auth-form"],
+];
+
 /** The web application; `react-router build` and `react-router dev` ask for it. */
 const application: UserConfig = {
   plugins: [tailwindcss(), reactRouter()],
   worker: { format: "es" },
   // Named here, so that the first visit to a page in development does not reload it when they are found.
   optimizeDeps: {
-    include: ["react", "react-dom/client", "react-router", "react-router/dom"],
-    exclude: ["sequelize", "pg", "isomorphic-git"],
+    include: [
+      ...["react", "react-dom/client", "react-router", "react-router/dom"],
+      ...["chevrotain", "diff", "elkjs/lib/elk-api.js", "elkjs/lib/elk-worker.min.js", "katex", "zod"],
+      ...["monaco-editor/editor", "monaco-editor/features/*/register"],
+    ],
+    exclude: SERVER_ONLY,
   },
-  ssr: { external: ["sequelize", "pg", "isomorphic-git", "@node-rs/argon2"] },
+  ssr: { external: SERVER_ONLY },
   server: { host: "127.0.0.1", watch: { ignored: ["**/.data/**", "**/build/**", "**/tests/**"] } },
 };
 
