@@ -111,7 +111,7 @@ class LineMaker {
   }
 
   #finish(opens: IToken | null, closes: IToken | null): void {
-    const description = this.#above.length === 0 ? null : this.#describe();
+    const description = this.#above.length === 0 || closes !== null ? null : this.#describe();
     const line: Line = {
       tokens: this.#current,
       opens,
@@ -174,7 +174,7 @@ class LineMaker {
   }
 
   #afterBlank(token: IToken): boolean {
-    return token.startOffset === 0 || /\s/.test(this.#text[token.startOffset - 1]);
+    return token.startOffset === 0 || /[\s{}]/.test(this.#text[token.startOffset - 1]);
   }
 
   #goesOn(at: number): boolean {

@@ -30,7 +30,7 @@ export const EXPECTED: IParserErrorMessageProvider = {
   buildMismatchTokenMessage: ({ expected }) => tokenLabel(expected),
   buildNotAllInputParsedMessage: () => "",
   buildNoViableAltMessage: ({ ruleName }) => ruleName,
-  buildEarlyExitMessage: ({ ruleName }) => ruleName,
+  buildEarlyExitMessage: ({ ruleName }) => `first of ${ruleName}`,
 };
 
 export interface Explained {
@@ -79,10 +79,16 @@ const MISSING: ReadonlyMap<string, string> = new Map([
   ["port", "`takes` or `gives`"],
   ["start", "What starts, as `spring.q`,"],
   ["curve", '`= (x, y) …` or `from "file.csv"`'],
-  ["curvePoints", "A point `(x, y)`"],
-  ["wiring", "An arrow `->`"],
   ["compare", "`<` or `<=`"],
-  ["expect", "A condition"],
+  ["first of curvePoints", "A point `(x, y)`"],
+  ["first of wiring", "An arrow `->`"],
+  ["first of ends", "A node"],
+  ["first of element", "A port"],
+  ["first of record", "A signal"],
+  ["first of function", "A parameter"],
+  ["first of use", "A name"],
+  ["first of compare", "A column in quotes"],
+  ["first of curveFile", "A column in quotes"],
 ]);
 
 function redundant(found: IToken, after: IToken | undefined, how: string): string {

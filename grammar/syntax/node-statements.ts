@@ -28,7 +28,7 @@ import type {
   Wiring,
 } from "./tree.ts";
 import { type Head, ValueStatements } from "./value-statements.ts";
-import { ELEMENT_WORDS } from "./words.ts";
+import { ELEMENT_WORDS, RESERVED_NAMES } from "./words.ts";
 
 const AsWord = clauseToken("as");
 const TakesWord = clauseToken("takes");
@@ -49,6 +49,13 @@ export class NodeStatements extends ValueStatements {
       this.CONSUME(Colon);
       return identifier(this.CONSUME(Name));
     });
+    if (domain !== undefined && RESERVED_NAMES.has(domain.text)) {
+      this.slip(
+        "syntax",
+        domain.range,
+        `\`${domain.text}\` is no domain; after \`:\` stands one, as in \`: rotation\`.`,
+      );
+    }
     return domain ?? null;
   });
 

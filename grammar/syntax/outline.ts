@@ -96,7 +96,7 @@ export class OutlineReader {
 
   /** Where the head of a block can't be read, its body still is: as a trial if it speaks of one. */
   #guess(line: Line): Place {
-    return line.tokens.some(({ image }) => image === "of") ? "trial" : "system";
+    return line.tokens.some(({ image }) => image === "trial" || image === "of") ? "trial" : "system";
   }
 
   #closeAt(brace: IToken): void {

@@ -60,6 +60,13 @@ export function parse(source: SourceText): Parsed {
       ),
     );
   }
+  const unclean = text.indexOf("\ufffd");
+  if (unclean !== -1 && !findings.some(({ span }) => span.start <= unclean && unclean < span.end)) {
+    const span = { file: path, start: unclean, end: unclean + 1 };
+    findings.push(
+      finding("syntax", span, "The file is not clean UTF-8: what stood here was lost; save it as UTF-8."),
+    );
+  }
   findings.sort((a, b) => a.span.start - b.span.start);
   return { tree: { path, range, edition, items, comments, balanced }, findings };
 }

@@ -8,7 +8,19 @@ import { type NotationParser, notationParser } from "./grammar.ts";
 import { LIMITS } from "./limits.ts";
 import type { Line } from "./lines.ts";
 import { explain, explainSign, show } from "./messages.ts";
-import { AnyArrow, belongs, Comma, Dot, Equals, Name, NumberText, OpenIndex, Text } from "./tokens.ts";
+import {
+  AnyArrow,
+  belongs,
+  Comma,
+  Dot,
+  Equals,
+  Greater,
+  Minus,
+  Name,
+  NumberText,
+  OpenIndex,
+  Text,
+} from "./tokens.ts";
 import type { File, Unreadable } from "./tree.ts";
 import type { Declared, LineFacts } from "./value-statements.ts";
 import { ELEMENT_WORDS, FILE_WORDS, STATEMENT_WORDS, SYSTEM_WORDS, TRIAL_WORDS } from "./words.ts";
@@ -213,6 +225,18 @@ export class StatementReader {
         rangeOf(head),
         `${show(head)} is given a value, but not said what it is; begin the line with ${words}.`,
       );
+      return;
+    }
+    const at = line.tokens.findIndex(
+      ({ tokenType }, i) => tokenType === Minus && line.tokens[i + 1]?.tokenType === Greater,
+    );
+    if (at !== -1) {
+      const range = { start: line.tokens[at].startOffset, end: line.tokens[at + 1].startOffset + 1 };
+      const edits = [{ span: { file: this.#source.path, ...range }, text: "->" }];
+      this.#report("syntax", range, "A bond is drawn with `->`, without a blank in it.", {
+        title: "Write `->`",
+        edits,
+      });
       return;
     }
     const kinds = place === "system" ? [...ELEMENT_WORDS.keys()] : [];

@@ -29,13 +29,15 @@ export const AnyArrow = createToken({ name: "AnyArrow", pattern: Lexer.NA });
 
 const blank = createToken({
   name: "Blank",
-  pattern: /[ \t\u00a0\u2000-\u200a\u202f\u3000\ufeff]+/,
+  pattern: sticky(/[^\S\r\n]+/y),
+  start_chars_hint: [..." \t\v\f", ...BEYOND_ASCII],
+  line_breaks: false,
   group: Lexer.SKIPPED,
 });
 export const LineEnd = createToken({ name: "LineEnd", pattern: /\r?\n|\r/, line_breaks: true });
 export const Comment = createToken({ name: "Comment", pattern: /#[^\r\n]*/ });
 /** `-- text`, with a blank on both sides; that one stands before it is seen when lines are made. */
-export const Remark = createToken({ name: "Remark", pattern: /--(?=[ \t\r\n{}]|$)[^\r\n]*/ });
+export const Remark = createToken({ name: "Remark", pattern: /--(?=[\s{}]|$)[^\r\n]*/ });
 /** Signs of other languages, or of none here; a message says what to write instead. */
 export const Slip = createToken({
   name: "Slip",
