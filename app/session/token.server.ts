@@ -1,4 +1,5 @@
 import { createHash, randomBytes } from "node:crypto";
+import { Op } from "sequelize";
 import { Session, User } from "../../db/models/index.ts";
 
 /** A session ends after this time, whether it was used or not. */
@@ -14,8 +15,12 @@ export interface SignedIn {
   email: string;
 }
 
-/** Opens a session and returns its token: 256 random bits, of which the database keeps only the hash. */
+/**
+ * Opens a session and returns its token: 256 random bits, of which the database keeps only the hash. Sessions of
+ * this person that have run out are cleared away.
+ */
 export async function openSession(userId: string, userAgent: string): Promise<string> {
+  await Session.destroy({ where: { userId, expiresAt: { [Op.lte]: new Date() } } });
   const token = randomBytes(32).toString("base64url");
   await Session.create({
     id: sessionIdOf(token),
@@ -32,8 +37,10 @@ export function sessionIdOf(token: string): string {
 
 /** Who holds this token; null when the session is unknown, expired or revoked, or the person disabled. */
 export async function holderOf(token: string): Promise<SignedIn | null> {
-  const session = await Session.findByPk(sessionIdOf(token), { include: { model: User, as: "user" } });
-  const user = (session as (Session & { user?: User }) | null)?.user;
+  const attributes = ["id", "email", "displayName", "disabledAt"];
+  const include = { model: User, as: "user", attributes };
+  const session = await Session.findByPk(sessionIdOf(token), { include });
+  const user = session?.user;
   const now = new Date();
   if (!session || !user || session.revokedAt || session.expiresAt <= now || user.disabledAt) return null;
   if (now.getTime() - session.lastSeenAt.getTime() > seenEveryMs) await session.update({ lastSeenAt: now });

@@ -4,8 +4,10 @@ import {
   type InferAttributes,
   type InferCreationAttributes,
   Model,
+  type NonAttribute,
 } from "sequelize";
 import { database } from "../connect.ts";
+import type { User } from "./user.ts";
 
 /** A signed-in browser. The token itself is kept only by that browser. */
 export class Session extends Model<InferAttributes<Session>, InferCreationAttributes<Session>> {
@@ -17,6 +19,8 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
   declare lastSeenAt: CreationOptional<Date>;
   declare expiresAt: Date;
   declare revokedAt: CreationOptional<Date | null>;
+  /** There when the query asked for it. */
+  declare user?: NonAttribute<User>;
 }
 
 Session.init(

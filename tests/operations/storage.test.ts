@@ -3,6 +3,7 @@ import { mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { deflateSync } from "node:zlib";
+import fc from "fast-check";
 import { QueryTypes } from "sequelize";
 import { beforeAll, describe, expect, test, vi } from "vitest";
 import { exportSet } from "../../app/operations/export-set.server.ts";
@@ -11,6 +12,7 @@ import { readCommit } from "../../app/operations/read-commit.server.ts";
 import { readFile } from "../../app/operations/read-file.server.ts";
 import { readFiles } from "../../app/operations/read-files.server.ts";
 import { saveFiles } from "../../app/operations/save-files.server.ts";
+import { clashes, pathProblem } from "../../app/storage/safe-path.ts";
 import { database } from "../../db/connect.ts";
 import { GitObject } from "../../db/models/index.ts";
 import { testDatabase } from "../support/database.ts";
@@ -109,6 +111,42 @@ test("an export is a repository that git finds without fault, with the same hist
     expect(
       git("-c", "core.quotePath=false", "ls-tree", "-r", "--name-only", "main").trim().split("\n"),
     ).toHaveLength(5);
+  } finally {
+    rmSync(folder, { recursive: true });
+  }
+});
+
+test("whatever names pass for safe, git finds no fault with them", async () => {
+  const name = fc.oneof(
+    fc.string({ unit: "grapheme", minLength: 1, maxLength: 6 }),
+    fc.string({ unit: "grapheme-ascii", minLength: 1, maxLength: 6 }),
+  );
+  const awkward = fc.constantFrom(
+    ".git",
+    "git~1",
+    "GIT~2",
+    "con",
+    "..",
+    "a.",
+    "a ",
+    "a:b",
+    ".gitmodules",
+    "\u200d.git",
+  );
+  const path = fc.array(fc.oneof({ weight: 5, arbitrary: name }, awkward), { minLength: 1, maxLength: 3 });
+  const candidates = fc.sample(path, { numRuns: 4000, seed: 20261201 }).map((names) => names.join("/"));
+  const safe = new Set(candidates.filter((candidate) => pathProblem(candidate) === null));
+  for (const clashing of clashes(safe).keys()) safe.delete(clashing);
+  expect(safe.size).toBeGreaterThan(300);
+  const { modeller, address } = await setWith(Object.fromEntries([...safe].map((path) => [path, path])));
+  const folder = mkdtempSync(join(tmpdir(), "bondwright-"));
+  try {
+    await exportSet(modeller, address, folder);
+    const git = (...args: string[]) =>
+      execFileSync("git", ["-C", folder, ...args], { encoding: "utf8", stdio: "pipe" });
+    expect(git("fsck", "--strict", "--full")).toBe("");
+    const listed = git("ls-tree", "-r", "-z", "--name-only", "main").split("\0").filter(Boolean);
+    expect(listed.sort()).toEqual([...safe].sort());
   } finally {
     rmSync(folder, { recursive: true });
   }
