@@ -17,8 +17,10 @@ import type {
   FlatTrack,
 } from "./graph.ts";
 import { lawsOf } from "./laws.ts";
-import { portNames, translateReference } from "./references.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { portNames } from "./port-variables.ts";
+import { translateReference } from "./references.ts";
+import { plainScope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 
 /** Params first, since laws that learn a domain need their units; what depends on bonds comes after domains. */
 export function workOutParameters(translator: Translator): void {
@@ -186,6 +188,7 @@ function flatTrack(translator: Translator, value: Value): FlatTrack[] {
 
 function flatStarts(translator: Translator): FlatStart[] {
   const { draft } = translator;
+  if (draft.starts.length === 0) return [];
   const startable = new Set<Expr>();
   for (const node of draft.nodes) {
     if (node.type !== "C" && node.type !== "I" && node.type !== "IC") continue;
@@ -196,7 +199,7 @@ function flatStarts(translator: Translator): FlatStart[] {
   }
   const seen = new Set<Expr>();
   return draft.starts.flatMap(({ statement, instance, indices }): FlatStart[] => {
-    const scope: Scope = { file: instance.file, instance, indices, fixed: true };
+    const scope = plainScope(instance.file, instance, indices, true);
     const { target, value } = statement;
     if (target === null || value === null) {
       translator.refuse(

@@ -4,7 +4,8 @@ import { DIMENSIONLESS, isDimensionless, power } from "../units/dimension.ts";
 import { NO_INDICES } from "./draft.ts";
 import { spanIn } from "./files.ts";
 import { nearest } from "./nearest.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { plainScope, type Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 import type { Call } from "./tree-walk.ts";
 import { isDimension, measureText, type Typed } from "./typed.ts";
 
@@ -100,13 +101,7 @@ function written(translator: Translator, tree: Call, scope: Scope): Typed {
   const bound = new Map(item.parameters.map(({ text }, i) => [text, given[i]]));
   const outermost = translator.calls[0];
   translator.calls.push({ name, at: outermost?.at ?? tree.range, file: outermost?.file ?? scope.file });
-  const typed = translator.translate(item.body, {
-    file,
-    instance: null,
-    indices: NO_INDICES,
-    bound,
-    fixed: false,
-  });
+  const typed = translator.translate(item.body, { ...plainScope(file, null, NO_INDICES, false), bound });
   translator.calls.pop();
   return typed;
 }

@@ -4,7 +4,8 @@ import { parseUnit } from "../units/parse-unit.ts";
 import { Draft, NO_INDICES } from "./draft.ts";
 import { fileConst } from "./evaluate-values.ts";
 import { type SourceFile, spanIn } from "./files.ts";
-import { type Scope, Translator, unknownUnit } from "./translate.ts";
+import { plainScope } from "./scope.ts";
+import { Translator, unknownUnit } from "./translate.ts";
 
 /**
  * Consts, functions and curves of a file, looked at for themselves: a function's names even where nothing calls
@@ -13,7 +14,7 @@ import { type Scope, Translator, unknownUnit } from "./translate.ts";
 export function checkDeclarations(file: SourceFile): Finding[] {
   const draft = new Draft(file);
   const translator = new Translator(draft);
-  const scope: Scope = { file, instance: null, indices: NO_INDICES, fixed: true };
+  const scope = plainScope(file, null, NO_INDICES, true);
   for (const item of file.tree.items) {
     if (item.kind === "const" || item.kind === "param")
       fileConst(translator, { file, item }, scope, item.name.range);

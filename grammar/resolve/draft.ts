@@ -17,6 +17,7 @@ import type { Unit } from "../units/unit.ts";
 import type { SourceFile } from "./files.ts";
 import { spanIn } from "./files.ts";
 import type { Domain, NodeKind } from "./graph.ts";
+import type { Group } from "./infer-domains.ts";
 import type { Template, ValueStatement } from "./template.ts";
 import type { Typed } from "./typed.ts";
 
@@ -90,6 +91,8 @@ export interface DraftBond {
   effort: Symbol | null;
   flow: Symbol | null;
   domain: Domain | null;
+  /** The bonds it shares its domain with. */
+  group: Group | null;
 }
 
 export interface Value {

@@ -18,7 +18,8 @@ import { quantityText, unitOf } from "../units/unit-text.ts";
 import { NO_INDICES, type Value } from "./draft.ts";
 import type { Placed } from "./files.ts";
 import { spanIn } from "./files.ts";
-import { type Scope, type Translator, unknownUnit } from "./translate.ts";
+import { plainScope, type Scope } from "./scope.ts";
+import { type Translator, unknownUnit } from "./translate.ts";
 import { isDimension, type Measure, type Typed } from "./typed.ts";
 
 const SECOND: Dimension = [0, 0, 1, 0, 0, 0, 0];
@@ -100,13 +101,7 @@ export function workOut(translator: Translator, value: Value): void {
 function scopeOf(value: Value): Scope {
   const { kind } = value.statement;
   const fixed = kind === "param" || kind === "const" || kind === "input";
-  return {
-    file: value.instance.file,
-    instance: value.instance,
-    indices: value.indices,
-    fixed,
-    warnsOfUnits: !fixed,
-  };
+  return plainScope(value.instance.file, value.instance, value.indices, fixed);
 }
 
 function circle(translator: Translator, value: Value): Typed {
@@ -128,12 +123,7 @@ function parameter(translator: Translator, value: Value, statement: ValueDeclara
   const { override } = value;
   if (override !== null) {
     range = override.value.range;
-    standing = {
-      file: override.instance.file,
-      instance: override.instance,
-      indices: override.indices,
-      fixed: true,
-    };
+    standing = plainScope(override.instance.file, override.instance, override.indices, true);
     typed = translator.whole(override.value, standing);
     typed = translator.wanted(
       typed,
@@ -230,12 +220,7 @@ function input(translator: Translator, value: Value, statement: InputDeclaration
     return translator.refuse("unknown-unit", statement.unit.range, scope, unknownUnit(statement.unit.text));
   const { override } = value;
   if (override !== null) {
-    const outside = {
-      file: override.instance.file,
-      instance: override.instance,
-      indices: override.indices,
-      fixed: false,
-    };
+    const outside = plainScope(override.instance.file, override.instance, override.indices, false);
     const given = translator.whole(override.value, outside);
     return translator.wanted(
       given,
@@ -358,7 +343,7 @@ export function fileConst(
   }
   if (known !== undefined) return known.typed;
   draft.consts.set(item, "open");
-  const scope: Scope = { file, instance: null, indices: NO_INDICES, fixed: true };
+  const scope = plainScope(file, null, NO_INDICES, true);
   const written =
     translator.draft.consts.size > 5 * DEEPEST
       ? translator.refuse("too-large", range, from, "Consts depend on each other through too many steps.")

@@ -8,13 +8,12 @@ import { declarationSpan } from "./law-scope.ts";
 import { lawsFit } from "./laws.ts";
 import { unknownName } from "./names.ts";
 import { isJunction } from "./number-bonds.ts";
-import { finalBond } from "./references.ts";
+import { finalBond } from "./port-variables.ts";
 import type { Translator } from "./translate.ts";
 
 /** Bonds that junctions tie together: all of one domain. */
-interface Group {
+export interface Group {
   readonly bonds: DraftBond[];
-  readonly elements: DraftNode[];
   domain: Domain | null;
   /** Who settled it, for the finding when another disagrees. */
   by: { readonly text: string; readonly span: Span; readonly node: DraftNode } | null;
@@ -30,17 +29,14 @@ interface Group {
 export function inferDomains(translator: Translator): void {
   const { draft } = translator;
   const groups = groupBonds(draft);
-  const groupOf = new Map<DraftBond, Group>();
-  for (const group of groups) for (const bond of group.bonds) groupOf.set(bond, group);
-  declare(draft, groupOf);
-  const inference = new Inference(translator, groups, groupOf);
-  inference.settleByLaws();
+  declare(draft);
+  new Inference(translator, groups).settleByLaws();
   for (const group of groups) if (group.domain === null && !group.silent) reportUnknown(draft, group);
   if (groups.some(({ domain }) => domain === null)) draft.broken = true;
 }
 
 function groupBonds(draft: Draft): Group[] {
-  const parent = draft.bonds.map((_, i) => i);
+  const parent = new Int32Array(draft.bonds.length).map((_, i) => i);
   const rootOf = (i: number) => {
     let root = i;
     while (parent[root] !== root) {
@@ -58,31 +54,40 @@ function groupBonds(draft: Draft): Group[] {
     const root = rootOf(bond.index);
     let group = groups.get(root);
     if (group === undefined) {
-      group = { bonds: [], elements: [], domain: null, by: null, silent: false, candidates: null };
+      group = { bonds: [], domain: null, by: null, silent: false, candidates: null };
       groups.set(root, group);
     }
     group.bonds.push(bond);
-    for (const node of [bond.from, bond.to]) {
-      if (node.declaration.kind === "element" && group.elements.at(-1) !== node) group.elements.push(node);
-    }
+    bond.group = group;
   }
   return [...groups.values()];
 }
 
-function declare(draft: Draft, groupOf: ReadonlyMap<DraftBond, Group>): void {
-  for (const node of [...draft.nodes, ...draft.ports]) {
-    const { declaration } = node;
-    const { domain } = declaration;
-    const ports = declaration.kind === "element" ? declaration.ports : null;
-    if (domain === null && ports === null) continue;
-    for (const end of node.ends) {
-      const own = ports?.find(({ name }) => name.text === end.port)?.domain ?? domain;
-      const group = groupOf.get(finalBond(end.bond));
-      if (own === null || group === undefined) continue;
-      settle(draft, group, node, own);
-      if (isJunction(node.type)) break;
+function elementsOf(group: Group): DraftNode[] {
+  const elements = new Set<DraftNode>();
+  for (const { from, to } of group.bonds) {
+    if (from.declaration.kind === "element") elements.add(from);
+    if (to.declaration.kind === "element") elements.add(to);
+  }
+  return [...elements];
+}
+
+function declare(draft: Draft): void {
+  for (const nodes of [draft.nodes, draft.ports]) {
+    for (const node of nodes) {
+      const { declaration } = node;
+      const { domain } = declaration;
+      const ports = declaration.kind === "element" ? declaration.ports : null;
+      if (domain === null && ports === null) continue;
+      for (const end of node.ends) {
+        const own = ports?.find(({ name }) => name.text === end.port)?.domain ?? domain;
+        const { group } = finalBond(end.bond);
+        if (own !== null && group !== null) settle(draft, group, node, own);
+        if (isJunction(node.type)) break;
+      }
     }
   }
+  for (const bond of draft.bonds) bond.domain = bond.group?.domain ?? null;
 }
 
 function settle(draft: Draft, group: Group, node: DraftNode, name: Identifier): void {
@@ -103,7 +108,7 @@ function settle(draft: Draft, group: Group, node: DraftNode, name: Identifier): 
     node,
   };
   if (group.domain === null) {
-    setDomain(group, domain);
+    group.domain = domain;
     group.by = by;
   } else if (!sameDomain(group.domain, domain) && group.by !== null) {
     reportConflict(
@@ -140,18 +145,16 @@ function setDomain(group: Group, domain: Domain | null): void {
 class Inference {
   readonly #translator: Translator;
   readonly #groups: readonly Group[];
-  readonly #groupOf: ReadonlyMap<DraftBond, Group>;
 
-  constructor(translator: Translator, groups: readonly Group[], groupOf: ReadonlyMap<DraftBond, Group>) {
+  constructor(translator: Translator, groups: readonly Group[]) {
     this.#translator = translator;
     this.#groups = groups;
-    this.#groupOf = groupOf;
   }
 
   settleByLaws(): void {
     const open = this.#groups.filter(({ domain, silent }) => domain === null && !silent);
     if (open.length === 0) return;
-    const work = open.flatMap(({ elements }) => elements);
+    const work = open.flatMap(elementsOf);
     this.#spread(work);
     for (const node of work) if (this.#tryPair(node)) this.#spread(this.#neighbours(node));
   }
@@ -182,15 +185,15 @@ class Inference {
       group.candidates = fitting;
       if (fitting.length === 1 && group.by !== null) {
         setDomain(group, fitting[0]);
-        for (const other of group.elements)
+        for (const other of elementsOf(group))
           if (other !== node && this.#openGroups(other).length === 0) this.#check(group, other);
-        work.push(...group.elements);
+        work.push(...elementsOf(group));
       }
     }
   }
 
   #neighbours(node: DraftNode): DraftNode[] {
-    return node.ends.flatMap((end) => this.#groupOf.get(finalBond(end.bond))?.elements ?? []);
+    return node.ends.flatMap((end) => elementsOf(finalBond(end.bond).group as Group));
   }
 
   /** A transformer or gyrator between two open groups settles both where one pair of domains alone works out. */
@@ -233,8 +236,8 @@ class Inference {
   #openGroups(node: DraftNode): Group[] {
     const open = new Set<Group>();
     for (const end of node.ends) {
-      const group = this.#groupOf.get(finalBond(end.bond));
-      if (group !== undefined && group.domain === null) open.add(group);
+      const { group } = finalBond(end.bond);
+      if (group !== null && group.domain === null) open.add(group);
     }
     return [...open];
   }
@@ -247,11 +250,11 @@ class Inference {
   #fits(node: DraftNode, groups: readonly Group[], domains: readonly Domain[]): boolean {
     const bonds = node.ends.map((end) => finalBond(end.bond));
     for (const bond of bonds) {
-      const at = groups.indexOf(this.#groupOf.get(bond) as Group);
+      const at = groups.indexOf(bond.group as Group);
       if (at !== -1) bond.domain = domains[at];
     }
     const fits = lawsFit(this.#translator, node);
-    for (const bond of bonds) bond.domain = this.#groupOf.get(bond)?.domain ?? null;
+    for (const bond of bonds) bond.domain = bond.group?.domain ?? null;
     return fits;
   }
 }

@@ -1,7 +1,8 @@
 import type { Reference } from "../syntax/tree.ts";
 import { type DraftNode, type End, spanOf } from "./draft.ts";
-import { bondVariable, finalBond, portNames, storeVariable } from "./references.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { bondVariable, finalBond, portNames, storeVariable } from "./port-variables.ts";
+import { plainScope, type Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 import type { Typed } from "./typed.ts";
 
 export type Variable = "e" | "f" | "p" | "q";
@@ -27,7 +28,7 @@ const HAS: Readonly<Record<string, readonly Variable[]>> = {
 };
 
 /** Scope of a law: the element's own variables come first, and which of them the law uses is kept in `used`. */
-export function lawScope(translator: Translator, node: DraftNode, used: OwnVariable[]): Scope {
+export function lawScope(node: DraftNode, used: OwnVariable[]): Scope {
   return {
     file: node.instance.file,
     instance: node.instance,
@@ -35,11 +36,8 @@ export function lawScope(translator: Translator, node: DraftNode, used: OwnVaria
     fixed: false,
     warnsOfUnits: true,
     self: node,
-    own: (reference) => {
-      const own = ownVariable(translator, node, reference);
-      if (own !== null) used.push(own);
-      return own?.typed ?? null;
-    },
+    used,
+    bound: null,
   };
 }
 
@@ -50,7 +48,7 @@ export function ownVariable(
   reference: Reference,
 ): OwnVariable | null {
   const { path } = reference;
-  if (path.length > 2 || path.some(({ indices }) => indices.length > 0)) return null;
+  if (path.length > 2 || path[path.length - 1].indices.length > 0) return null;
   const name = path[path.length - 1].name.text;
   if (name !== "e" && name !== "f" && name !== "p" && name !== "q") return null;
   const ports = portNames(node);
@@ -64,7 +62,7 @@ export function ownVariable(
     typed: translator.refuse(
       "unknown-variable",
       reference.range,
-      { file: node.instance.file, instance: node.instance, indices: node.indices, fixed: false },
+      plainScope(node.instance.file, node.instance, node.indices, false),
       message,
     ),
   });

@@ -4,8 +4,9 @@ import { type DraftNode, spanOf } from "./draft.ts";
 import type { FlatLaw } from "./graph.ts";
 import { endOf, lawScope, type OwnVariable, ownVariable, type Variable } from "./law-scope.ts";
 import { linearLaw } from "./linear-law.ts";
-import { finalBond } from "./references.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { finalBond } from "./port-variables.ts";
+import type { Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 import { twoPortLaw } from "./two-port-law.ts";
 
 export interface Laws {
@@ -29,7 +30,7 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
   const { declaration } = node;
   if (declaration.kind !== "element") return NONE;
   const used: OwnVariable[] = [];
-  const scope = lawScope(translator, node, used);
+  const scope = lawScope(node, used);
   translator.signal = false;
   if (declaration.laws.length === 0) {
     const law = linearLaw(translator, node, declaration, scope);

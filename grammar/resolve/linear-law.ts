@@ -7,8 +7,9 @@ import { unitOfVariable } from "./domains.ts";
 import { type DraftNode, spanOf } from "./draft.ts";
 import type { FlatLaw } from "./graph.ts";
 import { declarationSpan, endOf } from "./law-scope.ts";
-import { bondVariable, finalBond, storeVariable } from "./references.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { bondVariable, finalBond, storeVariable } from "./port-variables.ts";
+import type { Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 import { isDimension, measureText } from "./typed.ts";
 
 /** The two forms of a linear law: `left = value*right`, or with the sides changed `right = value*left`. */
@@ -39,7 +40,7 @@ export function linearLaw(
   }
   const tree = declaration.valueOf ?? ownName(translator, node, declaration);
   if (tree === null) return null;
-  const value = translator.whole(tree, { ...scope, own: undefined });
+  const value = translator.whole(tree, { ...scope, self: null });
   const bond = finalBond(endOf(node, node.type === "RS" ? "in" : "")?.bond ?? node.ends[0].bond);
   if (value.measure === "unknown" || bond.domain === null) return null;
   const left = unitOfVariable(bond.domain, form.left).dimension;

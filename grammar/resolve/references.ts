@@ -2,13 +2,15 @@ import type { IndexedName, Reference } from "../syntax/tree.ts";
 import { DIMENSIONLESS } from "../units/dimension.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import type { Dimension, Unit } from "../units/unit.ts";
-import { unitOfVariable } from "./domains.ts";
 import type { DraftBond, DraftNode, Instance } from "./draft.ts";
 import { fileConst, valueOf } from "./evaluate-values.ts";
 import { spanIn } from "./files.ts";
+import { ownVariable } from "./law-scope.ts";
 import { fullName, lookUp } from "./names.ts";
 import { nearest } from "./nearest.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { bondVariable, finalBond, portNames, storeVariable } from "./port-variables.ts";
+import type { Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 import type { Typed } from "./typed.ts";
 
 const SECOND = parseUnit("s") as Unit;
@@ -17,8 +19,13 @@ const PORT_VARIABLES = new Set(["e", "f", "p", "q"]);
 
 export function translateReference(translator: Translator, tree: Reference, scope: Scope): Typed {
   const [first] = tree.path;
-  const own = scope.own?.(tree);
-  if (own !== undefined && own !== null) return own;
+  if (scope.self !== null) {
+    const own = ownVariable(translator, scope.self, tree);
+    if (own !== null) {
+      scope.used?.push(own);
+      return own.typed;
+    }
+  }
   if (tree.path.length === 1) return bareName(translator, first, scope);
   if (scope.instance === null) {
     return translator.refuse(
@@ -48,7 +55,7 @@ function bareName(translator: Translator, part: IndexedName, scope: Scope): Type
   const name = part.name.text;
   const { range } = part;
   if (part.indices.length > 0) return indexedName(translator, part, scope);
-  const bound = scope.bound?.get(name);
+  const bound = scope.bound === null ? undefined : scope.bound.get(name);
   if (bound !== undefined) return bound;
   const index = scope.indices.get(name);
   if (index !== undefined)
@@ -188,33 +195,6 @@ function bondByName(
   return bondVariable(translator, finalBond(bond), variable);
 }
 
-/** The bond that a bond became when ports were joined. */
-export function finalBond(bond: DraftBond): DraftBond {
-  let final = bond;
-  while (final.into !== null) final = final.into;
-  return final;
-}
-
-export function bondVariable(translator: Translator, bond: DraftBond, variable: "e" | "f"): Typed {
-  const expr = variable === "e" ? bond.effort : bond.flow;
-  if (expr === null || bond.domain === null) return translator.unknown;
-  const unit = unitOfVariable(bond.domain, variable);
-  return { expr, measure: unit.dimension, shown: unit };
-}
-
-export function storeVariable(
-  translator: Translator,
-  node: DraftNode,
-  port: string,
-  bond: DraftBond,
-  variable: "p" | "q",
-): Typed {
-  if (bond.domain === null) return translator.unknown;
-  const unit = unitOfVariable(bond.domain, variable);
-  const name = `${node.name}${port === "" ? "" : `.${port}`}.${variable}`;
-  return { expr: translator.draft.pool.symbol("state", name), measure: unit.dimension, shown: unit };
-}
-
 function nodeVariable(
   translator: Translator,
   node: DraftNode,
@@ -257,12 +237,4 @@ function junctionHas(node: DraftNode): string {
   return node.type === "1"
     ? `A 1-junction has one flow, \`${node.local}.f\`; its efforts belong to its bonds: ask an element, or name a bond with \`as\`.`
     : `A 0-junction has one effort, \`${node.local}.e\`; its flows belong to its bonds: ask an element, or name a bond with \`as\`.`;
-}
-
-/** Names of the ports by which a node is asked; null where it is asked directly. */
-export function portNames(node: DraftNode): readonly string[] | null {
-  if (node.declaration.kind === "element" && node.declaration.ports !== null) {
-    return node.declaration.ports.map(({ name }) => name.text);
-  }
-  return node.type === "TF" || node.type === "GY" || node.type === "RS" ? ["in", "out"] : null;
 }

@@ -1,34 +1,17 @@
 import { type FindingName, finding } from "../diagnostics/finding.ts";
 import type { Range } from "../source/span.ts";
 import type { Expr } from "../symbolic/expression.ts";
-import type { Expression, Reference } from "../syntax/tree.ts";
+import type { Expression } from "../syntax/tree.ts";
 import { toSI } from "../units/convert.ts";
 import { DIMENSIONLESS, divide, isDimensionless, multiply, power } from "../units/dimension.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import type { Unit } from "../units/unit.ts";
 import { translateCall } from "./calls.ts";
-import type { Draft, DraftNode, Indices, Instance, Value } from "./draft.ts";
+import type { Draft, Value } from "./draft.ts";
 import { type SourceFile, spanIn } from "./files.ts";
 import { translateReference } from "./references.ts";
+import type { Scope } from "./scope.ts";
 import { cyclesForAngle, fits, isDimension, type Measure, measureText, type Typed } from "./typed.ts";
-
-/** Where an expression stands: what its names can mean. */
-export interface Scope {
-  readonly file: SourceFile;
-  /** null at file level. */
-  readonly instance: Instance | null;
-  readonly indices: Indices;
-  /** In a law: the variables of the element's own ports (`e`, `out.f`, `a.p`); null for any other reference. */
-  readonly own?: (reference: Reference) => Typed | null;
-  /** In a law: the element, whose own variables are no signals from outside. */
-  readonly self?: DraftNode;
-  /** In the body of a function: what it was called with. */
-  readonly bound?: ReadonlyMap<string, Typed>;
-  /** Params, bounds, starts: nothing that changes with time. */
-  readonly fixed: boolean;
-  /** Laws, lets, tracks and outputs: a unit there could have been meant as a value's name. */
-  readonly warnsOfUnits?: boolean;
-}
 
 type Binary = Extract<Expression, { kind: "binary" }>;
 
@@ -184,7 +167,7 @@ export class Translator {
     const unit = parseUnit(tree.unit.text);
     if (unit === null)
       return this.refuse("unknown-unit", tree.unit.range, scope, unknownUnit(tree.unit.text));
-    if (scope.warnsOfUnits === true && scope.instance?.values.has(unit.text)) {
+    if (scope.warnsOfUnits && scope.instance?.values.has(unit.text)) {
       const span = spanIn(scope.file, { start: tree.range.start, end: tree.range.end });
       this.draft.report(
         finding(

@@ -7,8 +7,9 @@ import { unitText } from "../units/unit-text.ts";
 import { type DraftNode, spanOf } from "./draft.ts";
 import type { FlatLaw } from "./graph.ts";
 import { endOf, type OwnVariable, ownVariable } from "./law-scope.ts";
-import { finalBond } from "./references.ts";
-import type { Scope, Translator } from "./translate.ts";
+import { finalBond } from "./port-variables.ts";
+import type { Scope } from "./scope.ts";
+import type { Translator } from "./translate.ts";
 
 /** Left side → the partner on the right, and whether the factor is the ratio itself or one over it. */
 const FORMS: Readonly<Record<string, readonly [partner: string, inverse: boolean]>> = {

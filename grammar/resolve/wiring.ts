@@ -47,6 +47,7 @@ export function wire(draft: Draft, instance: Instance, wiring: Wiring, indices: 
           effort: null,
           flow: null,
           domain: null,
+          group: null,
         };
         draft.bonds.push(drawn);
         from.node.ends.push({ bond: drawn, side: "from", port: from.port, range: from.range });

@@ -8,13 +8,17 @@ import type { Unit } from "./unit.ts";
 export function toSI(value: number, unit: Unit): number {
   if (unit.factor === 1) return value + unit.offset;
   const tens = powerOfTen(unit.factor);
-  return (tens === 0 ? value * unit.factor : shifted(value, tens)) + unit.offset;
+  if (tens !== 0) return shifted(value, tens) + unit.offset;
+  const divisor = wholeDivisor(unit.factor);
+  return (divisor === 0 ? value * unit.factor : value / divisor) + unit.offset;
 }
 
 export function fromSI(value: number, unit: Unit): number {
   if (unit.factor === 1) return value - unit.offset;
   const tens = powerOfTen(unit.factor);
-  return tens === 0 ? (value - unit.offset) / unit.factor : shifted(value - unit.offset, -tens);
+  if (tens !== 0) return shifted(value - unit.offset, -tens);
+  const divisor = wholeDivisor(unit.factor);
+  return divisor === 0 ? (value - unit.offset) / unit.factor : (value - unit.offset) * divisor;
 }
 
 /** Throws where the dimensions differ: callers have checked them, and a wrong number would be worse. */
@@ -27,6 +31,12 @@ export function convert(value: number, from: Unit, to: Unit): number {
 function powerOfTen(factor: number): number {
   const tens = Math.round(Math.log10(factor));
   return Number(`1e${tens}`) === factor ? tens : 0;
+}
+
+/** 18 L/min is 18/60000 m^3/s, not 18 times a rounded sixtieth. */
+function wholeDivisor(factor: number): number {
+  const whole = factor < 1 ? Math.round(1 / factor) : 0;
+  return whole > 0 && 1 / whole === factor ? whole : 0;
 }
 
 function shifted(value: number, tens: number): number {

@@ -135,6 +135,7 @@ describe("how a unit is read", () => {
   test("decimal prefixes keep the digits that were written", () => {
     expect(toSI(2.1, read("mH"))).toBe(0.0021);
     expect(toSI(210, read("mm"))).toBe(0.21);
+    expect(toSI(18, read("L/min"))).toBe(0.0003);
     expect(fromSI(0.0021, read("mH"))).toBe(2.1);
     expect(convert(10, read("kn"), read("km/h"))).toBeCloseTo(18.52, 12);
   });
