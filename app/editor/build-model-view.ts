@@ -7,6 +7,7 @@ import type { Expr } from "../../grammar/symbolic/expression.ts";
 import { symbolsOf } from "../../grammar/symbolic/symbols.ts";
 import { expressionLatex } from "../../grammar/writing/latex.ts";
 import { dotted, nameLatex } from "../../grammar/writing/latex-name.ts";
+import { termsOf } from "../../grammar/writing/shape.ts";
 import { expressionText } from "../../grammar/writing/text.ts";
 import { DARK, type Light } from "./light.ts";
 import { shownIn } from "./shown-number.ts";
@@ -113,7 +114,7 @@ function equation(
   right: Expr,
   left: Written = rateOf(state),
 ): EquationView {
-  const terms = traced(graph, model, model.implicit === null ? state : right);
+  const terms = tracedTerms(graph, model, right, model.implicit === null ? state : right);
   return {
     state,
     left: formula(left.text, left.latex),
@@ -124,16 +125,19 @@ function equation(
   };
 }
 
-/** The summands of a right side, each with all it came through and with the parameters and inputs it holds. */
-function traced(graph: FlatGraph, model: StateModel, what: Expr | string): TermView[] {
-  return traceTerms(model, what).map(({ term, nodes, bonds }) => {
-    const text = expressionText(term);
-    const latex = expressionLatex(term);
-    const negative = text.startsWith("-");
-    const bare = (written: string) => (written.startsWith("-") ? written.slice(1).trimStart() : written);
+/**
+ * The summands of a right side in the order of the written text, each with all it came through and with the
+ * parameters and inputs it holds.
+ */
+function tracedTerms(graph: FlatGraph, model: StateModel, right: Expr, what: Expr | string): TermView[] {
+  const traces = new Map(traceTerms(model, what).map((traced) => [traced.term, traced]));
+  return termsOf(right).map(({ term, negative }) => {
+    const { nodes, bonds } = traces.get(term) ?? { nodes: [], bonds: [] };
+    const { text, latex } = written(term);
+    const bare = (signed: string) => (negative ? signed.replace(/^-\s*/, "") : signed);
     return {
       sign: negative ? "-" : "+",
-      formula: negative ? formula(bare(text), bare(latex)) : formula(text, latex),
+      formula: formula(bare(text), bare(latex)),
       nodes: nodes.map((node) => graph.nodes[node].name),
       bonds: bonds.map((bond) => graph.bonds[bond].id),
       values: [...symbolsOf(term)]

@@ -63,5 +63,5 @@ export async function changedEquation(page: Page, left: string, before: string):
 
 export async function save(page: Page, message: string): Promise<void> {
   await page.getByLabel("What this version changes").fill(message);
-  await page.getByRole("button", { name: "Save" }).click();
+  await page.getByRole("button", { name: "Save", exact: true }).click();
 }

@@ -34,7 +34,7 @@ export default function SetOverview({ loaderData }: Route.ComponentProps) {
               <tr>
                 <th scope="col">File</th>
                 <th scope="col" className="figure">
-                  Characters
+                  Bytes
                 </th>
                 <th scope="col">History</th>
               </tr>
