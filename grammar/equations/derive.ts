@@ -53,15 +53,17 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const states = rows.map((row) => stateOf(assignments, row, starts.get(row.symbol) ?? 0));
   const efforts = graph.bonds.map(({ effort }) => finishOrNull(followed.values.get(effort), finish));
   const flows = graph.bonds.map(({ flow }) => finishOrNull(followed.values.get(flow), finish));
+  // Sums of what a loop or a group of rates gave share their denominators.
+  const shorter = (expr: Expr) => (tied || followed.loops.length > 0 ? tidy(pool, expr) : expr);
   const outputs = graph.outputs.map(({ name, unit, value, span }) => ({
     name,
     unit,
     span,
-    value: finish(settle(value)),
+    value: shorter(finish(settle(value))),
   }));
   const equations = states.map(({ name, span }, i): RateEquation => {
     const rate = solved.rates.get(rows[i].rateSymbol) ?? rows[i].rateSymbol;
-    return { state: name, rate, span };
+    return { state: name, rate: shorter(rate), span };
   });
 
   const inputs = modelInputs(assignments, solved, dependent);

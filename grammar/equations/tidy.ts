@@ -1,15 +1,21 @@
 import type { Expr } from "../symbolic/expression.ts";
 import type { Pool } from "../symbolic/pool.ts";
-import { rationalForm } from "../symbolic/rational-form.ts";
+import { collectedForm } from "../symbolic/rational-form.ts";
 
 const SMALL = 60;
 
-/** One fraction instead of several, where that is the shorter way to write it and cheap to find. */
+/** One fraction instead of several over sums, where that is the shorter way to write it and cheap to find. */
 export function tidy(pool: Pool, expr: Expr): Expr {
   const before = writtenSize(expr, 4 * SMALL);
-  if (before >= 4 * SMALL) return expr;
-  const form = rationalForm(pool, expr, SMALL);
+  if (before >= 4 * SMALL || !hasSumBelow(expr)) return expr;
+  const form = collectedForm(pool, expr, SMALL);
   return form !== null && writtenSize(form, before + 1) <= before ? form : expr;
+}
+
+/** For what is short as written. */
+function hasSumBelow(expr: Expr): boolean {
+  if (expr.op === "power" && expr.args[0].op === "sum" && expr.args[1].value < 0) return true;
+  return expr.args.some(hasSumBelow);
 }
 
 /** The number of leaves in the text of an expression, counted up to `limit`. */

@@ -1,11 +1,14 @@
 import * as exact from "./exact.ts";
 import type { Expr } from "./expression.ts";
-import { collects, type Node } from "./node.ts";
+import { coefficientOf, collects, type Node } from "./node.ts";
 import { compareFactors } from "./order.ts";
 import type { Pool } from "./pool.ts";
 import { restOf } from "./sum.ts";
 
-/** Monomials (products of atoms, without a coefficient; `one` for the constant) with their coefficients, none zero. */
+/**
+ * Monomials (products of atoms to whole powers, also negative ones, without a coefficient; `one` for the constant) with
+ * their coefficients, none zero.
+ */
 export type Polynomial = ReadonlyMap<Expr, number>;
 
 /** Thrown through the polynomial routines when a result passes the limit; never leaves this folder. */
@@ -18,24 +21,25 @@ export function addPolynomials(a: Polynomial, b: Polynomial, scale = 1): Polynom
 }
 
 export function multiplyPolynomials(pool: Pool, a: Polynomial, b: Polynomial, limit: number): Polynomial {
-  const total = new Map<Expr, number>();
   if (a.size * b.size > 16 * limit) throw new TooManyTerms();
+  const total = new Map<Expr, number>();
   for (const [x, p] of a) {
-    for (const [y, q] of b) {
-      const product = pool.product(x, y) as Node;
-      // Atoms may meet: |x|*|x| is x^2, and sums under roots come out.
-      const [rest, factor] = product.op === "sum" ? [product, 1] : split(pool, product);
-      accumulate(total, rest, exact.multiply(exact.multiply(p, q), factor));
-    }
+    for (const [y, q] of b) accumulateProduct(pool, total, x, y, exact.multiply(p, q));
   }
   if (total.size > limit) throw new TooManyTerms();
   return total;
 }
 
-function split(pool: Pool, product: Node): [Expr, number] {
-  if (product.op === "number") return [pool.one, product.value];
-  const rest = restOf(pool, product);
-  return [rest, rest === product ? 1 : product.args[0].value];
+/** Atoms may meet and leave a coefficient: sqrt(2)*sqrt(2) is 2. */
+function accumulateProduct(pool: Pool, into: Map<Expr, number>, x: Expr, y: Expr, coefficient: number): void {
+  if (x === pool.one) accumulate(into, y, coefficient);
+  else if (y === pool.one) accumulate(into, x, coefficient);
+  else {
+    const product = pool.product(x, y) as Node;
+    const factor = coefficientOf(product);
+    const rest = product.op === "number" ? pool.one : restOf(pool, product);
+    accumulate(into, rest, factor === 1 ? coefficient : exact.multiply(coefficient, factor));
+  }
 }
 
 function accumulate(into: Map<Expr, number>, monomial: Expr, coefficient: number): void {
@@ -51,81 +55,88 @@ export function polynomialExpr(pool: Pool, polynomial: Polynomial): Expr {
   return pool.sum(terms);
 }
 
-/** a/b where the division leaves no rest, null otherwise: by leading terms in lexicographic order of the atoms. */
+/**
+ * a/b where the division leaves no rest, null otherwise: by leading terms in lexicographic order of the atoms. Since
+ * exponents may be negative, monomials divide everything, and are taken out of both first.
+ */
 export function divideExactly(pool: Pool, a: Polynomial, b: Polynomial, limit: number): Polynomial | null {
-  if (b.size === 1) {
-    const [[monomial, coefficient]] = b;
-    return divideByMonomial(pool, a, monomial, coefficient);
-  }
-  const lead = leadOf(b);
+  const [frontA, rest] = cleared(pool, a);
+  const [frontB, divisor] = cleared(pool, b);
+  const lead = leadOf(divisor);
+  const top = divisor.get(lead) as number;
   const quotient = new Map<Expr, number>();
-  let rest = a;
   while (rest.size > 0) {
     if (quotient.size > limit || rest.size > 4 * limit) return null;
-    const top = leadOf(rest);
-    const monomial = dividedMonomial(pool, top, lead);
-    if (monomial === null) return null;
-    const coefficient = exact.divide(rest.get(top) as number, b.get(lead) as number);
+    const first = leadOf(rest);
+    const monomial = pool.divide(first, lead);
+    if (!factorsOf(monomial as Node).every((factor) => exponentOf(factor) > 0)) return null;
+    const coefficient = exact.divide(rest.get(first) as number, top);
     accumulate(quotient, monomial, coefficient);
-    const step = new Map(rest);
-    for (const [each, factor] of b) {
-      const product = pool.product(each, monomial) as Node;
-      accumulate(step, product, exact.multiply(-coefficient, factor));
+    for (const [each, factor] of divisor) {
+      accumulateProduct(pool, rest, each, monomial, exact.multiply(-coefficient, factor));
     }
     // Rounded coefficients may leave the leading term behind.
-    step.delete(top);
-    rest = step;
+    rest.delete(first);
   }
-  return quotient;
+  return shiftPolynomial(pool, quotient, pool.divide(frontA, frontB));
 }
 
-function divideByMonomial(pool: Pool, a: Polynomial, monomial: Expr, coefficient: number): Polynomial | null {
-  const quotient = new Map<Expr, number>();
-  for (const [each, factor] of a) {
-    const divided = dividedMonomial(pool, each, monomial);
-    if (divided === null) return null;
-    quotient.set(divided, exact.divide(factor, coefficient));
+function cleared(pool: Pool, polynomial: Polynomial): [front: Expr, rest: Map<Expr, number>] {
+  const front = clearingMonomial(pool, polynomial);
+  return [front, new Map(shiftPolynomial(pool, polynomial, pool.power(front, pool.number(-1))))];
+}
+
+export function shiftPolynomial(pool: Pool, polynomial: Polynomial, monomial: Expr): Polynomial {
+  if (monomial === pool.one) return polynomial;
+  const shifted = new Map<Expr, number>();
+  for (const [each, coefficient] of polynomial) accumulateProduct(pool, shifted, each, monomial, coefficient);
+  return shifted;
+}
+
+/** The monomial that, divided out, leaves no negative exponent and no factor common to all terms. */
+export function clearingMonomial(pool: Pool, ...polynomials: readonly Polynomial[]): Expr {
+  return monomialOf(pool, exponentRanges(polynomials), ([least]) => least);
+}
+
+/** The monomial that all terms share: what may stand in front of them, or below them, without making them longer. */
+export function sharedMonomial(pool: Pool, polynomial: Polynomial): Expr {
+  return monomialOf(pool, exponentRanges([polynomial]), ([least, most]) =>
+    least > 0 ? least : Math.min(most, 0),
+  );
+}
+
+type Ranges = ReadonlyMap<Expr, readonly [least: number, most: number]>;
+
+function monomialOf(pool: Pool, ranges: Ranges, choose: (range: readonly [number, number]) => number): Expr {
+  const factors: Expr[] = [];
+  for (const [atom, range] of ranges) {
+    const exponent = choose(range);
+    if (exponent !== 0) factors.push(pool.power(atom, pool.number(exponent)));
   }
-  return quotient;
+  return pool.product(factors);
 }
 
-function dividedMonomial(pool: Pool, a: Expr, b: Expr): Expr | null {
-  if (b === pool.one) return a;
-  const quotient = pool.divide(a, b) as Node;
-  return factorsOf(quotient).every((factor) => exponentOf(factor) > 0) ? quotient : null;
-}
-
-/** The largest monomial that divides every term, as the factor to take out. */
-export function commonMonomial(pool: Pool, polynomial: Polynomial): Expr {
-  let common: Map<Expr, number> | null = null;
-  for (const monomial of polynomial.keys()) {
-    const powers = new Map<Expr, number>();
-    for (const factor of factorsOf(monomial as Node)) powers.set(atomOf(factor), exponentOf(factor));
-    if (common === null) common = powers;
-    else {
-      for (const [base, exponent] of common) {
-        const least = Math.min(exponent, powers.get(base) ?? 0);
-        if (least > 0) common.set(base, least);
-        else common.delete(base);
+/** Of each atom the least and the greatest exponent; 0 where a term lacks it. */
+function exponentRanges(polynomials: readonly Polynomial[]): Ranges {
+  const ranges = new Map<Expr, readonly [number, number]>();
+  const counts = new Map<Expr, number>();
+  let terms = 0;
+  for (const polynomial of polynomials) {
+    for (const monomial of polynomial.keys()) {
+      terms += 1;
+      for (const factor of factorsOf(monomial as Node)) {
+        const atom = atomOf(factor);
+        const exponent = exponentOf(factor);
+        const [least, most] = ranges.get(atom) ?? [exponent, exponent];
+        ranges.set(atom, [Math.min(least, exponent), Math.max(most, exponent)]);
+        counts.set(atom, (counts.get(atom) ?? 0) + 1);
       }
     }
-    if (common.size === 0) return pool.one;
   }
-  return pool.product([...(common ?? [])].map(([base, exponent]) => pool.power(base, pool.number(exponent))));
-}
-
-/** The greatest number that leaves whole coefficients; 1 where they aren't fractions. */
-export function numericContent(polynomial: Polynomial): number {
-  let numerator = 0;
-  let denominator = 1;
-  for (const coefficient of polynomial.values()) {
-    const fraction = exact.fractionOf(coefficient);
-    if (fraction === null) return 1;
-    numerator = exact.gcd(numerator, fraction.numerator);
-    denominator = (denominator / exact.gcd(denominator, fraction.denominator)) * fraction.denominator;
-    if (denominator > 1e6) return 1;
+  for (const [atom, [least, most]] of ranges) {
+    if (counts.get(atom) !== terms) ranges.set(atom, [Math.min(least, 0), Math.max(most, 0)]);
   }
-  return numerator === 0 ? 1 : numerator / denominator;
+  return ranges;
 }
 
 function leadOf(polynomial: Polynomial): Expr {

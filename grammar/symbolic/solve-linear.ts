@@ -1,13 +1,16 @@
 import type { Expr } from "./expression.ts";
 import {
   addPolynomials,
+  clearingMonomial,
   divideExactly,
   multiplyPolynomials,
   type Polynomial,
+  polynomialExpr,
+  shiftPolynomial,
   TooManyTerms,
 } from "./polynomial.ts";
 import type { Pool } from "./pool.ts";
-import { type Quotient, quotientExpr, quotientOf } from "./rational-form.ts";
+import { Quotients } from "./quotient.ts";
 
 /**
  * `singular` names rows of which one follows from (or contradicts) the others; `large` means that the solution
@@ -53,14 +56,15 @@ export function solveLinearSystem(
 
 function solve(pool: Pool, matrix: readonly (readonly Expr[])[], right: readonly Expr[]): LinearSolution {
   const n = matrix.length;
-  const scaled = matrix.map((row) => clearRow(pool, row));
-  const rows = scaled.map(({ entries }, i) => [
+  const quotients = new Quotients(pool, TERM_LIMIT);
+  const cleared = matrix.map((row) => clearRow(pool, quotients, row));
+  const rows = cleared.map(({ entries }, i) => [
     ...entries,
     ...entries.map((_, j): Polynomial => (i === j ? new Map([[pool.one, 1]]) : new Map())),
   ]);
   const order = rows.map((_, i) => i);
   const columns = rows.map((_, i) => i);
-  let previous: Polynomial = new Map([[pool.one, 1]]);
+  let determinant: Polynomial = new Map([[pool.one, 1]]);
   for (let k = 0; k < n; k += 1) {
     const pivot = simplestPivot(rows, k, n);
     if (pivot === null) return { kind: "singular", rows: order.slice(k), columns: columns.slice(k) };
@@ -68,94 +72,85 @@ function solve(pool: Pool, matrix: readonly (readonly Expr[])[], right: readonly
     swap(order, k, pivot.row);
     swap(columns, k, pivot.column);
     for (const row of rows) swap(row, k, pivot.column);
-    const lead = rows[k][k];
-    for (let i = 0; i < n; i += 1) {
-      if (i === k) continue;
-      const factor = rows[i][k];
-      for (let j = 0; j < 2 * n; j += 1) {
-        if (j === k) continue;
-        const cross = addPolynomials(
-          multiplyPolynomials(pool, lead, rows[i][j], TERM_LIMIT),
-          multiplyPolynomials(pool, factor, rows[k][j], TERM_LIMIT),
-          -1,
-        );
-        const divided = divideExactly(pool, cross, previous, TERM_LIMIT);
-        if (divided === null) return { kind: "large" };
-        rows[i][j] = divided;
-      }
-      rows[i][k] = new Map();
-    }
+    if (!eliminate(pool, rows, k, determinant)) return { kind: "large" };
+    determinant = rows[k][k];
     // All diagonal entries so far are the same minor now.
-    for (let i = 0; i < k; i += 1) rows[i][i] = lead;
-    previous = lead;
+    for (let i = 0; i < k; i += 1) rows[i][i] = determinant;
   }
   const values = new Array<Expr>(n);
-  const sides = right.map((side, i) => pool.product(scaled[i].factor, side));
+  const sides = right.map((side, i) => pool.product(cleared[i].factor, side));
   for (let k = 0; k < n; k += 1) {
-    const weights = rows[k].slice(n);
-    values[columns[k]] = combine(pool, weights, sides, previous);
+    const value = combine(pool, quotients, rows[k].slice(n), sides, determinant);
+    if (value === null) return { kind: "large" };
+    values[columns[k]] = value;
   }
   return { kind: "solved", values };
 }
 
-/** Σ weight·side / determinant. */
+/** One step of the elimination, above and below the pivot; false where a division that must be exact is not. */
+function eliminate(pool: Pool, rows: readonly Polynomial[][], k: number, previous: Polynomial): boolean {
+  const lead = rows[k][k];
+  for (let i = 0; i < rows.length; i += 1) {
+    if (i === k) continue;
+    const factor = rows[i][k];
+    for (let j = 0; j < rows[i].length; j += 1) {
+      if (j === k) continue;
+      const cross = addPolynomials(
+        multiplyPolynomials(pool, lead, rows[i][j], TERM_LIMIT),
+        multiplyPolynomials(pool, factor, rows[k][j], TERM_LIMIT),
+        -1,
+      );
+      const divided = divideExactly(pool, cross, previous, TERM_LIMIT);
+      if (divided === null) return false;
+      rows[i][j] = divided;
+    }
+    rows[i][k] = new Map();
+  }
+  return true;
+}
+
+/** Σ weight·side / determinant, with one fraction bar over what shares its denominator. */
 function combine(
   pool: Pool,
+  quotients: Quotients,
   weights: readonly Polynomial[],
   sides: readonly Expr[],
   determinant: Polynomial,
-): Expr {
-  const terms = weights.flatMap((weight, j) => {
-    if (weight.size === 0 || sides[j] === pool.zero) return [];
-    const quotient = fraction(pool, weight, determinant);
-    return [{ quotient, side: sides[j] }];
-  });
-  // One fraction bar over what shares its denominator.
+): Expr | null {
   const tops = new Map<Expr, Expr[]>();
-  for (const { quotient, side } of terms) {
-    const bottom = quotientExpr(pool, {
-      numerator: new Map([[pool.one, 1]]),
-      denominator: quotient.denominator,
-    });
-    const top = pool.product(
-      quotientExpr(pool, { numerator: quotient.numerator, denominator: new Map() }),
-      side,
+  for (const [j, weight] of weights.entries()) {
+    if (weight.size === 0 || sides[j] === pool.zero) continue;
+    const quotient = quotients.over(weight, determinant);
+    if (quotient === null) return null;
+    const { numerator, denominator } = quotient;
+    const below = pool.product(
+      [...denominator].map(([base, power]) => pool.power(base, pool.number(-power))),
     );
-    const list = tops.get(bottom);
-    if (list === undefined) tops.set(bottom, [top]);
-    else list.push(top);
+    const top = pool.product(polynomialExpr(pool, numerator), sides[j]);
+    tops.set(below, [...(tops.get(below) ?? []), top]);
   }
-  return pool.sum([...tops].map(([bottom, list]) => pool.product(bottom, pool.sum(list))));
-}
-
-function fraction(pool: Pool, numerator: Polynomial, determinant: Polynomial): Quotient {
-  const expr = pool.divide(
-    quotientExpr(pool, { numerator, denominator: new Map() }),
-    quotientExpr(pool, { numerator: determinant, denominator: new Map() }),
-  );
-  const quotient = quotientOf(pool, expr, 4 * TERM_LIMIT);
-  if (quotient === null) throw new TooManyTerms();
-  return quotient;
+  return pool.sum([...tops].map(([below, list]) => pool.product(below, pool.sum(list))));
 }
 
 /** The row as polynomials, and the factor it was multiplied with for that. */
-function clearRow(pool: Pool, row: readonly Expr[]): { entries: Polynomial[]; factor: Expr } {
-  const quotients = row.map((entry) => {
-    const quotient = quotientOf(pool, entry, TERM_LIMIT);
-    if (quotient === null) throw new TooManyTerms();
-    return quotient;
-  });
+function clearRow(
+  pool: Pool,
+  quotients: Quotients,
+  row: readonly Expr[],
+): { entries: Polynomial[]; factor: Expr } {
   const common = new Map<Expr, number>();
-  for (const { denominator } of quotients) {
+  for (const { denominator } of row.map((entry) => quotients.of(entry))) {
     for (const [base, exponent] of denominator) common.set(base, Math.max(exponent, common.get(base) ?? 0));
   }
-  const factor = pool.product([...common].map(([base, exponent]) => pool.power(base, pool.number(exponent))));
-  const entries = row.map((entry) => {
-    const cleared = quotientOf(pool, pool.product(factor, entry), TERM_LIMIT);
-    if (cleared === null || cleared.denominator.size > 0) throw new TooManyTerms();
-    return cleared.numerator;
-  });
-  return { entries, factor };
+  const sums = pool.product([...common].map(([base, exponent]) => pool.power(base, pool.number(exponent))));
+  const scaled = row.map((entry) => quotients.of(pool.product(sums, entry)));
+  if (scaled.some(({ denominator }) => denominator.size > 0)) throw new TooManyTerms();
+  const numerators = scaled.map(({ numerator }) => numerator);
+  const inverse = pool.power(clearingMonomial(pool, ...numerators), pool.number(-1));
+  return {
+    entries: numerators.map((numerator) => shiftPolynomial(pool, numerator, inverse)),
+    factor: pool.product(sums, inverse),
+  };
 }
 
 function simplestPivot(
