@@ -1,8 +1,18 @@
-import type { DiagramModel } from "./diagram-model.ts";
-import { LETTERING, type Point } from "./drawing.ts";
+import type { DiagramModel, DiagramNode } from "./diagram-model.ts";
+import { LETTERING } from "./drawing.ts";
 import { joinsDomains } from "./drawing-domains.ts";
-import { findSpine, type Hanging, type Link, type Spine } from "./drawing-spine.ts";
-import { type NamePlace, nameAbove, nameBelow, nodeReach, nodeWidth, symbolHalf } from "./drawing-symbols.ts";
+import { GAP, type Member, REACH, SHORTEST_BOND, twoRows } from "./drawing-rows.ts";
+import { findSpine, type Hanging, isJunction, type Link, type Spine } from "./drawing-spine.ts";
+import {
+  type NamePlace,
+  nameAbove,
+  nameBelow,
+  nodeReach,
+  nodeWidth,
+  symbolHalf,
+  writtenHeight,
+  writtenWidth,
+} from "./drawing-symbols.ts";
 
 /**
  * Each node of the spine with what hangs on it, as one block that the layout moves as a whole: a source before it, a
@@ -23,21 +33,11 @@ export interface Extent {
   readonly down: number;
 }
 
-export interface Member {
-  readonly node: number;
-  readonly at: Point;
-  readonly name: NamePlace;
-}
-
 export interface Arrangement {
   readonly blocks: readonly Block[];
   readonly links: readonly Link[];
 }
 
-/** From a hub's middle to the middle of what hangs on it. */
-const REACH = 56;
-/** Between what stands side by side; half of it is kept clear around a block. */
-const GAP = 12;
 /** Between bonds that leave a hub on one side. */
 export const LANE = 14;
 /** Of a domain's name, what does not fit between two blocks anyway. */
@@ -63,12 +63,6 @@ export function arrange(model: DiagramModel): Arrangement {
   return { blocks, links: spine.links };
 }
 
-interface Item {
-  readonly width: number;
-  /** Puts the item with its middle at `at`, on the side `up` (−1) or down (+1). */
-  readonly place: (at: Point, side: -1 | 1) => Member[];
-}
-
 function arrangeHub(
   model: DiagramModel,
   spine: Spine,
@@ -77,38 +71,47 @@ function arrangeHub(
   lanesAfter: number,
 ): Member[] {
   const node = model.nodes[hub];
-  const half = symbolHalf(node);
-  const members: Member[] = [];
   const leaves = [...spine.leaves[hub]];
   const source = ({ node: leaf }: Hanging) => /S[ef]/.test(model.nodes[leaf].kind);
-  const few = node.kind !== "0" && node.kind !== "1";
+  const few = !isJunction(node);
+  const take = (leaf: Hanging | undefined) =>
+    leaf === undefined ? [] : leaves.splice(leaves.indexOf(leaf), 1);
 
-  /** A leaf in line with the spine, on a side where no bond of the spine leaves. */
-  const inLine = (leaf: Hanging, side: -1 | 1) => {
-    leaves.splice(leaves.indexOf(leaf), 1);
-    const reach = Math.max(REACH, half.x + 18 + nodeWidth(model.nodes[leaf.node]) / 2);
-    members.push({ node: leaf.node, at: { x: side * reach, y: 0 }, name: nameBelow(model.nodes[leaf.node]) });
-  };
-  if (lanesBefore === 0) {
-    const first = leaves.find(source) ?? (few || leaves.length > 3 ? leaves[0] : undefined);
-    if (first !== undefined) inLine(first, -1);
-  }
-  if (lanesAfter === 0) {
-    const alone = few || leaves.length === 1 || leaves.length > 2;
-    const last = leaves.find(source) ?? (alone ? leaves[0] : undefined);
-    if (last !== undefined) inLine(last, 1);
-  }
-
-  const rows = { up: [] as Item[], down: [] as Item[] };
-  for (const item of spine.hanging[hub].map((h) => hangingItem(model, spine, h)))
-    narrower(rows, item, "down").push(item);
-  for (const item of leaves.map((leaf) => leafItem(model, leaf))) narrower(rows, item, "up").push(item);
+  // In line with the spine, on a side where no bond of the spine leaves.
+  const all = leaves.length;
+  const first = lanesBefore > 0 ? [] : take(leaves.find(source) ?? (few || all > 3 ? leaves[0] : undefined));
+  const alone = few || leaves.length === 1 || leaves.length > 2;
+  const last = lanesAfter > 0 ? [] : take(leaves.find(source) ?? (alone ? leaves[0] : undefined));
 
   const lift = liftOf(lanesBefore, lanesAfter);
-  const up = placeRow(rows.up, -1, lift);
-  const down = placeRow(rows.down, 1, lift);
-  const name = hubName(model, hub, up, down, lift);
-  return [{ node: hub, at: { x: 0, y: 0 }, name }, ...members, ...up, ...down];
+  const { up, down } = twoRows(model, spine, spine.hanging[hub], leaves, lift + 48);
+  const name = hubName(node, up, down, lift);
+  const inLine = (side: -1 | 1) => (leaf: Hanging) => besideHub(model, leaf, node, name, side);
+  return [
+    { node: hub, at: { x: 0, y: 0 }, name },
+    ...first.map(inLine(-1)),
+    ...last.map(inLine(1)),
+    ...up,
+    ...down,
+  ];
+}
+
+/** As near as its bond needs, and as what is written under both allows. */
+function besideHub(
+  model: DiagramModel,
+  { node }: Hanging,
+  hub: DiagramNode,
+  name: NamePlace,
+  side: -1 | 1,
+): Member {
+  const leaf = model.nodes[node];
+  const under = name.anchor === "middle" && name.at.y > 0 ? writtenWidth(hub) / 2 : symbolHalf(hub).x;
+  const reach = Math.max(
+    REACH,
+    symbolHalf(hub).x + SHORTEST_BOND + symbolHalf(leaf).x,
+    under + GAP + writtenWidth(leaf) / 2,
+  );
+  return { node, at: { x: side * reach, y: 0 }, name: nameBelow(leaf) };
 }
 
 /** How far the outermost lane is from the hub's level. */
@@ -116,87 +119,20 @@ function liftOf(lanesBefore: number, lanesAfter: number): number {
   return (Math.max(lanesBefore, lanesAfter, 1) - 1) * (LANE / 2);
 }
 
-function narrower(rows: { up: Item[]; down: Item[] }, item: Item, preferred: "up" | "down"): Item[] {
-  const other = preferred === "up" ? "down" : "up";
-  return rowWidth(rows[other]) < rowWidth(rows[preferred]) - (rows[preferred].length === 0 ? item.width : 0)
-    ? rows[other]
-    : rows[preferred];
-}
-
-function rowWidth(row: readonly Item[]): number {
-  return row.reduce((sum, { width }) => sum + width + GAP, 0);
-}
-
-/** A row is set farther off the longer it is, so that no bond to its end runs through its middle. */
-function placeRow(row: readonly Item[], side: -1 | 1, lift: number): Member[] {
-  const y = side * Math.max(REACH, 12 * row.length + 26, lift + 48);
-  const width = rowWidth(row) - GAP;
-  let x = -width / 2;
-  const members: Member[] = [];
-  for (const item of row) {
-    members.push(...item.place({ x: x + item.width / 2, y }, side));
-    x += item.width + GAP;
-  }
-  return members;
-}
-
-function leafItem(model: DiagramModel, { node }: Hanging): Item {
-  const own = model.nodes[node];
-  const place = (at: Point, side: -1 | 1): Member[] => [
-    { node, at, name: side < 0 ? nameAbove(own) : nameBelow(own) },
-  ];
-  return { width: nodeWidth(own), place };
-}
-
-/** A junction off the spine: its one-ports left, right and beyond it; a single one beyond. */
-function hangingItem(model: DiagramModel, spine: Spine, { node }: Hanging): Item {
-  const own = model.nodes[node];
-  const leaves = spine.leaves[node].map((leaf) => model.nodes[leaf.node]);
-  const indices = spine.leaves[node].map((leaf) => leaf.node);
-  const [left, right, beyond] = leaves.length === 1 ? [-1, -1, 0] : [0, 1, leaves.length > 2 ? 2 : -1];
-  const reach = (leaf: number) => Math.max(REACH, symbolHalf(own).x + 18 + nodeWidth(leaves[leaf]) / 2);
-  const sideways = (leaf: number) =>
-    leaf === -1 ? nodeWidth(own) / 2 : reach(leaf) + nodeWidth(leaves[leaf]) / 2;
-  const half = Math.max(sideways(left), sideways(right), nodeWidth(own) + 12);
-  const place = (at: Point, side: -1 | 1): Member[] => {
-    // Beside the bond it hangs on, where the names of its one-ports do not reach.
-    const aside = { x: 12, y: side < 0 ? 13 + 0.75 * LETTERING.name.size : -14 };
-    const members: Member[] = [{ node, at, name: { at: aside, anchor: "start" } }];
-    const beside = (leaf: number, x: number, y: number) => {
-      if (leaf === -1) return;
-      const name = side < 0 && y !== 0 ? nameAbove(leaves[leaf]) : nameBelow(leaves[leaf]);
-      members.push({ node: indices[leaf], at: { x: at.x + x, y: at.y + y }, name });
-    };
-    beside(left, left === -1 ? 0 : -reach(left), 0);
-    beside(right, right === -1 ? 0 : reach(right), 0);
-    beside(beyond, 0, side * REACH);
-    return members;
-  };
-  return { width: 2 * half, place };
-}
-
 /** Over the hub or under it where no row is; else beside the bond to the row that leaves more room. */
-function hubName(
-  model: DiagramModel,
-  hub: number,
-  up: readonly Member[],
-  down: readonly Member[],
-  lift: number,
-): NamePlace {
-  const node = model.nodes[hub];
-  const raised = ({ at, anchor }: NamePlace, by: number): NamePlace => ({
-    at: { x: at.x, y: at.y + by },
+function hubName(node: DiagramNode, up: readonly Member[], down: readonly Member[], lift: number): NamePlace {
+  const raised = ({ at: { x, y }, anchor }: NamePlace, by: number): NamePlace => ({
+    at: { x, y: y + by },
     anchor,
   });
-  if (down.length === 0 && (up.length > 0 || (node.kind !== "0" && node.kind !== "1")))
-    return raised(nameBelow(node), lift);
+  if (down.length === 0 && (up.length > 0 || !isJunction(node))) return raised(nameBelow(node), lift);
   if (up.length === 0) return raised(nameAbove(node), -lift);
-  if (down.length === 0) return raised(nameBelow(node), lift);
   const flattest = (row: readonly Member[]) => Math.max(0, ...row.map(({ at }) => at.x / Math.abs(at.y)));
   const above = flattest(up) <= flattest(down);
-  const baseline = above ? -(12 + lift) : 12 + lift + 0.75 * LETTERING.name.size;
-  const height = 12 + lift + LETTERING.name.size;
-  return { at: { x: 11 + height * (above ? flattest(up) : flattest(down)), y: baseline }, anchor: "start" };
+  const baseline = 12 + lift + (above ? 0 : 0.75 * LETTERING.name.size);
+  const height = 12 + lift + writtenHeight(node);
+  const x = 11 + height * (above ? flattest(up) : flattest(down));
+  return { at: { x, y: above ? -baseline : baseline }, anchor: "start" };
 }
 
 function extentOf(model: DiagramModel, members: readonly Member[], lift: number, joins: boolean): Extent {
@@ -208,7 +144,7 @@ function extentOf(model: DiagramModel, members: readonly Member[], lift: number,
     const own = model.nodes[node];
     const half = nodeWidth(own) / 2;
     const [before, after] =
-      name.anchor === "start" ? [symbolHalf(own).x, name.at.x + 2 * half] : [half, half];
+      name.anchor === "start" ? [symbolHalf(own).x, name.at.x + writtenWidth(own)] : [half, half];
     extent.left = Math.max(extent.left, before - at.x);
     extent.right = Math.max(extent.right, after + at.x);
     const symbol = symbolHalf(own).y;

@@ -1,9 +1,10 @@
 import type { DiagramBond, DiagramModel, DiagramNode } from "./diagram-model.ts";
 import { around, type Box, boxOf, corners, type Drawing, type DrawnPart, type Point } from "./drawing.ts";
-import { type Arrangement, arrange, type Member } from "./drawing-arrange.ts";
+import { type Arrangement, arrange } from "./drawing-arrange.ts";
 import { bondShapes, direction, middleOf } from "./drawing-bonds.ts";
 import { domainChanges } from "./drawing-domains.ts";
 import type { LayoutAnswer } from "./drawing-layout.ts";
+import type { Member } from "./drawing-rows.ts";
 import { nodeShapes, symbolHalf, word } from "./drawing-symbols.ts";
 
 /** Clear space between a symbol and the bonds that end at it. */

@@ -1,4 +1,4 @@
-import type { DiagramModel } from "./diagram-model.ts";
+import type { DiagramModel, DiagramNode } from "./diagram-model.ts";
 
 /**
  * Which nodes carry the drawing and which hang on them. The *spine* is what power runs through: junctions, two-ports,
@@ -54,9 +54,11 @@ export function findSpine(model: DiagramModel): Spine {
     if (isLeaf[host]) continue;
     const neighbours = spineNeighbours(host);
     const candidates = neighbours.filter(({ node }) => {
-      const junction = nodes[node].kind === "0" || nodes[node].kind === "1";
       return (
-        junction && spineNeighbours(node).length === 1 && leaves[node].length >= 1 && leaves[node].length <= 3
+        isJunction(nodes[node]) &&
+        spineNeighbours(node).length === 1 &&
+        leaves[node].length >= 1 &&
+        leaves[node].length <= 3
       );
     });
     // The chain goes on through two neighbours; sources and inertias are where chains end.
@@ -139,4 +141,8 @@ function sweep(graph: Graph, inSpine: readonly boolean[], start: number): number
     }
   }
   return found;
+}
+
+export function isJunction({ kind }: DiagramNode): boolean {
+  return kind === "0" || kind === "1";
 }

@@ -30,21 +30,45 @@ export function word(node: DiagramNode): "conflict" | "dependent" | null {
   return node.conflict ? "conflict" : node.dependent ? "dependent" : null;
 }
 
-/** How wide a node is with what is written under it. */
-export function nodeWidth(node: DiagramNode): number {
+interface WrittenLine {
+  readonly text: string;
+  readonly lettering: "name" | "word";
+}
+
+/** Height of a line of what is written at a symbol. */
+export const LINE = 13;
+
+/** From top to bottom: the subs a node was reached through, its own name, and what its mark means, outermost. */
+function written(node: DiagramNode, above: boolean): WrittenLine[] {
+  const dot = node.id.lastIndexOf(".");
+  const names = dot === -1 ? [node.id] : [node.id.slice(0, dot + 1), node.id.slice(dot + 1)];
+  const lines: WrittenLine[] = names.map((text) => ({ text, lettering: "name" }));
   const marked = word(node);
-  const lines = [textWidth(node.id, "name"), marked === null ? 0 : textWidth(marked, "word")];
-  return Math.max(2 * symbolHalf(node).x, ...lines);
+  if (marked === null) return lines;
+  const mark: WrittenLine = { text: marked, lettering: "word" };
+  return above ? [mark, ...lines] : [...lines, mark];
+}
+
+/** How wide what is written at a node is. */
+export function writtenWidth(node: DiagramNode): number {
+  return Math.max(...written(node, false).map(({ text, lettering }) => textWidth(text, lettering)));
+}
+
+export function writtenHeight(node: DiagramNode): number {
+  return written(node, false).length * LINE;
+}
+
+/** How wide a node is with what is written above or below it. */
+export function nodeWidth(node: DiagramNode): number {
+  return Math.max(2 * symbolHalf(node).x, writtenWidth(node));
 }
 
 /** Height from the symbol's middle to the end of what is written above or below it. */
 export function nodeReach(node: DiagramNode): number {
-  return (
-    symbolHalf(node).y + 3 + LETTERING.name.size + (word(node) === null ? 0 : LETTERING.word.size + 2) + 2
-  );
+  return symbolHalf(node).y + 5 + writtenHeight(node);
 }
 
-/** Where the name stands, relative to the symbol's middle: the baseline's point. */
+/** Where the name stands, relative to the symbol's middle: a point of the baseline of the line nearest to it. */
 export interface NamePlace {
   readonly at: Point;
   readonly anchor: "start" | "middle" | "end";
@@ -64,19 +88,12 @@ export function nodeShapes(node: DiagramNode, centre: Point, name: NamePlace): S
   const marked = word(node);
   if (marked === "dependent") shapes.push(dependentFrame(node, centre));
   if (marked === "conflict") shapes.push(conflictFrame(node, centre));
-  const at = { x: centre.x + name.at.x, y: centre.y + name.at.y };
-  shapes.push({ kind: "text", lettering: "name", at, anchor: name.anchor, text: node.id, subscript: "" });
-  if (marked !== null) {
-    const line = LETTERING.word.size + 2;
-    const y = at.y + (name.at.y < 0 ? -line : line);
-    shapes.push({
-      kind: "text",
-      lettering: "word",
-      at: { x: at.x, y },
-      anchor: name.anchor,
-      text: marked,
-      subscript: "",
-    });
+  const above = name.at.y < 0;
+  const lines = written(node, above);
+  for (const [i, { text, lettering }] of lines.entries()) {
+    const down = above ? i - (lines.length - 1) : i;
+    const at = { x: centre.x + name.at.x, y: centre.y + name.at.y + down * LINE };
+    shapes.push({ kind: "text", lettering, at, anchor: name.anchor, text, subscript: "" });
   }
   return shapes;
 }
