@@ -128,12 +128,12 @@ export class OutlineReader {
   #close(end: number): void {
     const { head, line, body } = this.#blocks.pop() as Block;
     const into = (this.#blocks.at(-1) as Block).body;
-    if (line === null || this.#blocks.length > LIMITS.depth) return;
+    if (line === null) return;
     const opens = line.opens as IToken;
     const range = { start: (line.tokens[0] ?? opens).startOffset, end };
     const block = { start: opens.startOffset, end };
-    if (head === null || head.kind === "unreadable") {
-      const declares = head?.declares ?? null;
+    if (head === null || head.kind === "unreadable" || this.#blocks.length > LIMITS.depth) {
+      const declares = head?.kind === "unreadable" ? head.declares : null;
       into.push({ kind: "unreadable", range, declares, description: line.description, remark: null });
     } else {
       into.push({ ...head, range, block, body } as System | Trial | Repeat);

@@ -12,15 +12,28 @@ export function seeded(seed: number): () => number {
   };
 }
 
-/** Every model that the project keeps: what mutations start from. */
+/** Every text of the notation that the project keeps: what mutations start from. */
 export function knownTexts(): string[] {
-  return ["../cases/", "../../models-demo/"].flatMap((folder) => {
-    const root = fileURLToPath(new URL(folder, import.meta.url));
-    return readdirSync(root, { recursive: true, encoding: "utf8" })
-      .filter((name) => name.endsWith(".wright"))
-      .sort()
-      .map((name) => readFileSync(`${root}${name}`, "utf8"));
-  });
+  return [...textsIn("../cases/").values(), ...textsIn("../../models-demo/").values()];
+}
+
+/** The whole models among them, by the paths that they use each other by. */
+export function knownModels(): Map<string, string> {
+  const sets = ["boat-hoist", "davit-cylinder", "load-pin", "slewing-drive"];
+  const models = [
+    ...sets.map((set) => `../../models-demo/${set}/`),
+    "../cases/causality/",
+    "../cases/format/",
+  ];
+  return new Map(models.flatMap((folder) => [...textsIn(folder)]));
+}
+
+function textsIn(folder: string): Map<string, string> {
+  const root = fileURLToPath(new URL(folder, import.meta.url));
+  const names = readdirSync(root, { recursive: true, encoding: "utf8" }).filter((name) =>
+    name.endsWith(".wright"),
+  );
+  return new Map(names.sort().map((name) => [name, readFileSync(`${root}${name}`, "utf8")]));
 }
 
 const SCRAPS = [
@@ -63,15 +76,18 @@ const SCRAPS = [
 
 const TOKENS = /"[^"\n]*"|#[^\n]*|[\p{L}_][\p{L}\p{N}_]*|\d+(?:\.\d+)?(?:e[+-]?\d+)?|\s+|[-|<>=.]+|./gu;
 
-/** A text that is nearly notation: a stretch of a model with a few slips, or hardly any notation at all. */
-export function randomText(random: () => number, known: readonly string[]): string {
+/**
+ * A text that is nearly notation: a stretch of a model with a few slips, or hardly any notation at all.
+ * `wholes` is the share of whole models among them.
+ */
+export function randomText(random: () => number, known: readonly string[], wholes = 0.15): string {
   const pick = <T>(list: readonly T[]): T => list[Math.floor(random() * list.length)];
-  if (random() < 0.05) {
+  if (random() < 0.05 * (1 - wholes)) {
     return Array.from({ length: Math.floor(random() * 60) }, () =>
       pick(random() < 0.5 ? SCRAPS : ["param", "R", "x", "3", " "]),
     ).join("");
   }
-  let text = random() < 0.15 ? pick(known) : stretch(pick(known));
+  let text = random() < wholes ? pick(known) : stretch(pick(known));
   for (let slips = Math.floor(random() * 5); slips > 0; slips -= 1) text = slip(text);
   return text;
 
