@@ -1,16 +1,11 @@
 import type { Finding } from "../diagnostics/finding.ts";
 import { byName, compareNames, type FlatGraph, type FlatNode } from "../resolve/graph.ts";
 import { conflictFinding, singularFinding } from "./conflict.ts";
-import {
-  fixedSteps,
-  type ResistorSite,
-  resistorSites,
-  type StoreSite,
-  storeSites,
-  turning,
-} from "./elements.ts";
-import { type Clash, opposite, Propagation, type Step } from "./propagation.ts";
-import type { CausalGraph, Reason, Stroke } from "./strokes.ts";
+import { fixedSteps, type StoreSite, storeSites } from "./elements.ts";
+import { type Clash, Propagation } from "./propagation.ts";
+import { searchStrokes } from "./search.ts";
+import type { CausalGraph } from "./strokes.ts";
+import { granted, reversed, wishes } from "./wishes.ts";
 
 /**
  * Sequential assignment of causal strokes (the procedure of Karnopp, Margolis, Rosenberg: System Dynamics): what
@@ -19,147 +14,75 @@ import type { CausalGraph, Reason, Stroke } from "./strokes.ts";
  * matter. Linear in the number of bonds beside sorting.
  */
 export function assignCausality(graph: FlatGraph): { causal: CausalGraph; findings: Finding[] } {
-  const plain = new Assignment(graph, false);
-  if (plain.clean) return plain.result();
-  // Where conflicts meet depends on the order in which junctions list their bonds, so it is made canonical; and a
-  // dead end that came from leaving junctions open is met again with each junction settled as soon as it is touched.
-  const careful = new Assignment(inNaturalOrder(graph), true);
-  const { causal, findings } = careful.result();
-  return { causal: { ...causal, graph }, findings };
+  const nodes = [...graph.nodes].sort(byName);
+  const stores = storeSites(nodes);
+
+  const propagation = new Propagation(graph);
+  if (settleFixed(graph, nodes, propagation).length === 0) {
+    const chosen = grant(graph, nodes, stores, propagation);
+    if (chosen !== null) return { causal: causalGraph(graph, propagation, stores, chosen), findings: [] };
+  }
+
+  // Where contradictions meet depends on the order in which junctions list their bonds, so that is made canonical.
+  const ordered = inNaturalOrder(graph);
+  const careful = new Propagation(ordered);
+  const clashes = settleFixed(ordered, nodes, careful);
+  if (clashes.length > 0) {
+    // What contradicts itself after a conflict is not worth a finding: one mistake, one finding.
+    const chosen = grant(ordered, nodes, stores, careful) ?? [];
+    const causal = causalGraph(graph, careful, stores, chosen);
+    return { causal, findings: clashes.map((clash) => conflictFinding(causal, clash)) };
+  }
+  const found = searchStrokes(ordered, careful, [...wishes(graph, nodes, stores, () => true)]);
+  const causal = causalGraph(graph, careful, stores, "chosen" in found ? found.chosen : []);
+  const findings = "clashes" in found ? [singularFinding(causal, found.bond, ...found.clashes)] : [];
+  return { causal, findings };
+}
+
+function settleFixed(graph: FlatGraph, nodes: readonly FlatNode[], propagation: Propagation): Clash[] {
+  return fixedSteps(graph, nodes).flatMap((step) => propagation.settle(step));
+}
+
+/** Grants one wish after the other. The bonds that were chosen, or null where one can't have either stroke. */
+function grant(
+  graph: FlatGraph,
+  nodes: readonly FlatNode[],
+  stores: readonly StoreSite[],
+  propagation: Propagation,
+): number[] | null {
+  const isOpen = (bond: number) => propagation.strokes[bond] === null;
+  const chosen: number[] = [];
+  let stuck = false;
+  for (const wish of wishes(graph, nodes, stores, isOpen)) {
+    if (!isOpen(wish.bond)) continue;
+    const refusal = propagation.attempt(granted(wish));
+    if (refusal !== null) stuck = propagation.attempt(reversed(wish, refusal.premises)) !== null || stuck;
+    else if (wish.rule !== "integral-store") chosen.push(wish.bond);
+  }
+  return stuck ? null : chosen;
 }
 
 function inNaturalOrder(graph: FlatGraph): FlatGraph {
+  const byBond = (a: { bond: number }, b: { bond: number }) =>
+    compareNames(graph.bonds[a.bond].id, graph.bonds[b.bond].id);
   const nodes = graph.nodes.map((node) =>
-    node.kind === "0" || node.kind === "1"
-      ? {
-          ...node,
-          ports: [...node.ports].sort((a, b) => compareNames(graph.bonds[a.bond].id, graph.bonds[b.bond].id)),
-        }
-      : node,
+    node.kind === "0" || node.kind === "1" ? { ...node, ports: [...node.ports].sort(byBond) } : node,
   );
   return { ...graph, nodes };
 }
 
-class Assignment {
-  readonly #graph: FlatGraph;
-  readonly #eager: boolean;
-  readonly #propagation: Propagation;
-  readonly #chosen: number[] = [];
-  readonly #clashes: Clash[] = [];
-  readonly #deadEnds: { readonly bond: number; readonly first: Clash; readonly second: Clash }[] = [];
-  readonly #stores: readonly StoreSite[];
-
-  /** `eager`: a junction at which a choice was made is settled at once, instead of after all other choices. */
-  constructor(graph: FlatGraph, eager: boolean) {
-    this.#graph = graph;
-    this.#eager = eager;
-    this.#propagation = new Propagation(graph);
-    const nodes = [...graph.nodes].sort(byName);
-    this.#stores = storeSites(nodes);
-    for (const step of fixedSteps(graph, nodes)) this.#clashes.push(...this.#propagation.settle(step));
-    this.#integrate();
-    this.#chooseResistors(resistorSites(nodes));
-    this.#openPorts(nodes);
-    this.#chooseBonds();
-  }
-
-  get clean(): boolean {
-    return this.#clashes.length === 0 && this.#deadEnds.length === 0;
-  }
-
-  result(): { causal: CausalGraph; findings: Finding[] } {
-    const { strokes, reasons } = this.#propagation;
-    const stores = this.#stores.map(({ node, port, variable, name, integral }) => ({
-      node: node.index,
-      port,
-      variable,
-      name,
-      integral: strokes[node.ports[port].bond] === integral,
-    }));
-    const causal = { graph: this.#graph, strokes, reasons, stores, chosen: this.#chosen };
-    const findings = this.#clashes.map((clash) => conflictFinding(causal, clash));
-    if (findings.length === 0) {
-      findings.push(
-        ...this.#deadEnds
-          .slice(0, 1)
-          .map(({ bond, first, second }) => singularFinding(causal, bond, first, second)),
-      );
-    }
-    return { causal, findings };
-  }
-
-  #integrate(): void {
-    for (const { node, port, integral } of this.#stores) {
-      this.#choose(node, node.ports[port].bond, integral, "integral-store", "derivative-store");
-    }
-  }
-
-  #chooseResistors(sites: readonly ResistorSite[]): void {
-    const free = sites.filter((site) => this.#isOpen(site.node.ports[site.port].bond));
-    const turns = turning(this.#graph);
-    const stubborn = new Set(free.filter((site) => !turns(site)));
-    const inTurn = [...stubborn, ...free.filter((site) => !stubborn.has(site))];
-    for (const site of inTurn) {
-      const rule = stubborn.has(site) ? "law-not-invertible" : "chosen-resistor";
-      this.#choose(site.node, site.node.ports[site.port].bond, site.written, rule, "excluded");
-    }
-  }
-
-  /** The world outside an open port is taken to give the flow; where it can't, the effort. */
-  #openPorts(nodes: readonly FlatNode[]): void {
-    for (const node of nodes) {
-      const [port] = node.ports;
-      if (node.kind === "port" && port !== undefined)
-        this.#choose(node, port.bond, port.end, "open-port", "excluded");
-    }
-  }
-
-  #chooseBonds(): void {
-    const open = this.#graph.bonds.filter(({ index }) => this.#isOpen(index));
-    open.sort((a, b) => compareNames(a.id, b.id));
-    for (const { index, from } of open) {
-      this.#choose(this.#graph.nodes[from], index, "to", "chosen-bond", "excluded");
-    }
-  }
-
-  #isOpen(bond: number): boolean {
-    return this.#propagation.strokes[bond] === null;
-  }
-
-  /** Sets a wished stroke; where that contradicts what already stands, the opposite is forced by the same premises. */
-  #choose(
-    node: FlatNode,
-    bond: number,
-    wished: Stroke,
-    rule: Reason["rule"],
-    otherwise: Reason["rule"],
-  ): void {
-    if (!this.#isOpen(bond)) return;
-    const step: Step = { bond, stroke: wished, reason: { rule, node: node.index, premises: [] } };
-    const refused = this.#propagation.attempt(step);
-    if (refused === null) {
-      if (rule !== "integral-store") this.#chosen.push(bond);
-    } else {
-      const reason: Reason = { rule: otherwise, node: node.index, premises: refused.premises };
-      const again = this.#propagation.attempt({ bond, stroke: opposite(wished), reason });
-      if (again !== null) {
-        this.#deadEnds.push({ bond, first: refused.clash, second: again.clash });
-        return;
-      }
-    }
-    if (this.#eager) this.#settleNeighbours(bond);
-  }
-
-  /** One more choice at each junction that the bond touches and that is still open, by the names of its bonds. */
-  #settleNeighbours(bond: number): void {
-    const { from, to } = this.#graph.bonds[bond];
-    for (const index of [from, to]) {
-      const node = this.#graph.nodes[index];
-      if (node.kind !== "0" && node.kind !== "1") continue;
-      for (const port of node.ports) {
-        const brings = node.kind === "0" ? port.end : opposite(port.end);
-        if (this.#isOpen(port.bond)) this.#choose(node, port.bond, brings, "chosen-bond", "excluded");
-      }
-    }
-  }
+function causalGraph(
+  graph: FlatGraph,
+  { strokes, reasons }: Propagation,
+  sites: readonly StoreSite[],
+  chosen: readonly number[],
+): CausalGraph {
+  const stores = sites.map(({ node, port, variable, name, integral }) => ({
+    node: node.index,
+    port,
+    variable,
+    name,
+    integral: strokes[node.ports[port].bond] === integral,
+  }));
+  return { graph, strokes, reasons, stores, chosen };
 }

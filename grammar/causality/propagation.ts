@@ -15,6 +15,12 @@ export interface Clash {
   readonly refused: Step;
 }
 
+/** Why a step could not be taken, and the bonds set before it that this rests on. */
+export interface Refusal {
+  readonly clash: Clash;
+  readonly premises: readonly number[];
+}
+
 export function opposite(stroke: Stroke): Stroke {
   return stroke === "from" ? "to" : "from";
 }
@@ -56,8 +62,8 @@ export class Propagation {
   }
 
   /** As `settle`, but a contradiction takes back everything that the step brought about, and is returned. */
-  attempt(step: Step): { readonly clash: Clash; readonly premises: readonly number[] } | null {
-    const mark = this.#trail.length;
+  attempt(step: Step): Refusal | null {
+    const mark = this.mark;
     let met: Clash | null = null;
     this.#follow(step, (clash) => {
       met = clash;
@@ -65,8 +71,25 @@ export class Propagation {
     });
     if (met === null) return null;
     const premises = this.#premisesBefore(mark, met);
-    this.#undo(mark);
+    this.undo(mark);
     return { clash: met, premises };
+  }
+
+  /** A point to which `undo` takes back what was set later. */
+  get mark(): number {
+    return this.#trail.length;
+  }
+
+  undo(mark: number): void {
+    while (this.#trail.length > mark) {
+      const bond = this.#trail.pop() as number;
+      const { from, to } = this.#graph.bonds[bond];
+      const stroke = this.strokes[bond];
+      this.#leave(this.#graph.nodes[from], bond, stroke === "from");
+      this.#leave(this.#graph.nodes[to], bond, stroke === "to");
+      this.strokes[bond] = null;
+      this.reasons[bond] = null;
+    }
   }
 
   #follow(step: Step, onClash: (clash: Clash) => boolean): void {
@@ -145,18 +168,6 @@ export class Propagation {
       else found.add(bond);
     }
     return [...found];
-  }
-
-  #undo(mark: number): void {
-    while (this.#trail.length > mark) {
-      const bond = this.#trail.pop() as number;
-      const { from, to } = this.#graph.bonds[bond];
-      const stroke = this.strokes[bond];
-      this.#leave(this.#graph.nodes[from], bond, stroke === "from");
-      this.#leave(this.#graph.nodes[to], bond, stroke === "to");
-      this.strokes[bond] = null;
-      this.reasons[bond] = null;
-    }
   }
 
   #leave(node: FlatNode, bond: number, here: boolean): void {
