@@ -18,18 +18,19 @@ import type {
   Formula,
   LoopView,
   ModelView,
+  Place,
   StateView,
   TermView,
   Variables,
 } from "./view-model.ts";
 
-type LineOf = (span: Span) => number | null;
+type PlaceOf = (span: Span) => Place;
 
 export function modelView(
   graph: FlatGraph,
   derived: StateModel,
   variables: Variables,
-  lineOf: LineOf,
+  placeOf: PlaceOf,
 ): ModelView {
   const model = variables === "co-energy" ? inCoEnergy(derived) : derived;
   return {
@@ -41,7 +42,7 @@ export function modelView(
         unit: state.unit.text,
         start: shownIn(state.start, state.unit),
         kind: state.kind,
-        line: lineOf(state.span),
+        place: placeOf(state.span),
         nodes: state.node === null ? [] : [graph.nodes[state.node].name],
         bonds: state.bond === null ? [] : [graph.bonds[state.bond].id],
         values: [],
@@ -57,7 +58,7 @@ export function modelView(
         of: store.of,
         equation: equation(graph, model, store.name, store.value, written(store.symbol)),
         unit: store.unit.text,
-        line: lineOf(store.span),
+        place: placeOf(store.span),
         nodes: [graph.nodes[store.node].name],
         bonds: [graph.bonds[store.bond].id],
         values: [],

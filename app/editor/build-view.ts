@@ -5,13 +5,14 @@ import type { FileSet } from "../../grammar/source/text.ts";
 import { diagramModel } from "../../grammar/writing/diagram-model.ts";
 import { modelView } from "./build-model-view.ts";
 import { outlineOf } from "./outline.ts";
-import { lineOf, placeOf } from "./place.ts";
+import { placeOf } from "./place.ts";
 import { shownIn } from "./shown-number.ts";
 import { tiedLines } from "./tied-lines.ts";
 import type {
   ExpectationView,
   FileView,
   FindingView,
+  Place,
   SystemView,
   ValueView,
   Variables,
@@ -42,11 +43,11 @@ function systemView(
   variables: Variables,
 ): SystemView {
   const { graph, causal, model } = system;
-  const line = (span: Span) => (span.file === report.path ? lineOf(span, files) : null);
+  const placed = (span: Span) => placeOf(span, files);
   return {
     name: system.system,
     description: graph?.description ?? null,
-    model: graph === null || model === null ? null : modelView(graph, model, variables, line),
+    model: graph === null || model === null ? null : modelView(graph, model, variables, placed),
     diagram: graph === null ? null : diagramModel(graph, causal, model, system.findings),
     parameters: (graph?.parameters ?? []).map((parameter): ValueView => {
       const { range, unit } = parameter;
@@ -56,7 +57,7 @@ function systemView(
         unit: unit.text,
         range: range === null ? null : `${shownIn(range.low, unit)} .. ${shownIn(range.high, unit)}`,
         description: parameter.description,
-        line: line(parameter.span),
+        place: placed(parameter.span),
         nodes: [],
         bonds: [],
         values: [parameter.name],
@@ -69,33 +70,32 @@ function systemView(
         unit: input.unit.text,
         range: null,
         description: input.description,
-        line: line(input.span),
+        place: placed(input.span),
         nodes: [],
         bonds: [],
         values: [input.name],
       };
     }),
-    expectations: expectations(system, line),
+    expectations: expectations(system, placed),
     tied: graph === null ? [] : tiedLines(graph, report.tree, system.system, files),
   };
 }
 
 /** Every `expect` of the text appears: what the core stopped before judging is said to be so, never left out. */
-function expectations(system: SystemReport, line: (span: Span) => number | null): ExpectationView[] {
+function expectations(system: SystemReport, placed: (span: Span) => Place): ExpectationView[] {
   const judged = system.expectations.map(
-    (result): ExpectationView => ({
+    (result): Omit<ExpectationView, "place"> => ({
       text: result.text,
       verdict: result.passed ? "passed" : "failed",
       measured: result.measured,
       wanted: result.wanted,
       message: result.message,
-      line: null,
     }),
   );
   return (system.graph?.expectations ?? []).map(({ text, span }, index): ExpectationView => {
     const result = judged[index]?.text === text ? judged[index] : judged.find((one) => one.text === text);
     const notJudged = { text, verdict: "not judged" as const, measured: null, wanted: "", message: null };
-    return { ...(result ?? notJudged), line: line(span) };
+    return { ...(result ?? notJudged), place: placed(span) };
   });
 }
 

@@ -81,10 +81,10 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite }
     void navigate(`${base}/edit/${fresh}`);
     return null;
   };
-  const { light, show, linesOf } = lighting;
+  const { light, term, show, linesOf } = lighting;
   const context = useMemo(
-    () => ({ light, show, linesOf, open: (line: number) => goTo({ file: path, line, column: 1 }) }),
-    [light, show, linesOf, goTo, path],
+    () => ({ light, term, show, linesOf, path, open: goTo }),
+    [light, term, show, linesOf, goTo, path],
   );
 
   if (saving.behind !== null) {

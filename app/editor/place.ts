@@ -14,7 +14,3 @@ export function placeOf(span: Span, files: FileSet): Place {
     endColumn: end.column,
   };
 }
-
-export function lineOf(span: Span, files: FileSet): number {
-  return files.get(span.file)?.position(span.start).line ?? 1;
-}

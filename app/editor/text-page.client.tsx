@@ -237,7 +237,7 @@ function markers(
     {
       ...rangeOf(place),
       severity: monaco.MarkerSeverity[SEVERITY[severity]],
-      message: `${message}${reasons}`,
+      message: `${message}${reasons}`.replaceAll("`", ""),
       source: `${severity} ${name}`,
     },
   ];

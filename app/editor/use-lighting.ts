@@ -9,6 +9,7 @@ import {
   shares,
   type TiedLine,
 } from "./light.ts";
+import type { TermKey } from "./right-page/lighting.ts";
 
 const NO_LINES: readonly number[] = [];
 
@@ -16,6 +17,7 @@ const NO_LINES: readonly number[] = [];
 export function useLighting(tied: readonly TiedLine[]) {
   const [cursor, setCursor] = useState<number | null>(null);
   const [pointed, setPointed] = useState<Light | null>(null);
+  const [term, setTerm] = useState<TermKey | null>(null);
   const redrawFold = useRef<() => void>(() => {});
 
   const wanted = pointed ?? (cursor === null ? DARK : lightOfLine(tied, cursor));
@@ -23,11 +25,15 @@ export function useLighting(tied: readonly TiedLine[]) {
   if (!sameLight(kept.current, wanted)) kept.current = wanted;
   const light = kept.current;
 
-  const show = useCallback((next: Light | null) => setPointed(next), []);
+  const show = useCallback((next: Light | null, key?: TermKey) => {
+    setPointed(next);
+    setTerm(key ?? null);
+  }, []);
   const pointAtLine = useCallback(
     (line: number | null) => {
       const next = line === null ? DARK : lightOfLine(tied, line);
       setPointed(isDark(next) ? null : next);
+      setTerm(null);
     },
     [tied],
   );
@@ -39,5 +45,5 @@ export function useLighting(tied: readonly TiedLine[]) {
   const tiedLines = useMemo(() => (tied.length === 0 ? NO_LINES : tied.map(({ line }) => line)), [tied]);
   const lit = useMemo(() => litLines(tied, light), [tied, light]);
 
-  return { light, litLines: lit, tiedLines, linesOf, show, pointAtLine, setCursor, redraw, redrawFold };
+  return { light, term, litLines: lit, tiedLines, linesOf, show, pointAtLine, setCursor, redraw, redrawFold };
 }

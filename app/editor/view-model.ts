@@ -52,7 +52,7 @@ export interface StateView extends Light {
   readonly unit: string;
   readonly start: string;
   readonly kind: "p" | "q" | "tracked";
-  readonly line: number | null;
+  readonly place: Place;
 }
 
 export interface EquationView extends Light {
@@ -75,7 +75,7 @@ export interface DependentView extends Light {
   readonly of: readonly string[];
   readonly equation: EquationView;
   readonly unit: string;
-  readonly line: number | null;
+  readonly place: Place;
 }
 
 export interface LoopView extends Light {
@@ -97,7 +97,7 @@ export interface ValueView extends Light {
   readonly unit: string;
   readonly range: string | null;
   readonly description: string | null;
-  readonly line: number | null;
+  readonly place: Place;
 }
 
 export interface ExpectationView {
@@ -106,7 +106,7 @@ export interface ExpectationView {
   readonly measured: string | null;
   readonly wanted: string;
   readonly message: string | null;
-  readonly line: number | null;
+  readonly place: Place;
 }
 
 export interface Place {

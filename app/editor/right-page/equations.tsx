@@ -1,7 +1,7 @@
-import { useState } from "react";
+import { useContext, useState } from "react";
 import type { EquationView, LoopView, ModelView, TermView, Variables } from "../view-model.ts";
 import { Typeset } from "./formula.tsx";
-import { useLit } from "./lighting.ts";
+import { LightingContext, useLit, useLitEquation, useLitTerm } from "./lighting.ts";
 import { Section } from "./section.tsx";
 
 interface EquationsProps {
@@ -79,14 +79,10 @@ function Copy({ what, of }: { what: string; of: readonly string[] }) {
 
 /** One equation; it wraps between its terms, and each term can be pointed at and reached by keyboard. */
 export function Equation({ equation, unit }: { equation: EquationView; unit?: string }) {
-  const { lit } = useLit(equation);
+  const key = equation.left.text;
+  const lit = useLitEquation(key, equation);
   return (
-    <li
-      className="equation"
-      data-tied=""
-      data-lit={lit}
-      data-text={`${equation.left.text} = ${equation.text}`}
-    >
+    <li className="equation" data-tied="" data-lit={lit} data-text={`${key} = ${equation.text}`}>
       <span className="left">
         <Typeset formula={equation.left} />
         <span className="sign" aria-hidden="true">
@@ -97,7 +93,7 @@ export function Equation({ equation, unit }: { equation: EquationView; unit?: st
       <span className="right">
         {equation.terms.map((term, index) => (
           // biome-ignore lint/suspicious/noArrayIndexKey: the terms of one equation have no other identity
-          <Term key={index} term={term} first={index === 0} />
+          <Term key={index} equation={key} index={index} term={term} />
         ))}
         {unit !== undefined && <span className="unit">shown in {unit}</span>}
       </span>
@@ -105,10 +101,11 @@ export function Equation({ equation, unit }: { equation: EquationView; unit?: st
   );
 }
 
-function Term({ term, first }: { term: TermView; first: boolean }) {
-  const { lit, lighting, handlers } = useLit(term);
-  const lines = lighting.linesOf(term);
-  const sign = term.sign === "-" ? "−" : first ? "" : "+";
+function Term({ equation, index, term }: { equation: string; index: number; term: TermView }) {
+  const { path, open, linesOf } = useContext(LightingContext);
+  const { lit, handlers } = useLitTerm({ equation, index }, term);
+  const lines = linesOf(term);
+  const sign = term.sign === "-" ? "−" : index === 0 ? "" : "+";
   const from = lines.length === 0 ? "" : `, from line${lines.length > 1 ? "s" : ""} ${lines.join(", ")}`;
   return (
     <button
@@ -117,7 +114,7 @@ function Term({ term, first }: { term: TermView; first: boolean }) {
       data-term={`${term.sign}${term.formula.text}`}
       data-lit={lit}
       aria-label={`${sign} ${term.formula.text}${from}`}
-      onClick={() => lines.length > 0 && lighting.open(lines[0])}
+      onClick={() => lines.length > 0 && open({ file: path, line: lines[0], column: 1 })}
       {...handlers}
     >
       {sign !== "" && <span className="sign">{sign}</span>}

@@ -1,5 +1,5 @@
 import { useContext } from "react";
-import type { FindingView } from "../view-model.ts";
+import type { FindingView, Place } from "../view-model.ts";
 import { LightingContext } from "./lighting.ts";
 import { Section } from "./section.tsx";
 
@@ -32,13 +32,14 @@ export function Findings({ path, findings, mayFix, onFix, onOpen }: FindingsProp
                     <span aria-hidden="true">{SIGNS[found.severity]} </span>
                     {found.severity}
                   </span>{" "}
-                  {found.message} <code className="text-faded">{found.name}</code>
+                  <Prose text={found.message} />{" "}
+                  <code className="text-faded whitespace-nowrap">{found.name}</code>
                 </p>
                 {found.facts.length > 0 && (
                   <ul className="facts">
                     {found.facts.map((fact) => (
                       <li key={`${fact.message}:${fact.place?.line}`}>
-                        {fact.message}{" "}
+                        <Prose text={fact.message} />{" "}
                         {fact.place !== null && <Where path={path} place={fact.place} onOpen={onOpen} />}
                       </li>
                     ))}
@@ -58,6 +59,14 @@ export function Findings({ path, findings, mayFix, onFix, onOpen }: FindingsProp
   );
 }
 
+/** A sentence of the core, with the names of the text between backquotes. */
+export function Prose({ text }: { text: string }) {
+  return text.split("`").map((part, index) =>
+    // biome-ignore lint/suspicious/noArrayIndexKey: the parts of one sentence have no other identity
+    index % 2 === 1 ? <code key={index}>{part}</code> : part,
+  );
+}
+
 interface WhereProps {
   readonly path: string;
   readonly place: FindingView["place"];
@@ -72,12 +81,14 @@ function Where({ path, place, onOpen }: WhereProps) {
   );
 }
 
-/** The number of a line that goes to it. */
-export function LineLink({ line }: { line: number | null }) {
-  const { open } = useContext(LightingContext);
-  if (line === null) return <span className="text-faded">–</span>;
+/** The line that something stands on, with its file where that is another one; it goes there. */
+export function PlaceLink({ place }: { place: Place }) {
+  const { path, open } = useContext(LightingContext);
+  const { file, line } = place;
+  const name = file === path ? `line ${line}` : `line ${line} of ${file}`;
   return (
-    <button type="button" className="word" aria-label={`Go to line ${line}`} onClick={() => open(line)}>
+    <button type="button" className="word" aria-label={`Go to ${name}`} onClick={() => open(place)}>
+      {file !== path && <span className="font-mono text-note">{file.slice(file.lastIndexOf("/") + 1)} </span>}
       {line}
     </button>
   );

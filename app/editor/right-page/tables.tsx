@@ -7,12 +7,16 @@ import type {
   ValueView,
 } from "../view-model.ts";
 import { Equation } from "./equations.tsx";
-import { LineLink } from "./findings.tsx";
+import { PlaceLink, Prose } from "./findings.tsx";
 import { Typeset } from "./formula.tsx";
 import { useLit } from "./lighting.ts";
 import { Section } from "./section.tsx";
 
-const KIND = { p: "momentum", q: "displacement", tracked: "tracked" } as const;
+const KINDS: Record<string, string> = { p: "momentum", q: "displacement", e: "effort", f: "flow" };
+
+function kindOf({ name, kind }: StateView): string {
+  return kind === "tracked" ? kind : (KINDS[name.slice(name.lastIndexOf(".") + 1)] ?? KINDS[kind]);
+}
 
 export function States({ states }: { states: readonly StateView[] }) {
   return (
@@ -52,11 +56,11 @@ function StateRow({ state }: { state: StateView }) {
       <th scope="row" className="notation">
         {state.name}
       </th>
-      <td>{KIND[state.kind]}</td>
+      <td>{kindOf(state)}</td>
       <td className="figure">{state.start}</td>
       <td className="notation">{state.unit}</td>
       <td>
-        <LineLink line={state.line} />
+        <PlaceLink place={state.place} />
       </td>
     </tr>
   );
@@ -72,12 +76,8 @@ export function DependentStores({ stores }: { stores: readonly DependentView[] }
           <li key={store.name} className="py-1">
             <p>
               <span className="notation font-semibold">{store.name}</span> in {store.unit}, settled by{" "}
-              <span className="notation">{store.of.join(", ") || "the inputs"}</span>
-              {store.line !== null && (
-                <>
-                  , line <LineLink line={store.line} />
-                </>
-              )}
+              <span className="notation">{store.of.join(", ") || "the inputs"}</span>, line{" "}
+              <PlaceLink place={store.place} />
             </p>
             <ul className="equations">
               <Equation equation={store.equation} />
@@ -149,7 +149,7 @@ function ValueRow({ value, ranged }: { value: ValueView; ranged: boolean }) {
       {ranged && <td className="notation whitespace-nowrap">{value.range}</td>}
       <td>{value.description}</td>
       <td>
-        <LineLink line={value.line} />
+        <PlaceLink place={value.place} />
       </td>
     </tr>
   );
@@ -175,8 +175,8 @@ export function Expectations({ expectations }: { expectations: readonly Expectat
           </tr>
         </thead>
         <tbody>
-          {expectations.map(({ text, verdict, measured, message, line }) => (
-            <tr key={`${line}:${text}`}>
+          {expectations.map(({ text, verdict, measured, message, place }) => (
+            <tr key={`${place.line}:${text}`}>
               <td className={`whitespace-nowrap font-semibold ${VERDICTS[verdict].ink}`}>
                 <span aria-hidden="true">{VERDICTS[verdict].sign} </span>
                 {verdict}
@@ -185,10 +185,10 @@ export function Expectations({ expectations }: { expectations: readonly Expectat
                 {text}
               </th>
               <td>
-                <span className="notation">{measured}</span> {message}
+                <span className="notation">{measured}</span> {message !== null && <Prose text={message} />}
               </td>
               <td>
-                <LineLink line={line} />
+                <PlaceLink place={place} />
               </td>
             </tr>
           ))}
