@@ -14,7 +14,7 @@ import type { DependentStore, ModelInput, RateEquation, State, StateModel } from
 import { followPaths } from "./paths.ts";
 import { type Follower, RateFinder, type RateRow, type SolvedRates, solveRates } from "./rates.ts";
 import { startValues } from "./start.ts";
-import { tidy } from "./tidy.ts";
+import { collected, tidy } from "./tidy.ts";
 
 /**
  * The state model of a causal graph: assignments as the strokes give them → followed along causal paths, loops
@@ -97,7 +97,7 @@ function plainRates(rows: readonly RateRow[]): SolvedRates {
 function rateFree(pool: Pool, solved: SolvedRates): (expr: Expr) => Expr {
   const finder = new RateFinder();
   const put = substitution(pool, solved.rates, (expr) => !finder.holds(expr));
-  return (expr) => (finder.holds(expr) ? tidy(pool, put(expr)) : expr);
+  return (expr) => (finder.holds(expr) ? collected(pool, put(expr)) : expr);
 }
 
 function finishOrNull(value: Expr | undefined, finish: (expr: Expr) => Expr): Expr | null {

@@ -2,6 +2,7 @@ import type { Finding } from "../diagnostics/finding.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { linearForms, linearityIn } from "../symbolic/linear.ts";
 import { compareNames } from "../symbolic/names.ts";
+import { numeratorOf } from "../symbolic/rational-form.ts";
 import { type LinearSolution, solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { turnRound } from "../symbolic/turn.ts";
@@ -9,7 +10,7 @@ import type { Assignment, Assignments } from "./assignments.ts";
 import { implicitNote, loopFinding, singularLoop } from "./loop-findings.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import { tearLoop } from "./tear.ts";
-import { tidy } from "./tidy.ts";
+import { collected } from "./tidy.ts";
 
 export interface LoopSolution {
   readonly values: ReadonlyMap<Symbol, Expr>;
@@ -41,11 +42,11 @@ export function solveLoop(
     get: (key) => values.get(key as Symbol) ?? settled.get(key as Symbol),
   });
   for (const { variable, right } of ordered) values.set(variable, settle(right as Expr));
-  const residuals = torn.map(({ variable, right, residual }) =>
-    residual !== null
-      ? settle(residual)
-      : pool.subtract(settle(right as Expr), unknownOf.get(variable) as Symbol),
-  );
+  const given = torn.map(({ right }) => (right === null ? null : settle(right)));
+  const residuals = torn.map(({ variable, residual }, i) => {
+    const side = given[i];
+    return side === null ? settle(residual as Expr) : pool.subtract(side, unknownOf.get(variable) as Symbol);
+  });
 
   const unknowns = [...unknownOf.values()];
   const degree = linearityIn(new Set(unknowns));
@@ -53,6 +54,7 @@ export function solveLoop(
   const solution = linear
     ? solveLinearResiduals(assignments, residuals, unknowns)
     : solveNonlinear(assignments, residuals, unknowns);
+  const alone = members.length === 1 && members[0].residual !== null;
   const bonds = bondsOf(assignments, members);
   const loop: AlgebraicLoop = {
     variables: torn.map(({ variable }, i) => ({
@@ -62,21 +64,27 @@ export function solveLoop(
     residuals,
     linear,
     solved: solution.kind === "solved",
+    circular: !alone,
     bonds,
   };
   if (solution.kind === "singular") {
     return { values, loop: null, findings: [singularLoop(assignments, members, bonds)], refused: true };
   }
-  const alone = members.length === 1 && members[0].residual !== null;
   const findings: Finding[] = alone ? [] : [loopFinding(assignments, members, loop)];
   if (!linear && !loop.solved) findings.push(implicitNote(assignments, torn, loop));
   if (solution.kind !== "solved") return { values, loop, findings, refused: false };
 
-  const found = new Map<Expr, Expr>(unknowns.map((unknown, i) => [unknown, tidy(pool, solution.values[i])]));
+  const found = new Map<Expr, Expr>(
+    unknowns.map((unknown, i) => [unknown, collected(pool, solution.values[i])]),
+  );
+  // What a torn variable is given by the others is that variable, and its solution the shorter way to write it.
+  given.forEach((side, i) => {
+    if (side !== null && side.args.length > 0) found.set(side, found.get(unknowns[i]) as Expr);
+  });
   const replace = substitution(pool, found);
   for (const [variable, value] of values) {
     const replaced = replace(value);
-    values.set(variable, replaced === value ? value : tidy(pool, replaced));
+    values.set(variable, replaced === value ? value : collected(pool, replaced));
   }
   return { values, loop: alone ? null : loop, findings, refused: false };
 }
@@ -102,7 +110,8 @@ function solveNonlinear(
 ): LinearSolution {
   const { pool } = assignments.causal.graph;
   if (unknowns.length !== 1) return { kind: "large" };
-  const value = turnRound(pool, residuals[0], unknowns[0], pool.zero, assignments.valueOf);
+  const numerator = numeratorOf(pool, residuals[0]) ?? residuals[0];
+  const value = turnRound(pool, numerator, unknowns[0], pool.zero, assignments.valueOf);
   return value === null ? { kind: "large" } : { kind: "solved", values: [value] };
 }
 

@@ -85,6 +85,8 @@ export interface AlgebraicLoop {
   readonly linear: boolean;
   /** The loop was solved in closed form and its variables no longer occur in the equations. */
   readonly solved: boolean;
+  /** False for a law that can't be turned round and stands alone: nothing leads round in a circle. */
+  readonly circular: boolean;
   readonly bonds: readonly number[];
 }
 

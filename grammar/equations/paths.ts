@@ -46,7 +46,9 @@ export function followPaths(assignments: Assignments): Followed {
     );
     for (const [variable, value] of solution.values) values.set(variable, value);
     if (solution.loop !== null) loops.push(solution.loop);
-    findings.push(...solution.findings);
+    // Efforts and flows of one ring are singular together: one finding says so.
+    const said = new Set(findings.map(({ message }) => message));
+    findings.push(...solution.findings.filter(({ message }) => !said.has(message)));
     refused ||= solution.refused;
   }
   return { values, loops, findings, refused };

@@ -7,7 +7,7 @@ import { solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { connectedGroups } from "./dependency.ts";
-import { tidy } from "./tidy.ts";
+import { collected } from "./tidy.ts";
 
 /** A state whose rate is `rate`, or, where it is null, one that has to satisfy `constraint` = its own value. */
 export interface RateRow {
@@ -115,11 +115,12 @@ export function solveRates(
       return;
     }
     if (solution.kind === "large") coupled.push({ names, mass, right });
-    else for (const [i, unknown] of unknowns.entries()) rates.set(unknown, tidy(pool, solution.values[i]));
+    else
+      for (const [i, unknown] of unknowns.entries()) rates.set(unknown, collected(pool, solution.values[i]));
     // Put in after the states' rates are known.
     const finish = substitution(pool, rates, restful);
     for (const { item } of dependent)
-      rates.set(item.rateSymbol, tidy(pool, finish(inside.get(item.rateSymbol) as Expr)));
+      rates.set(item.rateSymbol, collected(pool, finish(inside.get(item.rateSymbol) as Expr)));
   }
 }
 

@@ -3,11 +3,17 @@ import type { Pool } from "../symbolic/pool.ts";
 import { collectedForm } from "../symbolic/rational-form.ts";
 
 const SMALL = 60;
+const LONG = 240;
 
 /** One fraction instead of several over sums, where that is the shorter way to write it and cheap to find. */
 export function tidy(pool: Pool, expr: Expr): Expr {
-  const before = writtenSize(expr, 4 * SMALL);
-  if (before >= 4 * SMALL || !hasSumBelow(expr)) return expr;
+  return writtenSize(expr, LONG) < LONG && hasSumBelow(expr) ? collected(pool, expr) : expr;
+}
+
+/** As `tidy`, also where nothing but symbols stands below: for what a solution was put into, and may cancel. */
+export function collected(pool: Pool, expr: Expr): Expr {
+  const before = writtenSize(expr, LONG);
+  if (before >= LONG) return expr;
   const form = collectedForm(pool, expr, SMALL);
   return form !== null && writtenSize(form, before + 1) <= before ? form : expr;
 }

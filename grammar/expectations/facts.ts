@@ -10,7 +10,7 @@ export const COUNTS: Readonly<Record<string, (model: StateModel) => number>> = {
     return states.filter(({ kind, name }) => kind !== "tracked" || read.has(name)).length;
   },
   dependent: ({ dependent }) => dependent.length,
-  loops: ({ loops }) => loops.length,
+  loops: ({ loops }) => loops.filter(({ circular }) => circular).length,
 };
 
 /** A fact that holds or doesn't: null where it holds, else what speaks against it. */

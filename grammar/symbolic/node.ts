@@ -13,6 +13,8 @@ export class Node implements Expr {
   /** Known to be ≥ 0 wherever it is defined, whatever its symbols are. */
   readonly nonNegative: boolean;
   readonly hash: number;
+  /** Has the factor sin(x)^2, which may meet a cos(x)^2. */
+  readonly sineSquared: boolean;
   /** Next in the same bucket of the pool. */
   next: Node | null;
 
@@ -38,7 +40,15 @@ export class Node implements Expr {
     for (let i = 0; i < args.length; i += 1) if (args[i].rank > rank) rank = args[i].rank;
     this.rank = rank;
     this.nonNegative = nonNegative(op, args, value, name);
+    this.sineSquared =
+      op === "power"
+        ? isSine(args[0]) && args[1].value === 2
+        : op === "product" && args.some((arg) => arg.sineSquared);
   }
+}
+
+function isSine(node: Node): boolean {
+  return node.op === "call" && node.name === "sin";
 }
 
 function nonNegative(op: Operator, args: readonly Node[], value: number, name: string): boolean {

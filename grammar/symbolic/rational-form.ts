@@ -23,6 +23,14 @@ export function collectedForm(pool: Pool, expr: Expr, limit?: number): Expr | nu
   return quotient === null ? null : withFront(pool, quotient, sharedMonomial(pool, quotient.numerator));
 }
 
+/** What has to be zero where the expression is: its numerator as one polynomial. */
+export function numeratorOf(pool: Pool, expr: Expr): Expr | null {
+  const quotient = quotientOf(pool, expr);
+  if (quotient === null) return null;
+  const front = clearingMonomial(pool, quotient.numerator);
+  return polynomialExpr(pool, shiftPolynomial(pool, quotient.numerator, pool.power(front, pool.number(-1))));
+}
+
 function withFront(pool: Pool, { numerator, denominator }: Quotient, front: Expr): Expr {
   const rest = shiftPolynomial(pool, numerator, pool.power(front, pool.number(-1)));
   const below = [...denominator].map(([base, exponent]) => pool.power(base, pool.number(-exponent)));

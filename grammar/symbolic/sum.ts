@@ -27,6 +27,7 @@ export function canonicalSum(pool: Pool, args: readonly Node[]): Node {
       for (const term of arg.args) collect(pool, into, term);
     else collect(pool, into, arg);
   }
+  joinSquares(pool, into);
   const order: number[] = [];
   for (let i = 0; i < into.rests.length; i += 1) if (into.coefficients[i] !== 0) order.push(i);
   order.sort((i, j) => compareTerms(into.rests[i], into.rests[j]));
@@ -59,6 +60,24 @@ function placeOf(into: Collected, rest: Node): number {
     into.places = new Map(into.rests.map((known, i) => [known, i]));
   }
   return into.places.get(rest) ?? -1;
+}
+
+/** a*sin(x)^2 + a*cos(x)^2 = a, term by term: what a rotation into two directions leaves. */
+function joinSquares(pool: Pool, into: Collected): void {
+  for (let i = 0; i < into.rests.length; i += 1) {
+    const rest = into.rests[i];
+    const coefficient = into.coefficients[i];
+    if (!rest.sineSquared || coefficient === 0) continue;
+    const factors = rest.op === "product" ? rest.args : [rest];
+    const sine = factors.find((factor) => factor.op === "power" && factor.sineSquared) as Node;
+    const cosine = pool.power(pool.call("cos", sine.args[0].args[0]), sine.args[1]) as Node;
+    const partner = placeOf(into, pool.product(cosine, ...factors.filter((each) => each !== sine)) as Node);
+    if (partner === -1 || into.coefficients[partner] !== coefficient) continue;
+    into.coefficients[i] = 0;
+    into.coefficients[partner] = 0;
+    const joined = pool.product(pool.number(coefficient), ...factors.filter((each) => each !== sine)) as Node;
+    collect(pool, into, joined);
+  }
 }
 
 /** A term without its numeric coefficient. */

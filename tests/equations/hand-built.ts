@@ -1,7 +1,14 @@
 import { assignCausality } from "../../grammar/causality/assign.ts";
 import { deriveEquations } from "../../grammar/equations/derive.ts";
 import type { StateModel } from "../../grammar/equations/model.ts";
-import type { Domain, FlatGraph, FlatLaw, FlatNode, FlatPort, NodeKind } from "../../grammar/resolve/graph.ts";
+import type {
+  Domain,
+  FlatGraph,
+  FlatLaw,
+  FlatNode,
+  FlatPort,
+  NodeKind,
+} from "../../grammar/resolve/graph.ts";
 import type { Expr, Symbol } from "../../grammar/symbolic/expression.ts";
 import { Pool } from "../../grammar/symbolic/pool.ts";
 import type { Unit } from "../../grammar/units/unit.ts";
@@ -88,14 +95,16 @@ export class HandBuilt {
       description: null,
       span,
       pool: this.pool,
-      nodes: this.#nodes.map((node, index): FlatNode => ({
-        ...node,
-        index,
-        modulated: false,
-        domain,
-        description: null,
-        span: { ...span, start: index },
-      })),
+      nodes: this.#nodes.map(
+        (node, index): FlatNode => ({
+          ...node,
+          index,
+          modulated: false,
+          domain,
+          description: null,
+          span: { ...span, start: index },
+        }),
+      ),
       bonds: this.#bonds,
       parameters: symbols
         .filter(({ role }) => role === "parameter")

@@ -59,6 +59,15 @@ describe("canonical form", () => {
       pool.power(pool.product(pool.call("sign", x), pool.call("sqrt", pool.call("abs", x))), n(2)),
       pool.product(pool.power(pool.call("sign", x), n(2)), pool.call("abs", x)),
     ],
+    [
+      "sin^2 + cos^2 beside a factor",
+      pool.sum(
+        x,
+        pool.product(a, pool.power(pool.call("sin", x), n(2))),
+        pool.product(a, pool.power(pool.call("cos", x), n(2))),
+      ),
+      pool.sum(a, x),
+    ],
     ["root of a square", pool.call("sqrt", pool.power(x, n(2))), pool.call("abs", x)],
     [
       "|a*b|",
