@@ -1,9 +1,9 @@
+import { nearest } from "../diagnostics/nearest.ts";
 import type { FunctionName } from "../symbolic/expression.ts";
 import { FUNCTION_NAMES } from "../syntax/words.ts";
 import { DIMENSIONLESS, isDimensionless, power } from "../units/dimension.ts";
 import { NO_INDICES } from "./draft.ts";
 import { spanIn } from "./files.ts";
-import { nearest } from "./nearest.ts";
 import { plainScope, type Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
 import type { Call } from "./tree-walk.ts";

@@ -1,4 +1,5 @@
 import { finding } from "../diagnostics/finding.ts";
+import { nearest } from "../diagnostics/nearest.ts";
 import type {
   IndexedName,
   Repeat,
@@ -22,7 +23,6 @@ import {
 import { type SourceFile, spanIn } from "./files.ts";
 import type { NodeKind } from "./graph.ts";
 import { fullName, unknownName } from "./names.ts";
-import { nearest } from "./nearest.ts";
 import { MOST_BONDS, MOST_STATEMENTS } from "./size.ts";
 import { wholeScope } from "./structure.ts";
 import { isValue, templateOf, type ValueStatement } from "./template.ts";

@@ -1,4 +1,5 @@
 import { type Finding, finding, type Report } from "../diagnostics/finding.ts";
+import { nearest } from "../diagnostics/nearest.ts";
 import type { Range, Span } from "../source/span.ts";
 import type { FileSet, SourceText } from "../source/text.ts";
 import type {
@@ -15,7 +16,6 @@ import { RESERVED_NAMES } from "../syntax/words.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import { DOMAINS, declaredDomain } from "./domains.ts";
 import type { Domain } from "./graph.ts";
-import { nearest } from "./nearest.ts";
 
 export type Parse = (source: SourceText) => { readonly tree: File; readonly findings: readonly Finding[] };
 

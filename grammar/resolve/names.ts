@@ -1,9 +1,9 @@
 import { type Finding, finding } from "../diagnostics/finding.ts";
+import { nearest } from "../diagnostics/nearest.ts";
 import type { Range } from "../source/span.ts";
 import type { IndexedName } from "../syntax/tree.ts";
 import type { Draft, DraftNode, Indices, Instance, Named } from "./draft.ts";
 import { spanOf } from "./draft.ts";
-import { nearest } from "./nearest.ts";
 import { wholeScope } from "./structure.ts";
 import { wholeNumber } from "./whole-numbers.ts";
 

@@ -1,3 +1,4 @@
+import { nearest } from "../diagnostics/nearest.ts";
 import type { IndexedName, Reference } from "../syntax/tree.ts";
 import { DIMENSIONLESS } from "../units/dimension.ts";
 import { parseUnit } from "../units/parse-unit.ts";
@@ -7,7 +8,6 @@ import { fileConst, valueOf } from "./evaluate-values.ts";
 import { spanIn } from "./files.ts";
 import { ownVariable } from "./law-scope.ts";
 import { fullName, lookUp } from "./names.ts";
-import { nearest } from "./nearest.ts";
 import { bondVariable, finalBond, portNames, storeVariable } from "./port-variables.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";

@@ -1,7 +1,7 @@
 import { type Finding, finding } from "../diagnostics/finding.ts";
+import { nearest } from "../diagnostics/nearest.ts";
 import type { Trial, TrialStatement } from "../syntax/tree.ts";
 import { type SourceFile, spanIn } from "./files.ts";
-import { nearest } from "./nearest.ts";
 import { templateOf } from "./template.ts";
 
 /**
