@@ -2,6 +2,7 @@ import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
 import { derivationOf } from "../../grammar/equations/derivation.ts";
 import type { StateModel } from "../../grammar/equations/model.ts";
 import { checkFile, type SystemReport } from "../../grammar/pipeline.ts";
+import type { Span } from "../../grammar/source/span.ts";
 import { type CheckedFile, equationsDocument } from "../../grammar/writing/json.ts";
 import { systemMarkdown } from "../../grammar/writing/markdown.ts";
 import { modelLatex } from "../../grammar/writing/system-latex.ts";
@@ -80,15 +81,19 @@ function textReport({ system, graph }: SystemReport, sections: readonly TextSect
   return [`${paint("strong", inert(system))}${about}`, ...blocks].join("\n\n");
 }
 
-/** Each equation's way from the rate of its store to what is collected, with the line that each step stands on. */
-function stepSections({ files, shown }: CheckedFile, model: StateModel): TextSection[] {
+/** Each equation's way from the rate of its store to what is collected, with the line that each step stands on; in energy variables. */
+function stepSections({ report, files, shown }: CheckedFile, model: StateModel): TextSection[] {
+  const place = ({ file, start }: Span) => {
+    const line = `line ${files.get(file)?.position(start).line ?? 1}`;
+    return file === report.path ? line : `${shown(file)}, ${line}`;
+  };
   return model.states.map(({ name }) => ({
     title: `Steps to ${name}'`,
     lines: columns(
-      derivationOf(model, name).map(({ left, right, rule, span }) => {
-        const line = files.get(span.file)?.position(span.start).line ?? 1;
-        return [`${expressionText(left)} = ${expressionText(right)}`, `${rule}, ${shown(span.file)}:${line}`];
-      }),
+      derivationOf(model, name).map(({ left, right, rule, span }) => [
+        `${expressionText(left)} = ${expressionText(right)}`,
+        `${rule.replace("-", " ")}, ${place(span)}`,
+      ]),
     ),
   }));
 }

@@ -6,37 +6,6 @@ export function explainStroke(causal: CausalGraph, bond: number): ReasonStep[] {
   return chainTo(causal, [bond]).map((index) => stepOf(causal, index));
 }
 
-/** One root that a stroke goes back to, and the shortest chain of bonds from it to the bond asked about. */
-export interface CausalPath {
-  /** The node that set the first stroke: a source, a store that integrates, a resistor. */
-  readonly root: number;
-  readonly rule: Reason["rule"];
-  /** From the root's bond to the bond asked about. */
-  readonly bonds: readonly number[];
-}
-
-/** What forces a bond's stroke: of a dependent store, the stores and sources that settle its variable. */
-export function pathsTo(causal: CausalGraph, bond: number): CausalPath[] {
-  const next = new Map<number, number | null>([[bond, null]]);
-  const paths: CausalPath[] = [];
-  const queue = [bond];
-  for (let at = 0; at < queue.length; at += 1) {
-    const reason = causal.reasons[queue[at]];
-    if (reason === null || reason === undefined) continue;
-    if (reason.premises.length === 0 && queue[at] !== bond) {
-      const bonds: number[] = [];
-      for (let on: number | null = queue[at]; on !== null; on = next.get(on) ?? null) bonds.push(on);
-      paths.push({ root: reason.node, rule: reason.rule, bonds });
-    }
-    for (const premise of reason.premises) {
-      if (next.has(premise)) continue;
-      next.set(premise, queue[at]);
-      queue.push(premise);
-    }
-  }
-  return paths;
-}
-
 /** The bonds that the given ones rest on, themselves included, each after its premises. */
 export function chainTo(causal: CausalGraph, bonds: readonly number[]): number[] {
   const done = new Set<number>();

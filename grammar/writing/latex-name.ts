@@ -30,24 +30,22 @@ export function dotted(name: string): string {
   return withSubscripts(`\\dot{${letterLatex(base)}}`, subscripts);
 }
 
-/** The last part of a dotted name is the quantity; what it belongs to, and what follows `_`, stand below. */
+/** The last part of a dotted name is the quantity; what it belongs to, and what follows its `_`, stand below. */
 function split(name: string): { base: string; subscripts: string[] } {
-  const arrow = name.includes("->");
-  const dot = arrow ? name.lastIndexOf(".", name.length) : name.lastIndexOf(".");
+  const dot = name.lastIndexOf(".");
   const owner = dot === -1 ? "" : name.slice(0, dot);
-  const [base, ...below] = splitQuantity(name.slice(dot + 1));
+  const { base, below } = splitQuantity(name.slice(dot + 1));
   const subscripts = below.map((part) => ([...part].length === 1 ? letterLatex(part) : upright(part)));
   if (owner !== "") subscripts.push(pathLatex(owner));
   return { base, subscripts };
 }
 
-/** `R_a` → R, a; `J1` → J, 1; `m_b_2` → m, b, 2; a word keeps its digits. */
-function splitQuantity(last: string): string[] {
-  const parts = last.split("_").filter((part) => part !== "");
-  if (parts.length === 0) return [last];
-  const [first, ...rest] = parts;
-  const numbered = /^(\p{L}\p{M}*)(\d+)$/u.exec(first);
-  return numbered === null ? parts : [numbered[1], numbered[2], ...rest];
+/** `R_a` → R, a; `J1` → J, 1; `m_b_2` → m, b, 2; a word stays whole, with its digits and underlines. */
+function splitQuantity(last: string): { base: string; below: string[] } {
+  const quantity = /^(\p{L}\p{M}*)(\d*)((?:_[^_]+)*)$/u.exec(last);
+  if (quantity === null) return { base: last, below: [] };
+  const [, base, digits, rest] = quantity;
+  return { base, below: [digits, ...rest.split("_")].filter((part) => part !== "") };
 }
 
 function withSubscripts(base: string, subscripts: readonly string[]): string {
@@ -60,8 +58,14 @@ function letterLatex(text: string): string {
   return GREEK[only] ?? (/^[a-zA-Z0-9]$/.test(only) ? only : upright(only));
 }
 
+/** `rope.spring` upright, but `C_f` in it as the quantity that it is; a bond with its arrow. */
 function pathLatex(path: string): string {
-  return path.split("->").map(upright).join("\\to ");
+  return path.split("->").map(endLatex).join("\\to ");
+}
+
+function endLatex(path: string): string {
+  const { base, below } = splitQuantity(path);
+  return below.length > 0 ? withSubscripts(letterLatex(base), below.map(upright)) : upright(path);
 }
 
 function upright(text: string): string {

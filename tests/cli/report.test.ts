@@ -86,7 +86,7 @@ describe("equations", () => {
     expect(place.run(["equations", "clean.wright"]).out).toContain("  body.p' = F - b*body.p/m\n");
     expect(place.run(["equations", "clean.wright", "--states", "co-energy"]).out).toContain("body.f' = ");
     expect(place.run(["equations", "clean.wright", "--steps"]).out).toMatch(
-      /Steps to body\.p'\n.*rate, clean\.wright:\d+/,
+      /Steps to body\.p'\n.*rate, line \d+/,
     );
     expect(place.run(["equations", "clean.wright", "--format", "latex"]).out).toContain(
       "\\dot{p}_{\\mathrm{body}} = F",

@@ -32,6 +32,9 @@ describe("names", () => {
     ["cell[3].q", "q_{\\mathrm{cell[3]}}"],
     ["größe", "\\text{größe}"],
     ["_", "\\mathrm{\\_}"],
+    ["boat_speed", "\\mathrm{boat\\_speed}"],
+    ["C_f.q", "q_{C_{\\mathrm{f}}}"],
+    ["m_b_2", "m_{b,\\,2}"],
   ])("%s", (name, latex) => {
     expect(nameLatex(name)).toBe(latex);
     typeset(latex);
