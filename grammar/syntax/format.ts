@@ -108,7 +108,7 @@ class Formatter {
     this.#add({ indent, family: null, cells: [cell(0, "}")], tail: this.#tail(null, false) });
   }
 
-  /** What could not be read is printed to the letter. */
+  /** What could not be read is printed to the letter, and so is the edition but for its blanks. */
   #asWritten(range: Range, indent: number): void {
     this.#commentsBefore(range.start, indent);
     this.#emptyLine(range.start);
@@ -120,7 +120,8 @@ class Formatter {
       this.#nextComment += 1;
     }
     this.#end = range.end;
-    const text = this.#text.slice(range.start, range.end).replace(/\r\n?/g, "\n");
+    const written = this.#text.slice(range.start, range.end).replace(/\r\n?/g, "\n");
+    const text = range === this.#tree.edition?.range ? written.replace(/\s+/, " ") : written;
     this.#lines.push(" ".repeat(indent) + text + this.#rest());
   }
 
