@@ -25,7 +25,7 @@ it("names what mirrors, what is demanded, what is free, and what no other bond d
     "the text demands the stroke of rail->body at rail",
   ]);
   expect(why("divider.wright", "loop->R2")).toEqual([
-    "Se supply sets the effort of supply->loop",
+    "MSe supply sets the effort of supply->loop",
     "R R1 gives the effort of loop->R1, as its law is written; nothing forces it",
     "no other bond of 1-junction loop brings its flow, so loop->R2 must",
   ]);
