@@ -1,3 +1,4 @@
+import { ConnectionError } from "sequelize";
 import { database } from "./connect.ts";
 import { migrate } from "./migrate.ts";
 import { Team } from "./models/index.ts";
@@ -10,8 +11,15 @@ import { seedDemo } from "./seed/seed-demo.ts";
  * database without teams, and prints its sign-ins as JSON where it is there.
  */
 const withDemo = process.argv.includes("--demo");
-await migrate();
-if (withDemo) await seedDemo("models-demo");
-const demoIsThere = withDemo && (await Team.count({ where: { slug: demoTeam.slug } })) > 0;
-await database.close();
-console.log(JSON.stringify(demoIsThere ? demoAccounts : []));
+try {
+  await migrate();
+  if (withDemo) await seedDemo("models-demo");
+  const demoIsThere = withDemo && (await Team.count({ where: { slug: demoTeam.slug } })) > 0;
+  console.log(JSON.stringify(demoIsThere ? demoAccounts : []));
+} catch (error) {
+  // A server that cannot be reached says so in a sentence; anything else is a fault of ours, with its stack.
+  console.error(error instanceof ConnectionError ? error.message : error);
+  process.exitCode = 1;
+} finally {
+  await database.close();
+}

@@ -19,7 +19,7 @@ export function makeReady(url, { demo }) {
     env: { ...process.env, DATABASE_URL: url, NODE_ENV: "production" },
     encoding: "utf8",
   });
-  if (run.status !== 0) throw new Said(`The database could not be made ready:\n${run.stderr || run.stdout}`);
+  if (run.status !== 0) throw new Said(`The database could not be made ready: ${run.stderr.trim()}`);
   return JSON.parse(run.stdout);
 }
 
