@@ -3,7 +3,8 @@ import type { CausalGraph } from "./causality/strokes.ts";
 import type { Finding } from "./diagnostics/finding.ts";
 import { deriveEquations } from "./equations/derive.ts";
 import type { StateModel } from "./equations/model.ts";
-import { type ExpectationResult, judge } from "./expectations/judge.ts";
+import { judge } from "./expectations/judge.ts";
+import type { ExpectationResult } from "./expectations/result.ts";
 import type { FlatGraph } from "./resolve/graph.ts";
 import { resolve } from "./resolve/resolve.ts";
 import type { FileSet, SourceText } from "./source/text.ts";
@@ -66,7 +67,9 @@ export function checkFile(files: FileSet, path: string, options: CheckOptions = 
 function derive(system: string, graph: FlatGraph | null, resolveFindings: readonly Finding[]): SystemReport {
   const refused = resolveFindings.some(({ severity }) => severity === "error");
   if (graph === null || refused) {
-    return { system, graph, causal: null, model: null, findings: resolveFindings, expectations: [] };
+    // The requirements of a refused system have failed with it; its findings say why.
+    const expectations = graph === null ? [] : judge(graph, null).results;
+    return { system, graph, causal: null, model: null, findings: resolveFindings, expectations };
   }
   const { causal, findings: causalFindings } = assignCausality(graph);
   const conflict = causalFindings.some(({ severity }) => severity === "error");

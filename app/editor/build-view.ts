@@ -86,7 +86,7 @@ function expectations(system: SystemReport, placed: (span: Span) => Place): Expe
   const judged = system.expectations.map(
     (result): Omit<ExpectationView, "place"> => ({
       text: result.text,
-      verdict: result.passed ? "passed" : "failed",
+      verdict: !result.judged ? "not judged" : result.passed ? "passed" : "failed",
       measured: result.measured,
       wanted: result.wanted,
       message: result.message,
