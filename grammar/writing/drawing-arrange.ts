@@ -1,16 +1,13 @@
 import type { DiagramModel, DiagramNode } from "./diagram-model.ts";
-import { LETTERING } from "./drawing.ts";
 import { joinsDomains } from "./drawing-domains.ts";
-import { GAP, type Member, REACH, SHORTEST_BOND, twoRows } from "./drawing-rows.ts";
+import { GAP, type Member, REACH, rowsOf, SHORTEST_BOND } from "./drawing-rows.ts";
 import { findSpine, type Hanging, isJunction, type Link, type Spine } from "./drawing-spine.ts";
 import {
   type NamePlace,
-  nameAbove,
   nameBelow,
   nodeReach,
   nodeWidth,
   symbolHalf,
-  writtenHeight,
   writtenWidth,
 } from "./drawing-symbols.ts";
 
@@ -84,15 +81,13 @@ function arrangeHub(
   const last = lanesAfter > 0 ? [] : take(leaves.find(source) ?? (alone ? leaves[0] : undefined));
 
   const lift = liftOf(lanesBefore, lanesAfter);
-  const { up, down } = twoRows(model, spine, spine.hanging[hub], leaves, lift + 48);
-  const name = hubName(node, up, down, lift);
+  const { members, name } = rowsOf(model, spine, hub, leaves, lift);
   const inLine = (side: -1 | 1) => (leaf: Hanging) => besideHub(model, leaf, node, name, side);
   return [
     { node: hub, at: { x: 0, y: 0 }, name },
     ...first.map(inLine(-1)),
     ...last.map(inLine(1)),
-    ...up,
-    ...down,
+    ...members,
   ];
 }
 
@@ -105,11 +100,13 @@ function besideHub(
   side: -1 | 1,
 ): Member {
   const leaf = model.nodes[node];
-  const under = name.anchor === "middle" && name.at.y > 0 ? writtenWidth(hub) / 2 : symbolHalf(hub).x;
+  const [half, leafHalf] = [symbolHalf(hub).x, symbolHalf(leaf).x];
+  const written = name.anchor === "middle" ? writtenWidth(hub) / 2 : half;
   const reach = Math.max(
     REACH,
-    symbolHalf(hub).x + SHORTEST_BOND + symbolHalf(leaf).x,
-    under + GAP + writtenWidth(leaf) / 2,
+    half + SHORTEST_BOND + leafHalf,
+    written + GAP + (name.at.y < 0 ? leafHalf : writtenWidth(leaf) / 2),
+    half + GAP + writtenWidth(leaf) / 2,
   );
   return { node, at: { x: side * reach, y: 0 }, name: nameBelow(leaf) };
 }
@@ -117,22 +114,6 @@ function besideHub(
 /** How far the outermost lane is from the hub's level. */
 function liftOf(lanesBefore: number, lanesAfter: number): number {
   return (Math.max(lanesBefore, lanesAfter, 1) - 1) * (LANE / 2);
-}
-
-/** Over the hub or under it where no row is; else beside the bond to the row that leaves more room. */
-function hubName(node: DiagramNode, up: readonly Member[], down: readonly Member[], lift: number): NamePlace {
-  const raised = ({ at: { x, y }, anchor }: NamePlace, by: number): NamePlace => ({
-    at: { x, y: y + by },
-    anchor,
-  });
-  if (down.length === 0 && (up.length > 0 || !isJunction(node))) return raised(nameBelow(node), lift);
-  if (up.length === 0) return raised(nameAbove(node), -lift);
-  const flattest = (row: readonly Member[]) => Math.max(0, ...row.map(({ at }) => at.x / Math.abs(at.y)));
-  const above = flattest(up) <= flattest(down);
-  const baseline = 12 + lift + (above ? 0 : 0.75 * LETTERING.name.size);
-  const height = 12 + lift + writtenHeight(node);
-  const x = 11 + height * (above ? flattest(up) : flattest(down));
-  return { at: { x, y: above ? -baseline : baseline }, anchor: "start" };
 }
 
 function extentOf(model: DiagramModel, members: readonly Member[], lift: number, joins: boolean): Extent {
@@ -143,8 +124,9 @@ function extentOf(model: DiagramModel, members: readonly Member[], lift: number,
   for (const { node, at, name } of members) {
     const own = model.nodes[node];
     const half = nodeWidth(own) / 2;
-    const [before, after] =
-      name.anchor === "start" ? [symbolHalf(own).x, name.at.x + writtenWidth(own)] : [half, half];
+    const beside = Math.abs(name.at.x) + writtenWidth(own);
+    const before = name.anchor === "end" ? beside : name.anchor === "start" ? symbolHalf(own).x : half;
+    const after = name.anchor === "start" ? beside : name.anchor === "end" ? symbolHalf(own).x : half;
     extent.left = Math.max(extent.left, before - at.x);
     extent.right = Math.max(extent.right, after + at.x);
     const symbol = symbolHalf(own).y;

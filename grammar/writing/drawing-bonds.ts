@@ -3,6 +3,7 @@ import type { Path, Point, Shape, Text } from "./drawing.ts";
 
 const BARB = 11;
 const BARB_ANGLE = (32 * Math.PI) / 180;
+/** Half the length of a causal stroke. */
 const STROKE_HALF = 7;
 
 /**

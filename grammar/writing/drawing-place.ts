@@ -105,8 +105,13 @@ function leave(node: DiagramNode, centre: Point, next: Point): Point {
   const [dx, dy] = [next.x - centre.x, next.y - centre.y];
   if (Math.abs(dy) < half.y && Math.abs(dx) > reachX)
     return { x: centre.x + Math.sign(dx) * reachX, y: next.y };
-  const scale = Math.min(reachX / Math.max(Math.abs(dx), 1e-9), reachY / Math.max(Math.abs(dy), 1e-9), 1);
-  return { x: centre.x + dx * scale, y: centre.y + dy * scale };
+  const along = direction(centre, next);
+  const [alongX, alongY] = [Math.abs(along.x), Math.abs(along.y)];
+  const edge = Math.min(reachX / Math.max(alongX, 1e-9), reachY / Math.max(alongY, 1e-9));
+  // A stroke across a slanting bond must stay clear of the symbol's corner: beyond its supporting line.
+  const corner = half.x * alongX + half.y * alongY + 1;
+  const reach = Math.min(Math.max(edge, corner), Math.hypot(dx, dy));
+  return { x: centre.x + along.x * reach, y: centre.y + along.y * reach };
 }
 
 function loopAt({ x, y }: Point, node: DiagramNode): Point[] {

@@ -1,12 +1,13 @@
-import type { DiagramModel } from "./diagram-model.ts";
+import type { DiagramModel, DiagramNode } from "./diagram-model.ts";
 import { LETTERING, type Point } from "./drawing.ts";
-import type { Hanging, Spine } from "./drawing-spine.ts";
+import { type Hanging, isJunction, type Spine } from "./drawing-spine.ts";
 import {
   type NamePlace,
   nameAbove,
   nameBelow,
   nodeWidth,
   symbolHalf,
+  writtenHeight,
   writtenWidth,
 } from "./drawing-symbols.ts";
 
@@ -26,26 +27,79 @@ export const SHORTEST_BOND = 34;
 
 interface Item {
   readonly width: number;
+  /** What it needs between its middle and the hub's bonds: half its symbol, and what is written before it. */
+  readonly inwards: number;
+  readonly hangs: boolean;
   /** Puts the item with its middle at `at`, on the side `up` (−1) or down (+1). */
-  readonly place: (at: Point, side: -1 | 1) => Member[];
+  readonly place: (at: Point, side: Side) => Member[];
 }
 
-/** What hangs on a hub in a row above and a row below, junctions below first, both about as wide. */
-export function twoRows(
+type Side = -1 | 1;
+
+/**
+ * What hangs on a hub in a row above and a row below, junctions below first, both about as wide; and where this leaves
+ * room for the hub's own name. `lift` is how far bonds leave the hub above and below its level.
+ */
+export function rowsOf(
   model: DiagramModel,
   spine: Spine,
-  hanging: readonly Hanging[],
+  hub: number,
   leaves: readonly Hanging[],
-  atLeast: number,
-): { readonly up: Member[]; readonly down: Member[] } {
-  const rows = { up: [] as Item[], down: [] as Item[] };
-  for (const item of hanging.map((one) => hangingItem(model, spine, one)))
+  lift: number,
+): { readonly members: Member[]; readonly name: NamePlace } {
+  const node = model.nodes[hub];
+  const rows: Rows = { up: [], down: [] };
+  for (const item of spine.hanging[hub].map((one) => hangingItem(model, spine, one))) {
     narrower(rows, item, "down").push(item);
+  }
   for (const item of leaves.map((leaf) => leafItem(model, leaf))) narrower(rows, item, "up").push(item);
-  return { up: placeRow(rows.up, -1, atLeast), down: placeRow(rows.down, 1, atLeast) };
+
+  const named = nameSide(node, rows);
+  const beside = named === "over" || named === "under" ? null : named;
+  const up = placeRow(node, rows.up, -1, lift, beside === -1);
+  const down = placeRow(node, rows.down, 1, lift, beside === 1);
+  return { members: [...up, ...down], name: hubName(node, named, up, down, lift) };
 }
 
-function narrower(rows: { up: Item[]; down: Item[] }, item: Item, preferred: "up" | "down"): Item[] {
+interface Rows {
+  readonly up: Item[];
+  readonly down: Item[];
+}
+
+/** Over the hub or under it where no row is; else beside the bonds to the row that leaves more room. */
+function nameSide(node: DiagramNode, { up, down }: Rows): "over" | "under" | Side {
+  if (down.length === 0 && (up.length > 0 || !isJunction(node))) return "under";
+  if (up.length === 0) return "over";
+  const crowded = (row: readonly Item[]) => row.length + (row.some(({ hangs }) => hangs) ? 100 : 0);
+  return crowded(up) <= crowded(down) ? -1 : 1;
+}
+
+function hubName(
+  node: DiagramNode,
+  named: "over" | "under" | Side,
+  up: readonly Member[],
+  down: readonly Member[],
+  lift: number,
+): NamePlace {
+  if (named === "over") return moved(nameAbove(node), -lift);
+  if (named === "under") return moved(nameBelow(node), lift);
+  // Right of every bond to the row, also where these lean over.
+  const lean = Math.max(0, ...(named === -1 ? up : down).map(({ at }) => at.x / Math.abs(at.y)));
+  const { at } = aside(node, named, lift);
+  return { at: { x: at.x + lean * (Math.abs(at.y) + writtenHeight(node)), y: at.y }, anchor: "start" };
+}
+
+function moved({ at, anchor }: NamePlace, by: number): NamePlace {
+  return { at: { x: at.x, y: at.y + by }, anchor };
+}
+
+/** Right of an upright bond that leaves the symbol on a side. */
+function aside(node: DiagramNode, side: Side, lift = 0): NamePlace {
+  const clear = symbolHalf(node).y + 4 + lift;
+  return { at: { x: 12, y: side < 0 ? -clear : clear + 0.75 * LETTERING.name.size }, anchor: "start" };
+}
+
+function narrower(rows: Rows, item: Item, preferred: "up" | "down"): Item[] {
   const other = preferred === "up" ? "down" : "up";
   return rowWidth(rows[other]) < rowWidth(rows[preferred]) - (rows[preferred].length === 0 ? item.width : 0)
     ? rows[other]
@@ -56,9 +110,21 @@ function rowWidth(row: readonly Item[]): number {
   return row.reduce((sum, { width }) => sum + width + GAP, 0);
 }
 
-/** A row is set farther off the longer it is, so that no bond to its end runs through its middle. */
-function placeRow(row: readonly Item[], side: -1 | 1, atLeast: number): Member[] {
-  const y = side * Math.max(REACH, 12 * row.length + 26, atLeast);
+/**
+ * A row is set farther off the longer it is, so that no bond to its end runs through its middle, and so far that what
+ * is written between it and the hub has room.
+ */
+function placeRow(
+  hub: DiagramNode,
+  row: readonly Item[],
+  side: Side,
+  lift: number,
+  named: boolean,
+): Member[] {
+  const inwards = Math.max(0, ...row.map((item) => item.inwards));
+  const outwards = symbolHalf(hub).y + lift;
+  const between = named ? Math.max(SHORTEST_BOND, writtenHeight(hub) + 8) : SHORTEST_BOND;
+  const y = side * Math.max(REACH, 12 * row.length + 26, outwards + between + inwards);
   const width = rowWidth(row) - GAP;
   let x = -width / 2;
   const members: Member[] = [];
@@ -71,10 +137,10 @@ function placeRow(row: readonly Item[], side: -1 | 1, atLeast: number): Member[]
 
 function leafItem(model: DiagramModel, { node }: Hanging): Item {
   const own = model.nodes[node];
-  const place = (at: Point, side: -1 | 1): Member[] => [
+  const place = (at: Point, side: Side): Member[] => [
     { node, at, name: side < 0 ? nameAbove(own) : nameBelow(own) },
   ];
-  return { width: nodeWidth(own), place };
+  return { width: nodeWidth(own), inwards: symbolHalf(own).y, hangs: false, place };
 }
 
 /** A junction off the spine: its one-ports left, right and beyond it; a single one beyond. */
@@ -82,7 +148,7 @@ function hangingItem(model: DiagramModel, spine: Spine, { node }: Hanging): Item
   const own = model.nodes[node];
   const leaves = spine.leaves[node].map((leaf) => model.nodes[leaf.node]);
   const indices = spine.leaves[node].map((leaf) => leaf.node);
-  const [left, right, beyond] = leaves.length === 1 ? [-1, -1, 0] : [0, 1, leaves.length > 2 ? 2 : -1];
+  const [before, after, beyond] = leaves.length === 1 ? [-1, -1, 0] : [0, 1, leaves.length > 2 ? 2 : -1];
   const reach = (leaf: number) =>
     Math.max(
       REACH,
@@ -91,20 +157,26 @@ function hangingItem(model: DiagramModel, spine: Spine, { node }: Hanging): Item
     );
   const sideways = (leaf: number) =>
     leaf === -1 ? nodeWidth(own) / 2 : reach(leaf) + nodeWidth(leaves[leaf]) / 2;
-  const half = Math.max(sideways(left), sideways(right), writtenWidth(own) + 12);
-  const place = (at: Point, side: -1 | 1): Member[] => {
-    // Beside the bond it hangs on, where the names of its one-ports do not reach.
-    const aside = { x: 12, y: side < 0 ? 13 + 0.75 * LETTERING.name.size : -14 };
-    const members: Member[] = [{ node, at, name: { at: aside, anchor: "start" } }];
+  const half = Math.max(sideways(before), sideways(after), writtenWidth(own) + 12);
+  const tallest = Math.max(...leaves.slice(0, 2).map((leaf) => symbolHalf(leaf).y));
+  const place = (at: Point, side: Side): Member[] => {
+    // Towards the hub, off the bond it hangs on, where the names of its one-ports do not reach.
+    const { at: right } = aside(own, side < 0 ? 1 : -1, Math.max(0, tallest - symbolHalf(own).y));
+    const name: NamePlace =
+      at.x < -1 ? { at: { x: -right.x, y: right.y }, anchor: "end" } : { at: right, anchor: "start" };
+    const members: Member[] = [{ node, at, name }];
     const beside = (leaf: number, x: number, y: number) => {
       if (leaf === -1) return;
-      const name = side < 0 && y !== 0 ? nameAbove(leaves[leaf]) : nameBelow(leaves[leaf]);
+      const name = side < 0 ? nameAbove(leaves[leaf]) : nameBelow(leaves[leaf]);
       members.push({ node: indices[leaf], at: { x: at.x + x, y: at.y + y }, name });
     };
-    beside(left, left === -1 ? 0 : -reach(left), 0);
-    beside(right, right === -1 ? 0 : reach(right), 0);
-    beside(beyond, 0, side * REACH);
+    beside(before, before === -1 ? 0 : -reach(before), 0);
+    beside(after, after === -1 ? 0 : reach(after), 0);
+    const { y: halfBeyond } = beyond === -1 ? { y: 0 } : symbolHalf(leaves[beyond]);
+    beside(beyond, 0, side * Math.max(REACH, symbolHalf(own).y + SHORTEST_BOND + halfBeyond));
     return members;
   };
-  return { width: 2 * half, place };
+  const inwards =
+    Math.max(symbolHalf(own).y, tallest) + Math.max(0, writtenHeight(own) + 4 - SHORTEST_BOND / 2);
+  return { width: 2 * half, inwards, hangs: true, place };
 }

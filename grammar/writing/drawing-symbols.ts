@@ -22,7 +22,8 @@ export function symbolHalf(node: DiagramNode): Point {
   const [text, subscript] = split(node.symbol);
   const width = textWidth(text, "symbol") + textWidth(subscript, "symbol") * SUBSCRIPT;
   const frame = word(node) === null ? 0 : FRAME;
-  return { x: Math.max(width / 2, 7) + frame, y: SYMBOL_HALF + frame };
+  // An index reaches lower than its letter.
+  return { x: Math.max(width / 2, 7) + frame, y: SYMBOL_HALF + frame + (subscript === "" ? 0 : 3) };
 }
 
 /** The word that says what the frame shows. */
