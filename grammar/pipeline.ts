@@ -73,7 +73,9 @@ function derive(system: string, graph: FlatGraph | null, resolveFindings: readon
   }
   const { causal, findings: causalFindings } = assignCausality(graph);
   const conflict = causalFindings.some(({ severity }) => severity === "error");
-  const { model, findings: equationFindings } = conflict ? { model: null, findings: [] } : deriveEquations(causal);
+  const { model, findings: equationFindings } = conflict
+    ? { model: null, findings: [] }
+    : deriveEquations(causal);
   const { results, findings: judgedFindings } = judge(graph, model);
   return {
     system,
