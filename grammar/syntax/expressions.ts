@@ -4,7 +4,8 @@ import type { Range } from "../source/span.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import { Chain } from "./chain.ts";
 import { LIMITS } from "./limits.ts";
-import { EXPECTED } from "./messages.ts";
+import { EXPECTED, rangeOf } from "./messages.ts";
+import type { Mistake } from "./mistake.ts";
 import {
   Binary,
   belongs,
@@ -32,20 +33,14 @@ import {
 } from "./tokens.ts";
 import type { Expression, Identifier, IndexedName, Reference, StringLiteral, UnitText } from "./tree.ts";
 
-/** A mistake that leaves the grammar's path intact: the statement is read to its end, then refused. */
-export interface Slip {
-  readonly name: FindingName;
-  readonly range: Range;
-  readonly message: string;
-}
-
 /**
  * The rules of expressions, names and units. Each rule is run for one line at a time, and the first mistake ends it:
  * the next line is read afresh, so that one slip costs one statement. The rules of statements are added by those who extend this.
  */
 export class ExpressionParser extends EmbeddedActionsParser {
   text = "";
-  slips: Slip[] = [];
+  /** Mistakes that leave the grammar's path intact: the statement is read to its end, then refused. */
+  slips: Mistake[] = [];
   /** `=` compares only inside brackets and conditions; elsewhere it belongs to the statement. */
   protected equality = 0;
   /** How many brackets and waiting operators stand round what is being read. */
@@ -69,8 +64,8 @@ export class ExpressionParser extends EmbeddedActionsParser {
     this.input = tokens;
   }
 
-  protected slip(name: FindingName, range: Range, message: string): void {
-    if (!this.RECORDING_PHASE) this.slips.push({ name, range, message });
+  protected slip(name: FindingName, range: Range, message: string, mend?: Mistake["mend"]): void {
+    if (!this.RECORDING_PHASE) this.slips.push({ name, range, message, mend });
   }
 
   protected to(start: number): Range {
@@ -250,24 +245,20 @@ export class ExpressionParser extends EmbeddedActionsParser {
   /** A unit that is not known is left to the resolver, but for what is plainly a slip of the pen. */
   #judgeUnit(number: IToken, unit: UnitText): void {
     const range = { start: number.startOffset, end: unit.range.end };
+    const apart = `${number.image} ${unit.text}`;
     if (unit.range.start === ends(number)) {
-      const written = `${number.image}${unit.text}`;
       const product = unit.text === "%" ? "" : `, or \`${number.image}*${unit.text}\` for a product`;
-      this.slip(
-        "syntax",
-        range,
-        `Put a blank between a number and its unit: \`${number.image} ${unit.text}\`, not \`${written}\`${product}.`,
-      );
+      const message = `Put a blank between a number and its unit: \`${apart}\`${product}.`;
+      this.slip("syntax", range, message, { range, text: apart });
       return;
     }
     const joint = /[*/^]/.exec(unit.text);
     if (joint === null || parseUnit(unit.text) !== null) return;
-    if (parseUnit(unit.text.slice(0, joint.index)) === null) return;
-    this.slip(
-      "syntax",
-      unit.range,
-      `\`${unit.text}\` is not a unit; put blanks round \`${joint[0]}\` if a value of that name is meant.`,
-    );
+    const first = unit.text.slice(0, joint.index);
+    if (parseUnit(first) === null) return;
+    const message = `\`${unit.text}\` is not a unit; put blanks round \`${joint[0]}\` if a value of that name is meant.`;
+    const text = `${first} ${joint[0]} ${unit.text.slice(joint.index + 1)}`;
+    this.slip("syntax", unit.range, message, { range: unit.range, text });
   }
 }
 
@@ -286,10 +277,6 @@ const MISSING: Expression = { kind: "missing", range: NOWHERE };
 
 export function identifier(token: IToken): Identifier {
   return { text: token.image, range: rangeOf(token) };
-}
-
-export function rangeOf(token: IToken): Range {
-  return { start: token.startOffset, end: ends(token) };
 }
 
 function ends(token: IToken): number {

@@ -5,9 +5,9 @@ import {
   type IToken,
   tokenLabel,
 } from "chevrotain";
-import type { Fix } from "../diagnostics/finding.ts";
 import type { Range } from "../source/span.ts";
 import { FORMS, SIGNS } from "./forms.ts";
+import type { Mistake } from "./mistake.ts";
 import {
   belongs,
   Close,
@@ -17,6 +17,7 @@ import {
   NumberText,
   OneWay,
   Open,
+  OpenIndex,
   Strange,
   Text,
 } from "./tokens.ts";
@@ -33,18 +34,16 @@ export const EXPECTED: IParserErrorMessageProvider = {
   buildEarlyExitMessage: ({ ruleName }) => `first of ${ruleName}`,
 };
 
-export interface Explained {
-  readonly name: "syntax" | "reserved-name";
-  readonly range: Range;
-  readonly message: string;
-}
-
-/** What the grammar stumbled on, in a sentence: what is wrong, where, and how the statement is written. */
-export function explain(error: IRecognitionException, form: string, after: IToken | undefined): Explained {
+/**
+ * What the grammar stumbled on, in a sentence: what is wrong, where, and how the statement is written.
+ * `tokens` are those of the line, `form` says which statement it is.
+ */
+export function explain(error: IRecognitionException, form: string, tokens: readonly IToken[]): Mistake {
   const found = error.token;
   const atEnd = found.tokenType === EOF;
+  const after = atEnd ? tokens.at(-1) : tokens[tokens.indexOf(found) - 1];
   const place = atEnd ? after : found;
-  const range = place === undefined ? { start: 0, end: 0 } : extent(place);
+  const range = place === undefined ? { start: 0, end: 0 } : rangeOf(place);
   const pattern = FORMS.get(form);
   const how = pattern === undefined ? "" : `; write \`${pattern}\``;
   const where = atEnd ? "at the end of the line" : `before ${show(found)}`;
@@ -52,23 +51,41 @@ export function explain(error: IRecognitionException, form: string, after: IToke
   if (found.tokenType === OneWay) {
     const message =
       "`<-` makes a law one way and stands only after its left side; to compare with a negative value write `x < -3`.";
-    return { name: "syntax", range, message };
-  }
-  if (error.name === "MismatchedTokenException") {
-    if (error.message === "a name" && RESERVED_NAMES.has(found.image)) {
-      return {
-        name: "reserved-name",
-        range,
-        message: `${show(found)} is reserved and can't be a name; choose another.`,
-      };
-    }
-    return { name: "syntax", range, message: `${capital(error.message)} is missing ${where}${how}.` };
+    return { name: "syntax", range, message, mend: { range, text: " < -" } };
   }
   if (error.name === "NotAllInputParsedException") {
-    return { name: "syntax", range, message: redundant(found, after, how) };
+    return { name: "syntax", range, message: redundant(found, after, form, how) };
   }
-  const missing = MISSING.get(error.message) ?? "Something";
-  return { name: "syntax", range, message: `${missing} is missing ${where}${how}.` };
+  if (error.name !== "MismatchedTokenException") {
+    return {
+      name: "syntax",
+      range,
+      message: `${MISSING.get(error.message) ?? "Something"} is missing ${where}${how}.`,
+    };
+  }
+  if (error.message === "a name" && RESERVED_NAMES.has(found.image)) {
+    const message = `${show(found)} is reserved and can't be a name; choose another.`;
+    return { name: "reserved-name", range, message };
+  }
+  const message = `${capital(error.message)} is missing ${where}${how}.`;
+  if (error.message !== "`)`" && error.message !== "`]`") return { name: "syntax", range, message };
+  const opened = lastOpen(atEnd ? tokens : tokens.slice(0, tokens.indexOf(found)));
+  if (opened === null) return { name: "syntax", range, message };
+  const facts = [{ message: `${show(opened)} is opened here`, range: rangeOf(opened) }];
+  const end = { start: range.end, end: range.end };
+  const mend = atEnd ? { range: end, text: opened.tokenType === Open ? ")" : "]" } : undefined;
+  return { name: "syntax", range, message, facts, mend };
+}
+
+function lastOpen(tokens: readonly IToken[]): IToken | null {
+  let closed = 0;
+  for (let i = tokens.length - 1; i >= 0; i -= 1) {
+    const type = tokens[i].tokenType;
+    if (type === Close || type === CloseIndex) closed += 1;
+    else if ((type === Open || type === OpenIndex) && closed === 0) return tokens[i];
+    else if (type === Open || type === OpenIndex) closed -= 1;
+  }
+  return null;
 }
 
 /** By the rule in which no way went on. */
@@ -91,35 +108,62 @@ const MISSING: ReadonlyMap<string, string> = new Map([
   ["first of curveFile", "A column in quotes"],
 ]);
 
-function redundant(found: IToken, after: IToken | undefined, how: string): string {
+/** Statements that end in an expression, where two values side by side want an operator. */
+const EXPRESSIVE: ReadonlySet<string> = new Set([
+  "param",
+  "const",
+  "let",
+  "output",
+  "track",
+  "start",
+  "expect",
+  "set",
+  "drive",
+  "run",
+  "record",
+  "vary",
+  "function",
+]);
+
+function redundant(found: IToken, after: IToken | undefined, form: string, how: string): string {
   if (found.tokenType === Close || found.tokenType === CloseIndex) return `${show(found)} closes nothing.`;
   if (found.tokenType === Equals) return `A second \`=\` has no place here${how}.`;
+  const joins =
+    form === "wiring"
+      ? "An arrow or a comma"
+      : form === "element"
+        ? "A comma or an operator"
+        : EXPRESSIVE.has(form)
+          ? "An operator"
+          : null;
   const operand =
     after !== undefined && (isWord(after) || after.tokenType === NumberText || after.tokenType === Close);
-  if (operand && (isWord(found) || found.tokenType === NumberText || found.tokenType === Open)) {
-    return `An operator is missing between ${show(after)} and ${show(found)}${how}.`;
+  if (
+    joins !== null &&
+    operand &&
+    (isWord(found) || found.tokenType === NumberText || found.tokenType === Open)
+  ) {
+    return `${joins} is missing between ${show(after)} and ${show(found)}${how}.`;
   }
   return `${capital(show(found))} has no place here${how}.`;
 }
 
 /** What to say of a sign that the notation does not have, and how to mend it. */
-export function explainSign(token: IToken, path: string): { range: Range; message: string; fix?: Fix } {
-  const range = extent(token);
+export function explainSign(token: IToken): Mistake {
+  const range = rangeOf(token);
   const first = String.fromCodePoint(token.image.codePointAt(0) ?? 0);
   const known = SIGNS.get(token.image) ?? (token.tokenType === Strange ? SIGNS.get(first) : undefined);
-  if (token.image.startsWith("--") && known === undefined) {
-    const range = { start: token.startOffset, end: token.startOffset + 2 };
+  if (known === undefined && token.image.startsWith("--")) {
     const message =
       "`--` begins a remark and wants a blank on both sides; to take away a negative value write `a - (-b)`.";
-    return { range, message };
+    return { name: "syntax", range: { start: range.start, end: range.start + 2 }, message };
   }
-  const message =
-    known === undefined
-      ? `${show(token)} has no meaning in the notation.`
-      : `${show(token)} has no meaning here: ${known.advice}.`;
-  if (known?.instead === undefined || token.image.length > 2) return { range, message };
-  const edits = [{ span: { file: path, ...range }, text: known.instead }];
-  return { range, message, fix: { title: `Write \`${known.instead}\``, edits } };
+  if (known === undefined)
+    return { name: "syntax", range, message: `${show(token)} has no meaning in the notation.` };
+  const message = `${show(token)} has no meaning here: ${known.advice}.`;
+  const mend =
+    known.instead === undefined || token.image.length > 3 ? undefined : { range, text: known.instead };
+  return { name: "syntax", range, message, mend };
 }
 
 /** A token as a message shows it: short, and nothing unprintable. */
@@ -132,7 +176,7 @@ export function show(token: IToken): string {
   return token.tokenType === Text ? clean : `\`${clean}\``;
 }
 
-function extent(token: IToken): Range {
+export function rangeOf(token: IToken): Range {
   return { start: token.startOffset, end: token.startOffset + token.image.length };
 }
 

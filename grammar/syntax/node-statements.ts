@@ -1,4 +1,5 @@
-import { identifier, NOWHERE, rangeOf } from "./expressions.ts";
+import { identifier, NOWHERE } from "./expressions.ts";
+import { rangeOf } from "./messages.ts";
 import {
   AnyArrow,
   Close,

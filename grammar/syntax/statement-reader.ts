@@ -1,27 +1,16 @@
 import { EOF, type IToken } from "chevrotain";
-import { type Finding, type FindingName, type Fix, finding } from "../diagnostics/finding.ts";
-import { nearest } from "../diagnostics/nearest.ts";
+import type { Finding, FindingName } from "../diagnostics/finding.ts";
 import type { Range } from "../source/span.ts";
 import type { SourceText } from "../source/text.ts";
-import { rangeOf, TooDeep } from "./expressions.ts";
+import { TooDeep } from "./expressions.ts";
 import { type NotationParser, notationParser } from "./grammar.ts";
 import { LIMITS } from "./limits.ts";
 import type { Line } from "./lines.ts";
-import { explain, explainSign, show } from "./messages.ts";
-import {
-  AnyArrow,
-  belongs,
-  Comma,
-  Dot,
-  Equals,
-  Greater,
-  Minus,
-  Name,
-  NumberText,
-  OpenIndex,
-  Text,
-} from "./tokens.ts";
+import { explain, explainSign, rangeOf, show } from "./messages.ts";
+import { type Mistake, toFinding } from "./mistake.ts";
+import { AnyArrow, belongs, Comma, Dot, Name, NumberText, OpenIndex, Text } from "./tokens.ts";
 import type { File, Unreadable } from "./tree.ts";
+import { explainHead } from "./unknown-head.ts";
 import type { Declared, LineFacts } from "./value-statements.ts";
 import { ELEMENT_WORDS, FILE_WORDS, STATEMENT_WORDS, SYSTEM_WORDS, TRIAL_WORDS } from "./words.ts";
 
@@ -133,10 +122,8 @@ export class StatementReader {
       if (!(thrown instanceof TooDeep)) throw thrown;
       deep = thrown;
     }
-    if (line.stray !== null) {
-      const { range, message, fix } = explainSign(line.stray, this.#source.path);
-      this.#report("syntax", range, message, fix);
-    } else if (deep !== null) {
+    if (line.stray !== null) this.#tell(explainSign(line.stray));
+    else if (deep !== null) {
       const at = deep.token.tokenType === EOF ? facts.range : rangeOf(deep.token);
       this.#report(
         "too-large",
@@ -144,20 +131,13 @@ export class StatementReader {
         `Brackets, signs and powers may stand ${LIMITS.depth} deep within each other.`,
       );
     } else if (parser.errors.length > 0) {
-      const error = parser.errors[0];
-      const { name, range, message } = explain(error, form, this.#before(line, error.token));
-      this.#report(name, range, message);
+      this.#tell(explain(parser.errors[0], form, line.tokens));
     } else {
-      for (const { name, range, message } of parser.slips) this.#report(name, range, message);
+      for (const slip of parser.slips) this.#tell(slip);
       if (this.#findings.length === before) this.#judgeBrace(form, line);
     }
     const bad = this.#findings.length > before || statement === undefined;
     return bad ? unreadable(facts, parser.declares) : (statement as Read);
-  }
-
-  #before(line: Line, token: IToken): IToken | undefined {
-    const at = line.tokens.indexOf(token);
-    return at === -1 ? line.tokens.at(-1) : line.tokens[at - 1];
   }
 
   #judgeBrace(form: string, line: Line): void {
@@ -167,6 +147,7 @@ export class StatementReader {
         "syntax",
         range,
         `A \`{\` is missing at the end of the line: \`${form}\` holds statements up to its \`}\`.`,
+        { range: { start: range.end, end: range.end }, text: " {" },
       );
     } else if (!BLOCKS.has(form) && line.opens !== null) {
       this.#report(
@@ -198,61 +179,9 @@ export class StatementReader {
     if (ELEMENT_WORDS.has(word)) return "element";
     if (STATEMENT_WORDS.has(word)) return word;
     if (line.tokens.some(({ tokenType }) => belongs(tokenType, AnyArrow))) return "wiring";
-    this.#unknownHead(line, place);
-    return null;
-  }
-
-  #unknownHead(line: Line, place: Place): void {
-    const [head, next] = line.tokens;
-    if (line.stray !== null && (line.stray === head || line.stray === next)) {
-      const { range, message, fix } = explainSign(line.stray, this.#source.path);
-      this.#report("syntax", range, message, fix);
-      return;
-    }
-    if (!isWord(head)) {
-      const hint =
-        belongs(head.tokenType, AnyArrow) || !isWord(head)
-          ? "; a statement goes on only where the line before ends in an operator, an arrow or a comma"
-          : "";
-      this.#report("syntax", rangeOf(head), `A line can't begin with ${show(head)}${hint}.`);
-      return;
-    }
-    if (next?.tokenType === Equals) {
-      const words =
-        place === "trial" ? "`set` or `drive`" : place === "file" ? "`const`" : "`param`, `let` or `output`";
-      this.#report(
-        "syntax",
-        rangeOf(head),
-        `${show(head)} is given a value, but not said what it is; begin the line with ${words}.`,
-      );
-      return;
-    }
-    const at = line.tokens.findIndex(
-      ({ tokenType }, i) => tokenType === Minus && line.tokens[i + 1]?.tokenType === Greater,
-    );
-    if (at !== -1) {
-      const range = { start: line.tokens[at].startOffset, end: line.tokens[at + 1].startOffset + 1 };
-      const edits = [{ span: { file: this.#source.path, ...range }, text: "->" }];
-      this.#report("syntax", range, "A bond is drawn with `->`, without a blank in it.", {
-        title: "Write `->`",
-        edits,
-      });
-      return;
-    }
     const kinds = place === "system" ? [...ELEMENT_WORDS.keys()] : [];
-    const meant = nearest(head.image, [...WORDS[place], ...kinds]);
-    if (meant === null) {
-      this.#report("syntax", rangeOf(head), `${show(head)} begins no statement of a ${place}.`);
-      return;
-    }
-    const span = { file: this.#source.path, ...rangeOf(head) };
-    const fix = { title: `Write \`${meant}\``, edits: [{ span, text: meant }] };
-    this.#report(
-      "syntax",
-      rangeOf(head),
-      `${show(head)} begins no statement; \`${meant}\` was meant, perhaps.`,
-      fix,
-    );
+    this.#tell(explainHead(line.tokens, line.stray, place, [...WORDS[place], ...kinds]));
+    return null;
   }
 
   /** A statement that is known, but not here. */
@@ -298,10 +227,12 @@ export class StatementReader {
     return null;
   }
 
-  #report(name: FindingName, range: Range, message: string, fix?: Fix): void {
-    this.#findings.push(
-      finding(name, { file: this.#source.path, ...range }, message, fix === undefined ? {} : { fix }),
-    );
+  #report(name: FindingName, range: Range, message: string, mend?: Mistake["mend"]): void {
+    this.#tell({ name, range, message, mend });
+  }
+
+  #tell(mistake: Mistake): void {
+    this.#findings.push(toFinding(mistake, this.#source.path));
   }
 }
 
