@@ -15,7 +15,7 @@ import { TwoVersions } from "./two-versions.tsx";
 import { useCore } from "./use-core.ts";
 import { useDraft } from "./use-draft.ts";
 import { useLighting } from "./use-lighting.ts";
-import { useSaving } from "./use-saving.ts";
+import { plainParent, type SaveAnswer, useSaving } from "./use-saving.ts";
 import type { Variables } from "./view-model.ts";
 import { next, opened, type Texts, unsaved as unsavedOf } from "./workspace.ts";
 
@@ -27,6 +27,8 @@ interface FacingPagesProps {
   readonly commit: string | null;
   readonly files: Texts;
   readonly mayWrite: boolean;
+  /** What the server said to the plain form, where the page came from posting it. */
+  readonly answer: SaveAnswer | undefined;
 }
 
 const never = () => () => {};
@@ -38,15 +40,20 @@ const useAlive = () =>
   );
 
 /** A model set opened as a book: the text of one file on the left, what follows from it on the right. */
-export function FacingPages({ person, team, set, path, commit, files, mayWrite }: FacingPagesProps) {
+export function FacingPages({ person, team, set, path, commit, files, mayWrite, answer }: FacingPagesProps) {
   const base = `/sets/${team}/${set}`;
   const alive = useAlive();
   const navigate = useNavigate();
   const location = useLocation();
   const search = useMemo(() => new URLSearchParams(location.search), [location.search]);
-  const [workspace, step] = useReducer(next, null, () => opened(commit, files));
+  const [workspace, step] = useReducer(next, null, () =>
+    (answer?.sent ?? []).reduce(
+      (before, file) => next(before, { kind: "typed", ...file }),
+      opened(commit, files),
+    ),
+  );
   const unsaved = useMemo(() => unsavedOf(workspace), [workspace]);
-  const saving = useSaving(workspace, unsaved, step);
+  const saving = useSaving(workspace, unsaved, step, answer);
   const kept = useDraft(draftKey(person, team, set), workspace, unsaved, step);
   useEffect(() => step({ kind: "loaded", commit, files }), [commit, files]);
 
@@ -87,7 +94,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite }
     [light, term, show, linesOf, goTo, path],
   );
 
-  if (saving.behind !== null) {
+  if (alive && saving.behind !== null) {
     return <TwoVersions behind={saving.behind} onSettled={saving.settle} onBack={saving.back} />;
   }
   const text = workspace.texts.get(path);
@@ -144,7 +151,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite }
           <SaveForm
             ref={messageField}
             base={base}
-            parent={workspace.commit}
+            parent={plainParent(saving.behind) ?? workspace.commit}
             path={path}
             unsaved={unsaved.length}
             alive={alive}

@@ -58,6 +58,13 @@ export function SaveForm({ ref, base, parent, path, unsaved, alive, mayWrite, ke
               {message}
             </span>
           ))}
+          {saving.behind !== null && (
+            <span className="text-warning block">
+              △ {saving.behind.newest.author} saved this file before you:{" "}
+              <a href={`${base}/files/${saving.behind.head}/${path}`}>their text</a>. Yours is above and not
+              saved yet; saving again puts it on top of theirs.
+            </span>
+          )}
           {saving.saying ??
             (unsaved === 0 ? "All saved." : `● ${unsaved} file${unsaved === 1 ? "" : "s"} unsaved.`)}
           {!kept && " The browser keeps no draft of it: save before you close the tab."}

@@ -177,7 +177,9 @@ function Half({ side, same, sign, says }: { side: Line["left"]; same: boolean; s
     <>
       <td className="number">{side?.number}</td>
       <td className={same || side === null ? "text" : sign === "+" ? "text bg-added" : "text bg-removed"}>
-        {!same && side !== null && (
+        {same || side === null ? (
+          "  "
+        ) : (
           <>
             <span aria-hidden="true">{sign} </span>
             <span className="sr-only">{says}: </span>

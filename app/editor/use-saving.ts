@@ -3,8 +3,12 @@ import { useFetcher, useRevalidator } from "react-router";
 import type { Behind } from "./two-versions.tsx";
 import type { Settled, Step, Unsaved, Workspace } from "./workspace.ts";
 
-/** What the server answers to a save. */
-export type SaveAnswer =
+/** What the server answers to a save; to the plain form with the texts it sent, for the page that follows. */
+export type SaveAnswer = Answer & {
+  readonly sent?: readonly { readonly path: string; readonly text: string }[];
+};
+
+type Answer =
   | {
       readonly kind: "saved";
       readonly commit: { readonly oid: string; readonly message: string };
@@ -30,13 +34,20 @@ export interface Saving {
   back(): void;
 }
 
-export function useSaving(workspace: Workspace, unsaved: readonly Unsaved[], step: Dispatch<Step>): Saving {
+/** `first` is what the server said to the plain form, before the scripts were there. */
+export function useSaving(
+  workspace: Workspace,
+  unsaved: readonly Unsaved[],
+  step: Dispatch<Step>,
+  first: SaveAnswer | undefined,
+): Saving {
   const fetcher = useFetcher<SaveAnswer>();
   const { revalidate } = useRevalidator();
   const sent = useRef<readonly Unsaved[]>([]);
   const [dealtWith, setDealtWith] = useState<SaveAnswer | undefined>();
   const [message, setMessage] = useState("");
-  const answer = fetcher.data === dealtWith ? undefined : fetcher.data;
+  const newest = fetcher.data ?? first;
+  const answer = newest === dealtWith ? undefined : newest;
 
   useEffect(() => {
     if (fetcher.data?.kind !== "saved") return;
@@ -78,4 +89,9 @@ function sayingOf(busy: boolean, answer: SaveAnswer | undefined): string | null 
   }
   if (answer?.kind === "unchanged") return "The set holds this text already; there is nothing to save.";
   return null;
+}
+
+/** Without scripts the form itself must name the version that the text is now to be saved on. */
+export function plainParent(behind: Behind | null): string | undefined {
+  return behind?.head;
 }

@@ -93,7 +93,9 @@ function Title({
         )}
         {system.model !== null && <p className="note">{factsOf(system.model)}</p>}
       </div>
-      {system.description !== null && <p className="max-w-[60ch] text-faded">{system.description}</p>}
+      {system.description !== null && (
+        <p className="max-w-[60ch] text-faded mt-0.5 leading-snug">{system.description}</p>
+      )}
       <nav aria-label="Parts of this page" className="part-list no-print">
         {parts.map((part) => (
           <a key={part} href={`#${idOf(part)}`}>
@@ -114,8 +116,7 @@ function Results(props: WhatFollowsProps & { system: NonNullable<CoreState["syst
       <Expectations expectations={system.expectations} />
       {core.stale && (
         <p className="stale-note" role="status">
-          <span aria-hidden="true">⌛ </span>Equations, states and outputs are from the last text without
-          errors.
+          Equations, states and outputs are from the last text without errors.
         </p>
       )}
       {model !== null && (

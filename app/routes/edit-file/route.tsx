@@ -22,7 +22,7 @@ export function shouldRevalidate(args: ShouldRevalidateFunctionArgs): boolean {
   return formMethod === undefined && currentUrl.href === nextUrl.href;
 }
 
-export default function EditFile({ loaderData, params }: Route.ComponentProps) {
+export default function EditFile({ loaderData, actionData, params }: Route.ComponentProps) {
   const root = useRouteLoaderData<typeof rootLoader>("root");
   const files = useMemo(() => new Map(loaderData.files), [loaderData.files]);
   const { team, set } = loaderData;
@@ -36,6 +36,7 @@ export default function EditFile({ loaderData, params }: Route.ComponentProps) {
       commit={loaderData.commit}
       files={files}
       mayWrite={loaderData.may.includes("set.write")}
+      answer={actionData}
     />
   );
 }
