@@ -1,7 +1,7 @@
 import type { CausalGraph, Stroke } from "../causality/strokes.ts";
 import type { Finding, FindingName } from "../diagnostics/finding.ts";
 import type { StateModel } from "../equations/model.ts";
-import type { FlatGraph, FlatNode, NodeKind } from "../resolve/graph.ts";
+import type { FlatBond, FlatGraph, FlatNode, NodeKind } from "../resolve/graph.ts";
 import type { Span } from "../source/span.ts";
 
 /**
@@ -62,6 +62,10 @@ export function diagramModel(
   const dependent = dependentNodes(causal, model);
   const conflicts = findings.filter(({ name }) => CONFLICTS.has(name)).map(({ span }) => span);
   const inConflict = (span: Span) => conflicts.some((conflict) => nested(conflict, span));
+  // A bond has no room for the word: what it meets at carries it.
+  const meeting = new Set(
+    graph.bonds.filter(({ span }) => inConflict(span)).flatMap((bond) => meetingOf(graph, bond)),
+  );
   return {
     system: graph.system,
     nodes: graph.nodes.map((node) => ({
@@ -71,7 +75,7 @@ export function diagramModel(
       domain: node.domain?.name ?? null,
       description: node.description,
       dependent: dependent.has(node.index),
-      conflict: inConflict(node.span),
+      conflict: inConflict(node.span) || meeting.has(node.index),
       span: node.span,
     })),
     bonds: graph.bonds.map((bond) => ({
@@ -93,6 +97,12 @@ export function diagramModel(
 function dependentNodes(causal: CausalGraph | null, model: StateModel | null): ReadonlySet<number> {
   if (model !== null) return new Set(model.dependent.map(({ node }) => node));
   return new Set((causal?.stores ?? []).filter(({ integral }) => !integral).map(({ node }) => node));
+}
+
+/** The ends of a bond that pass causality on; both where neither does. */
+function meetingOf(graph: FlatGraph, { from, to }: FlatBond): number[] {
+  const passing = [from, to].filter((node) => graph.nodes[node].ports.length > 1);
+  return passing.length > 0 ? passing : [from, to];
 }
 
 function symbolOf(node: FlatNode): string {
