@@ -1,7 +1,7 @@
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { describe } from "./describe.ts";
 import { type DraftNode, type Instance, spanOf, type Value } from "./draft.ts";
-import { fixedNumber, workOut } from "./evaluate-values.ts";
+import { workOut } from "./evaluate-values.ts";
 import { spanIn } from "./files.ts";
 import type {
   Domain,
@@ -17,6 +17,7 @@ import type {
   FlatTrack,
 } from "./graph.ts";
 import { lawsOf } from "./laws.ts";
+import { fixedNumber } from "./numbers.ts";
 import { portNames } from "./port-variables.ts";
 import { translateReference } from "./references.ts";
 import { plainScope } from "./scope.ts";
@@ -167,7 +168,13 @@ function flatInput(translator: Translator, value: Value): FlatInput[] {
 }
 
 function flatOutput(value: Value): FlatOutput[] {
-  if (value.statement.kind !== "output" || value.unit === null || value.typed === null) return [];
+  if (
+    value.statement.kind !== "output" ||
+    value.unit === null ||
+    value.typed === null ||
+    value.typed.measure === "unknown"
+  )
+    return [];
   const span = spanOf(value.instance, value.statement.range);
   return [
     {

@@ -2,8 +2,8 @@ import type { Finding } from "../diagnostics/finding.ts";
 import { finding } from "../diagnostics/finding.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import { Draft, NO_INDICES } from "./draft.ts";
-import { fileConst } from "./evaluate-values.ts";
 import { type SourceFile, spanIn } from "./files.ts";
+import { fileConst } from "./parameters.ts";
 import { plainScope } from "./scope.ts";
 import { Translator, unknownUnit } from "./translate.ts";
 

@@ -9,7 +9,6 @@ import type {
   Unreadable,
   Wiring,
 } from "../syntax/tree.ts";
-import { RESERVED_NAMES } from "../syntax/words.ts";
 import {
   type Draft,
   type DraftNode,
@@ -148,8 +147,6 @@ class Expansion {
       return;
     }
     if (high < low || depth > 100) return;
-    if (RESERVED_NAMES.has(statement.index.text))
-      this.#reserved(instance, statement.index.text, statement.index.range);
     for (let i = low; i <= high; i += 1) {
       this.#statements += 1;
       if (this.#statements > MOST_STATEMENTS || draft.bonds.length > MOST_BONDS) {
@@ -227,7 +224,6 @@ class Expansion {
       draft.broken = true;
       return null;
     }
-    if (RESERVED_NAMES.has(name.name.text)) this.#reserved(instance, name.name.text, name.name.range);
     const other = instance.nodes.get(local);
     if (other === undefined) return local;
     if (other.kind === "node") other.suspect = true;
@@ -248,7 +244,6 @@ class Expansion {
         ? statement.name.text
         : fullName(draft, { ...statement, range }, instance, indices);
     if (text === null) return;
-    if (RESERVED_NAMES.has(statement.name.text)) this.#reserved(instance, text, range);
     const other = instance.values.get(text);
     if (other !== undefined) {
       const again = other.statement === statement;
@@ -352,16 +347,6 @@ class Expansion {
         `There is no system \`${name}\`.`,
         name,
         meant === null ? [] : [meant],
-      ),
-    );
-  }
-
-  #reserved(instance: Instance, name: string, range: { start: number; end: number }): void {
-    this.#draft.report(
-      finding(
-        "reserved-name",
-        spanOf(instance, range),
-        `\`${name}\` is kept by the notation for itself and can't be declared.`,
       ),
     );
   }

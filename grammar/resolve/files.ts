@@ -12,7 +12,6 @@ import type {
   Use,
   ValueDeclaration,
 } from "../syntax/tree.ts";
-import { RESERVED_NAMES } from "../syntax/words.ts";
 import { parseUnit } from "../units/parse-unit.ts";
 import { DOMAINS, declaredDomain } from "./domains.ts";
 import type { Domain } from "./graph.ts";
@@ -281,9 +280,6 @@ export class Library {
     item: T,
   ): void {
     const { text, range } = item.name;
-    if (RESERVED_NAMES.has(text)) {
-      this.#report(finding("reserved-name", spanIn(file, range), `\`${text}\` is reserved by the notation.`));
-    }
     const other = names.get(text);
     if (other === undefined) names.set(text, { file, item });
     else {

@@ -26,13 +26,13 @@ export interface Group {
  * Gives every bond its domain: as declared anywhere in its group; else the one domain in which the laws of the
  * elements at it work out; transformers, gyrators and fields carry it on to the next group.
  */
-export function inferDomains(translator: Translator): void {
+export function inferDomains(translator: Translator): readonly Group[] {
   const { draft } = translator;
   const groups = groupBonds(draft);
   declare(draft);
   new Inference(translator, groups).settleByLaws();
-  for (const group of groups) if (group.domain === null && !group.silent) reportUnknown(draft, group);
   if (groups.some(({ domain }) => domain === null)) draft.broken = true;
+  return groups;
 }
 
 function groupBonds(draft: Draft): Group[] {
@@ -237,7 +237,7 @@ class Inference {
     const open = new Set<Group>();
     for (const end of node.ends) {
       const { group } = finalBond(end.bond);
-      if (group !== null && group.domain === null) open.add(group);
+      if (group !== null && group.domain === null && !group.silent) open.add(group);
     }
     return [...open];
   }
@@ -259,9 +259,13 @@ class Inference {
   }
 }
 
-function reportUnknown(draft: Draft, group: Group): void {
-  // A slip elsewhere may be why the laws tell nothing; it is mended first.
+/** Said last: a slip in a law or a value may be why the laws tell nothing, and is mended first. */
+export function reportUnknownDomains(draft: Draft, groups: readonly Group[]): void {
   if (draft.unread || draft.findings.some(({ severity }) => severity === "error")) return;
+  for (const group of groups) if (group.domain === null && !group.silent) reportUnknown(draft, group);
+}
+
+function reportUnknown(draft: Draft, group: Group): void {
   const nodes = group.bonds.flatMap(({ from, to }) => [from, to]);
   const node = nodes.find(({ type }) => isJunction(type)) ?? nodes[0];
   const some =

@@ -4,7 +4,7 @@ import { type DraftNode, spanOf } from "./draft.ts";
 import type { FlatLaw } from "./graph.ts";
 import { endOf, lawScope, type OwnVariable, ownVariable, type Variable } from "./law-scope.ts";
 import { linearLaw } from "./linear-law.ts";
-import { finalBond } from "./port-variables.ts";
+import { finalBond, portNames } from "./port-variables.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
 import { twoPortLaw } from "./two-port-law.ts";
@@ -28,7 +28,7 @@ const JOINS: Readonly<Record<string, readonly Variable[]>> = {
 /** The laws of an element in normal form; what is wrong with them is reported and left out. */
 export function lawsOf(translator: Translator, node: DraftNode): Laws {
   const { declaration } = node;
-  if (declaration.kind !== "element") return NONE;
+  if (declaration.kind !== "element" || !isWired(node)) return NONE;
   const used: OwnVariable[] = [];
   const scope = lawScope(node, used);
   translator.signal = false;
@@ -62,6 +62,14 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
   }
   checkPorts(translator, node, laws, scope, declaration.laws.length);
   return { laws, modulated: checkStore(translator, node, scope) };
+}
+
+/** What is not wired was reported; its law has no variables to speak of. */
+function isWired(node: DraftNode): boolean {
+  const names = portNames(node);
+  return names === null
+    ? node.ends.length > 0
+    : names.every((name) => node.ends.some(({ port }) => port === name));
 }
 
 function isEnergy(law: Law): boolean {

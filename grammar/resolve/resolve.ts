@@ -8,7 +8,7 @@ import { checkElements } from "./elements.ts";
 import { expand, type FindSystem } from "./expand.ts";
 import { Library, type Parse, type SourceFile } from "./files.ts";
 import type { FlatGraph } from "./graph.ts";
-import { inferDomains } from "./infer-domains.ts";
+import { inferDomains, reportUnknownDomains } from "./infer-domains.ts";
 import { joinPorts } from "./join-ports.ts";
 import { systemNotes, unusedFunctions } from "./notes.ts";
 import { numberBonds } from "./number-bonds.ts";
@@ -53,9 +53,10 @@ function resolveSystem(system: System, file: SourceFile, findSystem: FindSystem)
   numberBonds(draft);
   const translator = new Translator(draft);
   workOutParameters(translator);
-  inferDomains(translator);
+  const groups = inferDomains(translator);
   workOutSignals(translator);
   const graph = assemble(translator);
+  reportUnknownDomains(draft, groups);
   systemNotes(draft, system, file);
   return { name, graph, findings: draft.findings };
 }

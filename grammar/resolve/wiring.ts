@@ -73,6 +73,14 @@ function place(draft: Draft, instance: Instance, end: Reference, indices: Indice
       (node) => node.kind === "node" && node.type === "port",
     ) as DraftNode[];
     const list = ports.map(({ local }) => `\`${first.name.text}.${local}\``).join(", ");
+    if (
+      second === undefined ||
+      end.path.length > 2 ||
+      !ports.some(({ local }) => local === second.name.text)
+    ) {
+      // One of its ports was meant, so that none is called unwired on top.
+      for (const port of ports) port.suspect = true;
+    }
     if (second === undefined) {
       return refuse(
         "unknown-name",

@@ -5,10 +5,10 @@ import type { Dimension, Unit } from "./unit.ts";
 
 /** How the trade writes what its models are made of, where base units alone would be harder to read. */
 const HABITS = [
-  ..."N N/m N*s N*s/m N*s^2/m m/N m/s".split(" "),
-  ..."N*m*s kg*m^2 1/s J J/K W W/K Pa Pa*s Pa*s/m^3 Pa*s^2/m^3 m^3/s m^3/Pa m^5/N".split(" "),
-  ..."V A C ohm S H F Wb T V/m A/m H/m V*s^2 A/s V/s K K/W W*s^2 J/mol mol/s J/kg kg/s kg/m^3".split(" "),
-  ..."N/A N/s Pa/s W/m^2 W/s J/m^3 m/s^2 lm lx".split(" "),
+  ..."N kg N/m N*s N*s/m m/N m/s m/s^2".split(" "),
+  ..."N*m*s kg*m^2 1/s J J/K W W/K Pa Pa*s Pa*s/m^3 Pa*s^2/m^3 m^3/s m^3/Pa".split(" "),
+  ..."V A C ohm S H F Wb T V/m A/m H/m A/s V/s K K/W J/mol mol/s J/kg kg/s kg/m^3".split(" "),
+  ..."N/A N/s Pa/s W/m^2 W/s J/m^3".split(" "),
 ];
 
 /** Heads that a compound may be built on where no habit fits; base units make up the rest. */
