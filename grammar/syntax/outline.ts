@@ -5,6 +5,7 @@ import type { Range } from "../source/span.ts";
 import type { SourceText } from "../source/text.ts";
 import { LIMITS } from "./limits.ts";
 import type { Line } from "./lines.ts";
+import { toFinding } from "./mistake.ts";
 import { type Place, StatementReader } from "./statement-reader.ts";
 import type { File, FileItem, Repeat, Statement, System, Trial, TrialStatement, Unreadable } from "./tree.ts";
 
@@ -51,7 +52,7 @@ export class OutlineReader {
   read(lines: readonly Line[]): Outline {
     for (const { opens, closes } of lines)
       this.#missing += (opens === null ? 0 : 1) - (closes === null ? 0 : 1);
-    for (const line of lines) {
+    for (const line of this.#withBraces(lines)) {
       if (line.closes !== null) this.#closeAt(line.closes);
       else this.#statement(line);
     }
@@ -61,6 +62,34 @@ export class OutlineReader {
       edition: this.#reader.edition,
       balanced: this.#balanced,
     };
+  }
+
+  /** A head without its brace is one slip: the brace of the next line is taken, or one is thought of where a `}` waits. */
+  #withBraces(lines: readonly Line[]): readonly Line[] {
+    const braced: Line[] = [];
+    const lastClose = lines.findLastIndex(({ closes }) => closes !== null);
+    for (let i = 0; i < lines.length; i += 1) {
+      const line = lines[i];
+      const next = lines.at(i + 1);
+      const alone = next !== undefined && next.tokens.length === 0 && next.opens !== null;
+      const closedLater = this.#missing < 0 && i < lastClose;
+      if (!this.#reader.wantsBrace(line) || !(alone || closedLater)) {
+        braced.push(line);
+        continue;
+      }
+      const last = line.tokens[line.tokens.length - 1];
+      const at = last.startOffset + last.image.length;
+      const opens = alone ? next.opens : { ...last, image: "", startOffset: at };
+      const end = alone ? (next.opens as IToken).startOffset + 1 : at;
+      const message = `The \`{\` of \`${line.tokens[0].image}\` stands at the end of its line; it is missing there.`;
+      const mend = { range: { start: at, end }, text: " {" };
+      this.#report(toFinding({ name: "syntax", range: extent(last), message, mend }, this.#source.path));
+      this.#balanced = false;
+      if (alone) i += 1;
+      else this.#missing += 1;
+      braced.push({ ...line, opens });
+    }
+    return braced;
   }
 
   #statement(line: Line): void {

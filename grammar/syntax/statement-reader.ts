@@ -83,6 +83,13 @@ export class StatementReader {
     return isWord(second) || (first.image === "use" && second.tokenType === Text);
   }
 
+  /** Is this the head of a block, without its brace? */
+  wantsBrace({ tokens: [first, second], opens }: Line): boolean {
+    return (
+      opens === null && first?.tokenType === Name && BLOCKS.has(first.image) && second?.tokenType === Name
+    );
+  }
+
   /** null for `notation`, which is no item of the file. */
   read(line: Line, place: Place): Read | null {
     const range = extent(line);
