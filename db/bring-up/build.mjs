@@ -1,7 +1,8 @@
 import { spawnSync } from "node:child_process";
 import { createHash } from "node:crypto";
-import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { existsSync, linkSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
+import { holderOf, stampOfThis } from "./holder.mjs";
 import { ROOT } from "./home.mjs";
 import { Said } from "./said.mjs";
 
@@ -36,19 +37,47 @@ const COMMANDS = {
 };
 
 /**
- * Builds the parts whose sources changed since they were last built here.
+ * Builds the parts whose sources changed since they were last built here. Processes that want this at the same
+ * moment take turns.
  * @param {Part[]} parts
  */
 export function buildWhenChanged(parts) {
-  for (const part of parts) {
-    const now = hashOf([...SOURCES[part].flatMap(filesIn), ...ALWAYS]);
-    const mark = join(ROOT, "build", `${part}.sources`);
-    if (existsSync(mark) && readFileSync(mark, "utf8") === now) continue;
-    rmSync(mark, { force: true });
-    console.log(`Building ${TITLES[part]} …`);
-    build(part);
-    mkdirSync(join(ROOT, "build"), { recursive: true });
-    writeFileSync(mark, now);
+  const lock = join(ROOT, "build", ".lock");
+  mkdirSync(join(ROOT, "build"), { recursive: true });
+  while (!taken(lock)) Atomics.wait(new Int32Array(new SharedArrayBuffer(4)), 0, 0, 200);
+  try {
+    for (const part of parts) buildIfChanged(part);
+  } finally {
+    rmSync(lock, { force: true });
+  }
+}
+
+/** @param {Part} part */
+function buildIfChanged(part) {
+  const now = hashOf([...SOURCES[part].flatMap(filesIn), ...ALWAYS]);
+  const mark = join(ROOT, "build", `${part}.sources`);
+  if (existsSync(mark) && readFileSync(mark, "utf8") === now) return;
+  rmSync(mark, { force: true });
+  console.log(`Building ${TITLES[part]} …`);
+  build(part);
+  writeFileSync(mark, now);
+}
+
+/**
+ * Takes a lock file for this process, unless a living one has it.
+ * @param {string} lock
+ */
+function taken(lock) {
+  const own = `${lock}-${process.pid}`;
+  writeFileSync(own, stampOfThis());
+  try {
+    linkSync(own, lock); // all at once: nobody sees a lock without its holder
+    return true;
+  } catch {
+    if (holderOf(lock) === null) rmSync(lock, { force: true });
+    return false;
+  } finally {
+    rmSync(own, { force: true });
   }
 }
 

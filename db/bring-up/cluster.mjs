@@ -12,6 +12,7 @@ import {
 } from "node:fs";
 import { join } from "node:path";
 import { postgresPrograms } from "./debian.mjs";
+import { holderOf, stampOfThis } from "./holder.mjs";
 import { asPostgres, home } from "./home.mjs";
 import { Said } from "./said.mjs";
 import { freePort } from "./serve.mjs";
@@ -70,7 +71,7 @@ function sweep() {
   for (const name of readdirSync(home()).filter((entry) => entry.startsWith("test-"))) {
     const folder = join(home(), name);
     const data = join(folder, "data");
-    if (!existsSync(join(folder, "owner")) || ownerOf(folder) !== null) continue; // just being made, or in use
+    if (!existsSync(join(folder, "owner")) || holderOf(join(folder, "owner")) !== null) continue; // just being made, or in use
     if (existsSync(data) && running(data)) pgCtl(data, ["stop", "-m", "immediate"]);
     rmSync(folder, { recursive: true, force: true });
   }
@@ -124,34 +125,10 @@ function initialise(folder, data) {
  * @param {string} folder
  */
 function own(folder) {
-  const owner = ownerOf(folder);
+  const owner = holderOf(join(folder, "owner"));
   if (owner !== null)
     throw new Said(`Process ${owner} already runs on the database in ${folder}: stop it first.`);
-  writeFileSync(join(folder, "owner"), stamp(process.pid) ?? "");
-}
-
-/**
- * The living process that holds a cluster, if any.
- * @param {string} folder
- */
-function ownerOf(folder) {
-  const file = join(folder, "owner");
-  const held = existsSync(file) ? readFileSync(file, "utf8") : "";
-  const pid = Number(held.split(" ")[0]);
-  return pid > 0 && stamp(pid) === held ? pid : null;
-}
-
-/**
- * A process number with the time it was started, since numbers are used again; null where there is none.
- * @param {number} pid
- */
-function stamp(pid) {
-  try {
-    const stat = readFileSync(`/proc/${pid}/stat`, "utf8");
-    return `${pid} ${stat.slice(stat.lastIndexOf(")")).split(" ")[20]}`; // field 22 of proc(5): starttime
-  } catch {
-    return null;
-  }
+  writeFileSync(join(folder, "owner"), stampOfThis());
 }
 
 /** @param {string} data */
