@@ -223,8 +223,12 @@ export class ExpressionParser extends EmbeddedActionsParser {
     if (this.#depth > LIMITS.depth) throw new TooDeep(this.LA(1));
   }
 
+  /** A unit stands on the line of its number. */
   #unitFollows(): boolean {
     const next = this.LA(1);
+    for (let at = ends(this.LA(0)); at < next.startOffset; at += 1) {
+      if (this.text[at] === "\n" || this.text[at] === "\r") return false;
+    }
     if (next.tokenType === Name || next.tokenType === Percent) return true;
     const after = this.LA(2);
     return next.image === "1" && after.tokenType === Slash && after.startOffset === next.startOffset + 1;

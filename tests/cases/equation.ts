@@ -18,7 +18,11 @@ export function holds({ kind, left, right }: ExpectedEquation, report: FileRepor
       ? model.equations.find(({ state }) => `${state}'` === left)?.rate
       : model.outputs.find(({ name }) => name === left)?.value;
   if (found === undefined) return `there is no ${kind} of ${left}`;
-  const symbols = new Map<string, Expr>([["time", graph.pool.symbol("time", "time")]]);
+  const symbols = new Map<string, Expr>([
+    ["time", graph.pool.symbol("time", "time")],
+    ["g0", graph.pool.symbol("constant", "g0")],
+    ["pi", graph.pool.symbol("constant", "pi")],
+  ]);
   for (const { name, symbol } of [...graph.parameters, ...graph.inputs, ...model.states])
     symbols.set(name, symbol);
   const wanted = translate(graph.pool, read(right), symbols);
