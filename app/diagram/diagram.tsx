@@ -13,6 +13,9 @@ export interface DiagramProps {
   readonly onOpen: (span: Span) => void;
 }
 
+/** More than this no page draws in useful time, and nobody reads. */
+const MOST_ELEMENTS = 3000;
+
 /** The bond graph of a system as the trade draws it, or the table that says the same. */
 export function Diagram({ model, lit, onLight, onOpen }: DiagramProps) {
   const [asTable, setAsTable] = useState(false);
@@ -33,6 +36,14 @@ export function Diagram({ model, lit, onLight, onOpen }: DiagramProps) {
     const found = (kind === "node" ? model.nodes : model.bonds).find((one) => one.id === id);
     if (found !== undefined) onOpen(found.span);
   }, []);
+  if (model.nodes.length > MOST_ELEMENTS) {
+    return (
+      <p className="note">
+        {model.system} has {model.nodes.length} elements and {model.bonds.length} bonds: more than{" "}
+        {MOST_ELEMENTS} elements are not drawn. Draw the systems it is made of instead.
+      </p>
+    );
+  }
   const asTableButton = (
     <button type="button" className="button" aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
       As a table

@@ -2,7 +2,12 @@ import { useEffect, useMemo, useRef, useState } from "react";
 import type { DiagramModel } from "../../grammar/writing/diagram-model.ts";
 import type { Drawing } from "../../grammar/writing/drawing.ts";
 import { arrange } from "../../grammar/writing/drawing-arrange.ts";
-import { type LayoutAnswer, layoutKey, layoutRequest } from "../../grammar/writing/drawing-layout.ts";
+import {
+  type LayoutAnswer,
+  layoutKey,
+  layoutRequest,
+  lookKey,
+} from "../../grammar/writing/drawing-layout.ts";
 import { placeDrawing } from "../../grammar/writing/drawing-place.ts";
 import { layoutInWorker } from "./layout.client.ts";
 
@@ -19,11 +24,12 @@ interface LaidOut {
 }
 
 /**
- * The drawing of a model. A change that only laws, strokes or names of parameters show in is redrawn at once with the
- * layout there is; a change of structure asks the worker, and answers that are overtaken are dropped.
+ * The drawing of a model. A change of strokes or marks is redrawn at once with the layout there is, one of laws or of
+ * lines is not redrawn at all; a change of structure asks the worker, and answers that are overtaken are dropped.
  */
 export function useDrawing(model: DiagramModel): DrawingState {
   const key = useMemo(() => layoutKey(model), [model]);
+  const look = useMemo(() => lookKey(model), [model]);
   const [laidOut, setLaidOut] = useState<LaidOut | null>(null);
   const [fault, setFault] = useState<string | null>(null);
   const shown = useRef<Drawing | null>(null);
@@ -46,10 +52,11 @@ export function useDrawing(model: DiagramModel): DrawingState {
     };
   }, [key]);
 
+  // biome-ignore lint/correctness/useExhaustiveDependencies: `look` stands for all of the model that is drawn
   const drawing = useMemo(() => {
     if (laidOut === null || laidOut.key !== key) return null;
-    return placeDrawing(model, laidOut.answer, sameSystem(shown.current, model));
-  }, [laidOut, key, model]);
+    return placeDrawing(newest.current, laidOut.answer, sameSystem(shown.current, newest.current));
+  }, [laidOut, key, look]);
 
   useEffect(() => {
     if (drawing !== null) shown.current = drawing;

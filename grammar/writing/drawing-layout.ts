@@ -96,5 +96,10 @@ function ports(side: "in" | "out", bonds: readonly number[], x: number, level: n
 /** What the layout depends on: as long as this stays the same, a drawing can be remade without a new layout. */
 export function layoutKey(model: DiagramModel): string {
   const nodes = model.nodes.map(({ id, symbol, dependent, conflict }) => [id, symbol, dependent || conflict]);
-  return JSON.stringify([nodes, model.bonds.map(({ from, to }) => [from, to])]);
+  return JSON.stringify([nodes, model.bonds.map(({ from, to, domain }) => [from, to, domain])]);
+}
+
+/** What a drawing shows, all but the places in the text: while this stays the same, there is nothing to draw anew. */
+export function lookKey(model: DiagramModel): string {
+  return JSON.stringify(model, (name, value) => (name === "span" ? undefined : value));
 }

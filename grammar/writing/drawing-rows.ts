@@ -84,7 +84,7 @@ function hubName(
   if (named === "over") return moved(nameAbove(node), -lift);
   if (named === "under") return moved(nameBelow(node), lift);
   // Right of every bond to the row, also where these lean over.
-  const lean = Math.max(0, ...(named === -1 ? up : down).map(({ at }) => at.x / Math.abs(at.y)));
+  const lean = largest((named === -1 ? up : down).map(({ at }) => at.x / Math.abs(at.y)));
   const { at } = aside(node, named, lift);
   return { at: { x: at.x + lean * (Math.abs(at.y) + writtenHeight(node)), y: at.y }, anchor: "start" };
 }
@@ -121,7 +121,7 @@ function placeRow(
   lift: number,
   named: boolean,
 ): Member[] {
-  const inwards = Math.max(0, ...row.map((item) => item.inwards));
+  const inwards = largest(row.map((item) => item.inwards));
   const outwards = symbolHalf(hub).y + lift;
   const between = named ? Math.max(SHORTEST_BOND, writtenHeight(hub) + 8) : SHORTEST_BOND;
   const y = side * Math.max(REACH, 12 * row.length + 26, outwards + between + inwards);
@@ -179,4 +179,9 @@ function hangingItem(model: DiagramModel, spine: Spine, { node }: Hanging): Item
   const inwards =
     Math.max(symbolHalf(own).y, tallest) + Math.max(0, writtenHeight(own) + 4 - SHORTEST_BOND / 2);
   return { width: 2 * half, inwards, hangs: true, place };
+}
+
+/** At least 0; a row may be too long to be handed on as arguments. */
+function largest(values: readonly number[]): number {
+  return values.reduce((most, value) => Math.max(most, value), 0);
 }
