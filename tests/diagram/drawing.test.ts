@@ -1,4 +1,4 @@
-import { describe, expect, it } from "vitest";
+import { describe, expect, it, vi } from "vitest";
 import { type Box, boxOf, type Drawing, type Point } from "../../grammar/writing/drawing.ts";
 import { layoutKey } from "../../grammar/writing/drawing-layout.ts";
 import { drawingSvg } from "../../grammar/writing/drawing-svg.ts";
@@ -7,6 +7,9 @@ import { randomGraph } from "../published/random-graph.ts";
 import { clashes } from "./clashes.ts";
 import { drawn } from "./drawn.ts";
 import { BRIDGE, GEARED, HOIST, MARKED, massChain, sketched } from "./sketched.ts";
+
+// A layout of a thousand elements takes a second, and several on a machine with other work.
+vi.setConfig({ testTimeout: 60_000 });
 
 const SKETCHES: [name: string, sketch: string][] = [
   ["hoist", HOIST],

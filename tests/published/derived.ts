@@ -1,4 +1,5 @@
 import { expect } from "vitest";
+import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
 import type { StateModel } from "../../grammar/equations/model.ts";
 import { checkFile } from "../../grammar/pipeline.ts";
 import { fileSet } from "../../grammar/source/text.ts";
@@ -22,6 +23,11 @@ export function derived(body: string): Derived {
   const model = systems[0].model;
   if (model === null) throw new Error("no state model was derived");
   return { model, findings: findings.filter(({ severity }) => severity !== "note").map(({ name }) => name) };
+}
+
+/** The same with velocities, currents, voltages, forces and pressures as the states: the form that books print. */
+export function inCoEnergyVariables({ model, findings }: Derived): Derived {
+  return { model: inCoEnergy(model), findings };
 }
 
 /** What a source says of a model: rates by state, values by dependent store and by output, in its own formulas. */
