@@ -4,6 +4,7 @@ import { checkFile } from "../../grammar/pipeline.ts";
 import { fileSet } from "../../grammar/source/text.ts";
 import { evaluate } from "../../grammar/symbolic/evaluate.ts";
 import type { Expr, Symbol } from "../../grammar/symbolic/expression.ts";
+import { expressionText } from "../../grammar/writing/text.ts";
 import { seeded } from "./derived.ts";
 import { type RandomGraph, randomGraph, textOf } from "./random-graph.ts";
 import { solvedWithoutCausality } from "./rates-without-causality.ts";
@@ -55,6 +56,16 @@ describe("random graphs, all relations solved at once", () => {
     }
   });
 
+  it.each(accepted)(
+    "graph $seed gives the same text whatever the order of its lines",
+    ({ seed, graph, model }) => {
+      const shuffled = shuffle(textOf(graph).split("\n"), seeded(`lines ${seed}`)).join("\n");
+      const again = modelOf(shuffled);
+      if (again === null) throw new Error("refused in another order");
+      expect(textsOf(again)).toEqual(textsOf(model));
+    },
+  );
+
   it.each(refused)(
     "graph $seed is refused, and its relations contradict each other at every state",
     ({ graph }) => {
@@ -75,13 +86,35 @@ function sorted(wanted: number): { accepted: Accepted[]; refused: Omit<Accepted,
   const refused: Omit<Accepted, "model">[] = [];
   for (let seed = 1; accepted.length < wanted; seed += 1) {
     const graph = randomGraph(seeded(`graph ${seed}`));
-    const text = `notation 1\nsystem Random {\n${textOf(graph)}\n}\n`;
-    const { systems } = checkFile(fileSet([["random.wright", text]]), "random.wright");
-    const model = systems[0].model;
+    const model = modelOf(textOf(graph));
     if (model === null) refused.push({ seed, graph });
     else accepted.push({ seed, graph, model });
   }
   return { accepted, refused };
+}
+
+function modelOf(body: string): StateModel | null {
+  const text = `notation 1\nsystem Random {\n${body}\n}\n`;
+  return checkFile(fileSet([["random.wright", text]]), "random.wright").systems[0].model;
+}
+
+function textsOf(model: StateModel): readonly string[] {
+  return [
+    ...model.equations.map(({ state, rate }) => `${state}' = ${expressionText(rate)}`),
+    ...model.dependent.map(
+      ({ name, value, rate }) => `${name} = ${expressionText(value)}, ' = ${expressionText(rate)}`,
+    ),
+  ];
+}
+
+/** Fisher and Yates's shuffle. */
+function shuffle<T>(items: readonly T[], draw: () => number): T[] {
+  const shuffled = [...items];
+  for (let i = shuffled.length - 1; i > 0; i -= 1) {
+    const j = Math.floor(draw() * (i + 1));
+    [shuffled[i], shuffled[j]] = [shuffled[j], shuffled[i]];
+  }
+  return shuffled;
 }
 
 function agree(
