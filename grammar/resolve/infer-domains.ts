@@ -87,6 +87,8 @@ function declare(draft: Draft): void {
       }
     }
   }
+  // Where two declarations disagree, neither is taken: what follows from either would be a guess.
+  for (const bond of draft.bonds) if (bond.group?.silent === true) bond.group.domain = null;
   for (const bond of draft.bonds) bond.domain = bond.group?.domain ?? null;
 }
 

@@ -2,16 +2,11 @@ import { evaluate } from "../symbolic/evaluate.ts";
 import type { Expr } from "../symbolic/expression.ts";
 import type { Expression } from "../syntax/tree.ts";
 import { DIMENSIONLESS, equal } from "../units/dimension.ts";
-import { parseUnit } from "../units/parse-unit.ts";
-import type { Dimension, Unit } from "../units/unit.ts";
+import type { Unit } from "../units/unit.ts";
 import { unitOf } from "../units/unit-text.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
 import { isDimension, type Measure } from "./typed.ts";
-
-const _SECOND: Dimension = [0, 0, 1, 0, 0, 0, 0];
-const _RADIAN = parseUnit("rad") as Unit;
-const _DEEPEST = 200;
 
 export function numberOf(translator: Translator, expr: Expr): number {
   if (expr.op === "number") return expr.value;

@@ -1,8 +1,7 @@
 import { finding } from "../diagnostics/finding.ts";
 import type { Range } from "../source/span.ts";
 import type { CurveDeclaration, Expression, FunctionDeclaration, ValueDeclaration } from "../syntax/tree.ts";
-import { parseUnit } from "../units/parse-unit.ts";
-import type { Dimension, Unit } from "../units/unit.ts";
+import type { Unit } from "../units/unit.ts";
 import { quantityText } from "../units/unit-text.ts";
 import { NO_INDICES, type Value } from "./draft.ts";
 import type { Placed } from "./files.ts";
@@ -12,8 +11,6 @@ import { plainScope, type Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
 import type { Measure, Typed } from "./typed.ts";
 
-const _SECOND: Dimension = [0, 0, 1, 0, 0, 0, 0];
-const _RADIAN = parseUnit("rad") as Unit;
 const DEEPEST = 200;
 
 /** A param or const: a symbol with its definition and its number; an override is read in the system outside. */

@@ -36,17 +36,26 @@ export function resolve(files: FileSet, path: string, parse: Parse): Resolved {
   const file = library.open(path);
   if (file === null) throw new Error(`resolve was asked for ${path}, which is not in the set`);
   const findSystem = systemFinder(files, path);
+  // From the last to the first, since parts stand before what is made of them.
+  const refused = new Set<System>();
   const systems = file.tree.items
     .filter((item) => item.kind === "system")
-    .map((system) => resolveSystem(system, file, findSystem));
+    .reverse()
+    .map((system) => resolveSystem(system, file, findSystem, refused))
+    .reverse();
   findings.push(...checkDeclarations(file), ...unusedFunctions(file), ...checkTrials(file));
   return { findings, systems };
 }
 
-function resolveSystem(system: System, file: SourceFile, findSystem: FindSystem): ResolvedSystem {
+function resolveSystem(
+  system: System,
+  file: SourceFile,
+  findSystem: FindSystem,
+  refused: Set<System>,
+): ResolvedSystem {
   const draft = new Draft(file);
   const name = system.name.text;
-  if (!fitsLimits(draft, system, file)) return { name, graph: null, findings: draft.findings };
+  if (!fitsLimits(draft, system, file, refused)) return { name, graph: null, findings: draft.findings };
   expand(draft, system, file, findSystem);
   joinPorts(draft);
   checkElements(draft);

@@ -17,12 +17,15 @@ interface Size {
 
 const NOTHING: Size = { bonds: 0, statements: 0 };
 
+/** From this size on, a part of a system that is too large is not worked out for itself either. */
+const LARGE_PART = 5_000;
+
 /**
  * How large a system becomes when its subs are expanded, counted once a system, so that parts that double at
  * each level are refused before any is made. Counts go by the params' own values; what overrides add to a
  * `repeat` is caught while it is expanded.
  */
-export function fitsLimits(draft: Draft, system: System, file: SourceFile): boolean {
+export function fitsLimits(draft: Draft, system: System, file: SourceFile, refused: Set<System>): boolean {
   const known = new Map<System, Size>();
   const open: System[] = [];
   let fits = true;
@@ -114,6 +117,7 @@ export function fitsLimits(draft: Draft, system: System, file: SourceFile): bool
   };
 
   const { bonds, statements } = sizeOf(system, file);
+  const name = system.name.text;
   if (fits && (bonds > MOST_BONDS || statements > MOST_STATEMENTS)) {
     const what =
       bonds > MOST_BONDS
@@ -123,7 +127,15 @@ export function fitsLimits(draft: Draft, system: System, file: SourceFile): bool
       "too-large",
       system,
       file,
-      `${system.name.text} would have ${what} when its subs and repeats are written out.`,
+      `${name} would have ${what} when its subs and repeats are written out.`,
+    );
+    for (const part of known.keys()) refused.add(part);
+  } else if (fits && refused.has(system) && bonds > LARGE_PART) {
+    refuse(
+      "too-large",
+      system,
+      file,
+      `${name} is a part of a system that is too large, and is worked out when that one fits.`,
     );
   }
   return fits;

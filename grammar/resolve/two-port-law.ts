@@ -1,5 +1,6 @@
 import { derivative } from "../symbolic/derivative.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { substitute } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import type { ElementDeclaration } from "../syntax/tree.ts";
 import { equal, multiply } from "../units/dimension.ts";
@@ -88,8 +89,8 @@ function factorOf(translator: Translator, right: Expr, partner: Symbol): Expr | 
   if (!symbolsOf(quotient).has(partner)) return quotient;
   const slope = derivative(pool, right, partner);
   if (symbolsOf(slope).has(partner)) return null;
-  const rest = pool.subtract(right, pool.product(slope, partner));
-  return rest === pool.zero ? slope : null;
+  // Affine in the partner, so that it is proportional where it vanishes with it.
+  return substitute(pool, right, new Map([[partner, pool.zero]])) === pool.zero ? slope : null;
 }
 
 /** Power conservation joins two ports only where both products of effort and flow measure the same. */
