@@ -67,6 +67,7 @@ export class StatementReader {
   readonly #parser = notationParser();
   edition: File["edition"] = null;
   #begun = false;
+  #full = false;
   /** The place of the last statement that stood in the wrong one: a run of them is told once. */
   #misplaced: string | null = null;
 
@@ -94,7 +95,12 @@ export class StatementReader {
   read(line: Line, place: Place): Read | null {
     const range = extent(line);
     const facts: LineFacts = { range, description: line.description, remark: line.remark };
-    if (this.#findings.length >= LIMITS.syntaxFindings) return unreadable(facts, null);
+    if (this.#findings.length >= LIMITS.syntaxFindings) {
+      if (!this.#full)
+        this.#report("syntax", range, "From here on the file was not read: too many statements can't be.");
+      this.#full = true;
+      return unreadable(facts, null);
+    }
     if (line.tokens.length === 0) {
       this.#report("syntax", range, "A `{` follows the head of a block, as in `system NAME {`.");
       return unreadable(facts, null);
