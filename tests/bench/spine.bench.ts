@@ -15,12 +15,25 @@ describe("a row of mass–spring–damper cells", () => {
 });
 
 function rowOfCells(cells: number): string {
-  const lines = ["notation 1", "system Row {", "  param m = 2 kg", "  param k = 3 N/m", "  param d = 0.5 N*s/m"];
+  const lines = [
+    "notation 1",
+    "system Row {",
+    "  param m = 2 kg",
+    "  param k = 3 N/m",
+    "  param d = 0.5 N*s/m",
+  ];
   lines.push("  input F : N", "  Se push e = F");
   for (let i = 1; i <= cells; i += 1) {
-    lines.push(`  1 v${i} : translation`, `  I m${i} f = p/m`, `  0 l${i}`, `  1 s${i}`, `  C k${i} e = k*q`, `  R d${i} e = d*f`);
+    lines.push(
+      `  1 v${i} : translation`,
+      `  I m${i} f = p/m`,
+      `  0 l${i}`,
+      `  1 s${i}`,
+      `  C k${i} e = k*q`,
+      `  R d${i} e = d*f`,
+    );
     lines.push(`  v${i} -> m${i}`, `  v${i} -> l${i} -> s${i} -> k${i}, d${i}`);
-    lines.push(i === cells ? "  l${i} -> wall".replace("${i}", String(i)) : `  l${i} -> v${i + 1}`);
+    lines.push(`  l${i} -> ${i === cells ? "wall" : `v${i + 1}`}`);
   }
   return [...lines, "  push -> v1", "  Sf wall f = 0", "}", ""].join("\n");
 }
