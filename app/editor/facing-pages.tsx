@@ -1,4 +1,13 @@
-import { useCallback, useEffect, useMemo, useReducer, useRef, useState, useSyncExternalStore } from "react";
+import {
+  type RefObject,
+  useCallback,
+  useEffect,
+  useMemo,
+  useReducer,
+  useRef,
+  useState,
+  useSyncExternalStore,
+} from "react";
 import { useLocation, useNavigate } from "react-router";
 import { SourceText } from "../../grammar/source/text.ts";
 import { lineHash, lineOfHash, rememberLine } from "./address.ts";
@@ -64,6 +73,8 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
   const rightPage = useRef<HTMLElement>(null);
   const messageField = useRef<HTMLInputElement>(null);
 
+  useSaveKey(messageField);
+
   const inAddress = (name: string, value: string | null) => {
     const wanted = new URLSearchParams(search);
     if (value === null) wanted.delete(name);
@@ -117,7 +128,20 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
             current={path}
             unsaved={new Set(unsaved.map((file) => file.path))}
             onNew={mayWrite && alive ? begin : null}
-          />
+          >
+            {alive && text !== undefined && (
+              <p className="text-tools">
+                {mayWrite && (
+                  <button type="button" className="word" onClick={() => textPage.current?.run("format")}>
+                    Format
+                  </button>
+                )}
+                <button type="button" className="word" onClick={() => textPage.current?.run("outline")}>
+                  Outline
+                </button>
+              </p>
+            )}
+          </FileList>
           <DraftNote restored={workspace.restored} step={step} />
           {text === undefined ? (
             <p className="flex-1 p-4">
@@ -188,6 +212,19 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
 function placeInText(file: string, text: string, offset: number) {
   const { line, column } = new SourceText(file, text).position(offset);
   return { file, line, column };
+}
+
+/** Ctrl+S goes to the message wherever one is on the page, and never to the browser's own saving. */
+function useSaveKey(field: RefObject<HTMLInputElement | null>): void {
+  useEffect(() => {
+    const onKey = (event: KeyboardEvent) => {
+      if (event.key !== "s" || !(event.ctrlKey || event.metaKey) || event.altKey || event.shiftKey) return;
+      event.preventDefault();
+      field.current?.focus();
+    };
+    window.addEventListener("keydown", onKey);
+    return () => window.removeEventListener("keydown", onKey);
+  }, [field]);
 }
 
 const NOTHING_TIED: readonly never[] = [];

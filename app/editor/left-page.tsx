@@ -1,4 +1,4 @@
-import { type FormEvent, lazy, type Ref, Suspense, useState } from "react";
+import { type FormEvent, lazy, type ReactNode, type Ref, Suspense, useState } from "react";
 import { Link } from "react-router";
 import type { TextPageHandle, TextPageProps } from "./text-page.client.tsx";
 
@@ -11,10 +11,11 @@ interface FileListProps {
   readonly unsaved: ReadonlySet<string>;
   /** Begins a file of this path, or says why not; null where the reader may not. */
   readonly onNew: ((path: string) => string | null) | null;
+  readonly children: ReactNode;
 }
 
 /** The files of the set: the open one is in bold, unsaved ones are marked with a dot and the word. */
-export function FileList({ base, paths, current, unsaved, onNew }: FileListProps) {
+export function FileList({ base, paths, current, unsaved, onNew, children }: FileListProps) {
   return (
     <nav aria-label="Files of the set" className="file-list">
       <ul>
@@ -40,6 +41,7 @@ export function FileList({ base, paths, current, unsaved, onNew }: FileListProps
           </li>
         )}
       </ul>
+      {children}
     </nav>
   );
 }

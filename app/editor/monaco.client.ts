@@ -20,7 +20,8 @@ import "monaco-editor/features/multicursor/register";
 import "monaco-editor/features/quickCommand/register";
 import "monaco-editor/features/quickOutline/register";
 import "monaco-editor/features/smartSelect/register";
-import "monaco-editor/features/suggest/register";
+// The feature of that name brings inline completions alone; the list of completions is this module.
+import "monaco-editor/editor/contrib/suggest/browser/suggestController.js";
 import "monaco-editor/features/toggleTabFocusMode/register";
 import "monaco-editor/features/tokenization/register";
 import "monaco-editor/features/wordHighlighter/register";
@@ -37,6 +38,8 @@ self.MonacoEnvironment = {
 monaco.languages.register({ id: NOTATION, extensions: [".wright"] });
 monaco.languages.setMonarchTokensProvider(NOTATION, notationTokens);
 monaco.languages.setLanguageConfiguration(NOTATION, notationConfiguration);
+
+const SYMBOLS = "class variable object keyword struct unit function field enumerator".split(" ");
 
 /* Typography rather than colour: what the language gives is bold, what is said beside it is faded. */
 function theme(
@@ -77,6 +80,17 @@ function theme(
       ...Object.fromEntries(
         [1, 2, 3, 4, 5, 6].map((depth) => [`editorBracketHighlight.foreground${depth}`, `#${ink}`]),
       ),
+      "editor.rangeHighlightBackground": `#${shade}`,
+      "editor.symbolHighlightBackground": `#${shade}`,
+      "quickInput.background": `#${paper}`,
+      "quickInput.foreground": `#${ink}`,
+      "quickInputList.focusBackground": `#${selection}`,
+      "quickInputList.focusForeground": `#${ink}`,
+      "list.highlightForeground": `#${ink}`,
+      "list.focusHighlightForeground": `#${ink}`,
+      "editorSuggestWidget.highlightForeground": `#${ink}`,
+      "editorSuggestWidget.focusHighlightForeground": `#${ink}`,
+      ...Object.fromEntries(SYMBOLS.map((symbol) => [`symbolIcon.${symbol}Foreground`, `#${faded}`])),
       focusBorder: "#00000000",
     },
   } satisfies monaco.editor.IStandaloneThemeData;

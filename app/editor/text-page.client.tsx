@@ -8,7 +8,8 @@ export interface TextPageHandle {
   focus(): void;
   reveal(line: number, column?: number): void;
   apply(edits: readonly { readonly place: Place; readonly text: string }[]): void;
-  layOut(): void;
+  /** Lays the text out as the formatter does, or opens the list of all that is declared. */
+  run(command: "format" | "outline"): void;
   /** Middle of a line in the window's coordinates; null while it is scrolled out of sight. */
   middleOf(line: number): number | null;
 }
@@ -35,6 +36,8 @@ export interface TextPageProps {
   onOpen(place: { readonly file: string; readonly line: number; readonly column: number }): void;
   format: ServiceSource["format"];
 }
+
+const COMMANDS = { format: "editor.action.formatDocument", outline: "editor.action.quickOutline" } as const;
 
 const SEVERITY = { error: "Error", warning: "Warning", note: "Info" } as const;
 
@@ -120,7 +123,10 @@ function handleFor(
       );
       editor.current?.pushUndoStop();
     },
-    layOut: () => editor.current?.layout(),
+    run(command) {
+      editor.current?.focus();
+      void editor.current?.getAction(COMMANDS[command])?.run();
+    },
     middleOf(line) {
       const open = editor.current;
       const box = host.current?.getBoundingClientRect();

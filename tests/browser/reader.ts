@@ -39,7 +39,10 @@ export async function open(page: Page, address: string): Promise<void> {
 
 /** Puts the cursor before `mark`, which stands once in the text, by the editor's own search. */
 export async function goBefore(page: Page, mark: string): Promise<void> {
-  await page.locator(".monaco-editor .view-lines").click({ position: { x: 60, y: 10 } });
+  await page
+    .locator(".monaco-editor .native-edit-context, .monaco-editor textarea.inputarea")
+    .first()
+    .focus();
   await page.keyboard.press("ControlOrMeta+F");
   const field = page.locator(".find-widget textarea").first();
   await field.fill(mark);
