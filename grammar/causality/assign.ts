@@ -5,7 +5,8 @@ import { fixedSteps, type StoreSite, storeSites } from "./elements.ts";
 import { type Clash, Propagation } from "./propagation.ts";
 import { searchStrokes } from "./search.ts";
 import type { CausalGraph } from "./strokes.ts";
-import { granted, reversed, wishes } from "./wishes.ts";
+import { tiedStore } from "./tied-stores.ts";
+import { granted, isChoice, reversed, type Tied, type Wish, wishes } from "./wishes.ts";
 
 /**
  * Sequential assignment of causal strokes (the procedure of Karnopp, Margolis, Rosenberg: System Dynamics): what
@@ -16,10 +17,31 @@ import { granted, reversed, wishes } from "./wishes.ts";
 export function assignCausality(graph: FlatGraph): { causal: CausalGraph; findings: Finding[] } {
   const nodes = [...graph.nodes].sort(byName);
   const stores = storeSites(nodes);
+  const tied = new Map<number, readonly number[]>();
+  for (;;) {
+    const assigned = assignSequentially(graph, nodes, stores, tied);
+    if (assigned.findings.length > 0 || tied.size >= MOST_TIED) return assigned;
+    const more = tiedStore(graph, assigned.causal.strokes, stores);
+    if (more === null) return assigned;
+    const { bond } = more.site.node.ports[more.site.port];
+    // A store that was known to be tied and integrates all the same is held by something else, and stays so.
+    if (tied.has(bond)) return assigned;
+    tied.set(bond, more.premises);
+  }
+}
 
+/** Each costs the whole assignment again; nobody ties this many by rings of junctions alone. */
+const MOST_TIED = 64;
+
+function assignSequentially(
+  graph: FlatGraph,
+  nodes: readonly FlatNode[],
+  stores: readonly StoreSite[],
+  tied: Tied,
+): { causal: CausalGraph; findings: Finding[] } {
   const propagation = new Propagation(graph);
   if (settleFixed(graph, nodes, propagation).length === 0) {
-    const chosen = grant(graph, nodes, stores, propagation);
+    const chosen = grant(wishes(graph, nodes, stores, tied, openIn(propagation)), propagation);
     if (chosen !== null) return { causal: causalGraph(graph, propagation, stores, chosen), findings: [] };
   }
 
@@ -29,14 +51,18 @@ export function assignCausality(graph: FlatGraph): { causal: CausalGraph; findin
   const clashes = settleFixed(ordered, nodes, careful);
   if (clashes.length > 0) {
     // What contradicts itself after a conflict is not worth a finding: one mistake, one finding.
-    const chosen = grant(ordered, nodes, stores, careful) ?? [];
+    const chosen = grant(wishes(graph, nodes, stores, tied, openIn(careful)), careful) ?? [];
     const causal = causalGraph(graph, careful, stores, chosen);
     return { causal, findings: clashes.map((clash) => conflictFinding(causal, clash)) };
   }
-  const found = searchStrokes(ordered, careful, [...wishes(graph, nodes, stores, () => true)]);
+  const found = searchStrokes(ordered, careful, [...wishes(graph, nodes, stores, tied, () => true)]);
   const causal = causalGraph(graph, careful, stores, "chosen" in found ? found.chosen : []);
   const findings = "clashes" in found ? [singularFinding(causal, found.bond, ...found.clashes)] : [];
   return { causal, findings };
+}
+
+function openIn(propagation: Propagation): (bond: number) => boolean {
+  return (bond) => propagation.strokes[bond] === null;
 }
 
 function settleFixed(graph: FlatGraph, nodes: readonly FlatNode[], propagation: Propagation): Clash[] {
@@ -44,20 +70,14 @@ function settleFixed(graph: FlatGraph, nodes: readonly FlatNode[], propagation: 
 }
 
 /** Grants one wish after the other. The bonds that were chosen, or null where one can't have either stroke. */
-function grant(
-  graph: FlatGraph,
-  nodes: readonly FlatNode[],
-  stores: readonly StoreSite[],
-  propagation: Propagation,
-): number[] | null {
-  const isOpen = (bond: number) => propagation.strokes[bond] === null;
+function grant(inTurn: Iterable<Wish>, propagation: Propagation): number[] | null {
   const chosen: number[] = [];
   let stuck = false;
-  for (const wish of wishes(graph, nodes, stores, isOpen)) {
-    if (!isOpen(wish.bond)) continue;
+  for (const wish of inTurn) {
+    if (propagation.strokes[wish.bond] !== null) continue;
     const refusal = propagation.attempt(granted(wish));
     if (refusal !== null) stuck = propagation.attempt(reversed(wish, refusal.premises)) !== null || stuck;
-    else if (wish.rule !== "integral-store") chosen.push(wish.bond);
+    else if (isChoice(wish)) chosen.push(wish.bond);
   }
   return stuck ? null : chosen;
 }

@@ -1,6 +1,6 @@
 import type { FlatGraph } from "../resolve/graph.ts";
 import { type Clash, opposite, type Propagation } from "./propagation.ts";
-import { granted, reversed, type Wish } from "./wishes.ts";
+import { granted, isChoice, reversed, type Wish } from "./wishes.ts";
 
 interface Decision {
   readonly wish: Wish;
@@ -64,7 +64,7 @@ export function searchStrokes(
       break;
     }
   }
-  const taken = decisions.filter((each) => each.granted && each.wish.rule !== "integral-store");
+  const taken = decisions.filter((each) => each.granted && isChoice(each.wish));
   return { chosen: taken.map((each) => each.wish.bond) };
 }
 

@@ -12,7 +12,12 @@ export interface Wish {
   /** Why it stands as wished, and why it stands otherwise where the wish contradicts what stands before. */
   readonly rule: Reason["rule"];
   readonly otherwise: "derivative-store" | "excluded";
+  /** What the wish itself rests on; nothing, where it is free. */
+  readonly premises?: readonly number[];
 }
+
+/** Stores that are known to depend on others, by bond, with the bonds of those. */
+export type Tied = ReadonlyMap<number, readonly number[]>;
 
 /**
  * All choices in their order: stores, integral; resistors whose law can't be turned round, then the others, as their
@@ -23,11 +28,18 @@ export function* wishes(
   graph: FlatGraph,
   nodes: readonly FlatNode[],
   stores: readonly StoreSite[],
+  tied: Tied,
   isOpen: (bond: number) => boolean,
 ): Generator<Wish> {
-  for (const { node, port, integral: stroke } of stores) {
+  for (const { node, port, integral } of stores) {
     const { bond } = node.ports[port];
-    yield { node: node.index, bond, stroke, rule: "integral-store", otherwise: "derivative-store" };
+    const premises = tied.get(bond);
+    const common = { node: node.index, bond, otherwise: "derivative-store" } as const;
+    if (premises === undefined) yield { ...common, stroke: integral, rule: "integral-store" };
+    else {
+      const stroke = opposite(integral);
+      yield { ...common, stroke, rule: "derivative-store", otherwise: "excluded", premises };
+    }
   }
   const free = resistorSites(nodes).filter(({ node, port }) => isOpen(node.ports[port].bond));
   const turns = turning(graph);
@@ -54,8 +66,13 @@ export function* wishes(
   }
 }
 
-export function granted({ node, bond, stroke, rule }: Wish): Step {
-  return { bond, stroke, reason: { rule, node, premises: [] } };
+export function granted({ node, bond, stroke, rule, premises = [] }: Wish): Step {
+  return { bond, stroke, reason: { rule, node, premises } };
+}
+
+/** Did nothing but the wish bring the stroke about? Stores are wished to integrate, so that theirs is no choice. */
+export function isChoice({ rule }: Wish): boolean {
+  return rule !== "integral-store" && rule !== "derivative-store";
 }
 
 export function reversed({ node, bond, stroke, otherwise }: Wish, premises: readonly number[]): Step {
