@@ -86,6 +86,16 @@ program
     process.exitCode = format(paths, options);
   });
 
+program
+  .command("explain")
+  .description("tell what a finding means and how it is mended; without a name, list all findings")
+  .argument("[name]", "name of a finding, as reports print it")
+  .addOption(color())
+  .action(async (name, options) => {
+    const { explain } = await import("./commands/explain.ts");
+    process.exitCode = explain(name, options);
+  });
+
 // A reader that has seen enough (`| head`) is no fault of the report.
 process.stdout.on("error", (error: NodeJS.ErrnoException) => {
   process.exit(error.code === "EPIPE" ? process.exitCode : 2);

@@ -48,6 +48,14 @@ function textReport(checked: readonly CheckedFile[], { quiet, failOn, color }: C
   const paint = paintFor(color);
   const shown = findingsOf(checked).filter(({ found }) => !quiet || atLeast(found.severity, failOn));
   const blocks = shown.map(({ found, from }) => findingText(found, from, paint));
-  if (!quiet) blocks.push(summaryText(checked));
+  if (!quiet) blocks.push(summaryText(checked), ...moreText(shown));
   return blocks.join("\n");
+}
+
+/** Where to read on about the gravest finding; notes speak for themselves. */
+function moreText(shown: ReturnType<typeof findingsOf>): string[] {
+  const [gravest] = (["error", "warning"] as const).flatMap((severity) =>
+    shown.filter(({ found }) => found.severity === severity),
+  );
+  return gravest === undefined ? [] : [`\`bondwright explain ${gravest.found.name}\` tells more.`];
 }
