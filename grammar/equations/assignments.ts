@@ -1,6 +1,7 @@
 import type { CausalGraph, StorePort } from "../causality/strokes.ts";
 import { compareNames, type FlatBond, type FlatGraph, type FlatNode } from "../resolve/graph.ts";
 import type { Span } from "../source/span.ts";
+import { ById } from "../symbolic/by-id.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { assignElement } from "./elements.ts";
 import { assignJunction, assignTwoPort } from "./junctions.ts";
@@ -34,7 +35,8 @@ export interface Store extends StorePort {
 /** Each variable's assignment as the strokes give it, before anything is substituted. */
 export interface Assignments {
   readonly causal: CausalGraph;
-  readonly of: ReadonlyMap<Symbol, Assignment>;
+  readonly of: { get(variable: Symbol): Assignment | undefined; has(variable: Symbol): boolean };
+  readonly list: readonly Assignment[];
   /** By name in natural order. */
   readonly stores: readonly Store[];
   /** Open ports of the system: what the world outside sets stands as an input. */
@@ -49,7 +51,8 @@ export class AssignmentsBuilder {
   readonly valueOf: (symbol: Symbol) => number | undefined;
   readonly outside: ModelInput[] = [];
   readonly stores = new Map<FlatNode, Store[]>();
-  readonly #of = new Map<Symbol, Assignment>();
+  readonly #of = new ById<Assignment>();
+  readonly #list: Assignment[] = [];
 
   constructor(causal: CausalGraph) {
     this.causal = causal;
@@ -59,6 +62,7 @@ export class AssignmentsBuilder {
 
   set(assignment: Assignment): void {
     this.#of.set(assignment.variable, assignment);
+    this.#list.push(assignment);
   }
 
   /** Does the node at `end` of the bond give its effort (and is told the flow)? */
@@ -84,6 +88,7 @@ export class AssignmentsBuilder {
     return {
       causal: this.causal,
       of: this.#of,
+      list: this.#list,
       stores,
       outside: this.outside,
       bondOf: bondFinder(graph),
@@ -128,9 +133,16 @@ function storeOf(graph: FlatGraph, port: StorePort): Store {
   const { effort, flow } = graph.bonds[bond];
   const [rateVariable, coVariable] = port.variable === "q" ? [flow, effort] : [effort, flow];
   return {
-    ...port,
+    node: port.node,
+    port: port.port,
+    variable: port.variable,
+    name: port.name,
+    integral: port.integral,
     symbol: graph.pool.symbol("state", port.name),
-    rateSymbol: graph.pool.symbol("rate", port.name),
+    // Only a model with dependent stores asks for it.
+    get rateSymbol() {
+      return graph.pool.symbol("rate", port.name);
+    },
     bond,
     sign: end === "to" ? 1 : -1,
     rateVariable,

@@ -24,8 +24,8 @@ export function dependenceFinding(assignments: Assignments, store: Store, value:
   return finding("derivative-causality", span, message, { facts: pathFacts(assignments, store) });
 }
 
-export function inputRateFinding(assignments: Assignments, store: Store, rate: Expr): Finding | null {
-  const inputs = named([...symbolsOf(rate)], "inputRate");
+export function inputRateFinding(assignments: Assignments, store: Store, value: Expr): Finding | null {
+  const inputs = named([...symbolsOf(value)], "input");
   if (inputs.length === 0) return null;
   const { span, name } = assignments.causal.graph.nodes[store.node];
   const message =

@@ -1,5 +1,6 @@
-import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Expr } from "../symbolic/expression.ts";
 import type { Assignments, Store } from "./assignments.ts";
+import type { Values } from "./paths.ts";
 import { RateFinder } from "./rates.ts";
 
 export interface Tied {
@@ -19,7 +20,7 @@ export interface Dependence {
   readonly forced: readonly Tied[];
 }
 
-export function classifyStores(assignments: Assignments, values: ReadonlyMap<Symbol, Expr>): Dependence {
+export function classifyStores(assignments: Assignments, values: Values): Dependence {
   const independent: Store[] = [];
   const followers: Tied[] = [];
   const forced: Tied[] = [];

@@ -1,7 +1,8 @@
 import type { CausalGraph } from "../causality/strokes.ts";
 import type { Finding } from "../diagnostics/finding.ts";
-import { compareNames } from "../resolve/graph.ts";
-import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { compareNames, type FlatTrack } from "../resolve/graph.ts";
+import { ById } from "../symbolic/by-id.ts";
+import type { Expr } from "../symbolic/expression.ts";
 import { linearForms } from "../symbolic/linear.ts";
 import type { Pool } from "../symbolic/pool.ts";
 import { substitution } from "../symbolic/substitute.ts";
@@ -11,7 +12,7 @@ import { coEnergyOf } from "./coenergy-value.ts";
 import { classifyStores, type Dependence } from "./dependence.ts";
 import { dependenceFinding, inputRateFinding, refusedRates } from "./dependence-findings.ts";
 import type { DependentStore, ModelInput, RateEquation, State, StateModel } from "./model.ts";
-import { followPaths } from "./paths.ts";
+import { followPaths, type Values } from "./paths.ts";
 import { type Follower, RateFinder, type RateRow, type SolvedRates, solveRates } from "./rates.ts";
 import { startValues } from "./start.ts";
 import { collected, tidy } from "./tidy.ts";
@@ -29,14 +30,14 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const findings = [...followed.findings];
   if (followed.refused) return { model: null, findings };
 
-  const settle = substitution(pool, followed.values as ReadonlyMap<Expr, Expr>);
+  const settle = substitution(pool, followed.values);
   const dependence = classifyStores(assignments, followed.values);
-  const rows = rateRows(assignments, dependence, followed.values, settle);
+  const rows = stateRows(assignments, dependence, followed.values, settle);
   const tied = dependence.followers.length + dependence.forced.length > 0;
   const followers = dependence.followers.map(
     ({ store, value }): Follower => ({ name: store.name, rateSymbol: store.rateSymbol, value }),
   );
-  const solved = tied ? solveRates(pool, rows, followers) : plainRates(rows);
+  const solved = tied ? solveRates(pool, rows, followers) : NOTHING_TIED;
   const refused = refusedRates(assignments, dependence, solved);
   findings.push(...refused);
   if (refused.length > 0) return { model: null, findings };
@@ -62,14 +63,13 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
     value: shorter(finish(settle(value))),
   }));
   const equations = states.map(({ name, span }, i): RateEquation => {
-    const rate = solved.rates.get(rows[i].rateSymbol) ?? rows[i].rateSymbol;
+    const rate = (tied ? solved.rates.get(rows[i].rateSymbol) : rows[i].rate) ?? rows[i].rateSymbol;
     return { state: name, rate: shorter(rate), span };
   });
 
   const inputs = modelInputs(assignments, solved, dependent);
-  for (const { store } of dependence.followers) {
-    const rate = dependent.find(({ name }) => name === store.name)?.rate;
-    const driven = rate === undefined ? null : inputRateFinding(assignments, store, rate);
+  for (const { store, value } of dependence.followers) {
+    const driven = inputRateFinding(assignments, store, value);
     if (driven !== null) findings.push(driven);
   }
   const model: StateModel = {
@@ -88,15 +88,12 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
 }
 
 /** Without dependent stores no rate stands in another's equation. */
-function plainRates(rows: readonly RateRow[]): SolvedRates {
-  const rates = new Map<Expr, Expr>(rows.map(({ rateSymbol, rate }) => [rateSymbol, rate as Expr]));
-  return { rates, coupled: [], singular: [], nonlinear: [] };
-}
+const NOTHING_TIED: SolvedRates = { rates: new Map(), coupled: [], singular: [], nonlinear: [] };
 
 /** Puts the solved rates in, and writes what they changed as one fraction where that is shorter. */
 function rateFree(pool: Pool, solved: SolvedRates): (expr: Expr) => Expr {
   const finder = new RateFinder();
-  const put = substitution(pool, solved.rates, (expr) => !finder.holds(expr));
+  const put = substitution(pool, solved.rates, (expr) => !finder.holds(expr), new ById());
   return (expr) => (finder.holds(expr) ? collected(pool, put(expr)) : expr);
 }
 
@@ -104,42 +101,59 @@ function finishOrNull(value: Expr | undefined, finish: (expr: Expr) => Expr): Ex
   return value === undefined ? null : finish(value);
 }
 
+/** A state with what it came from. */
+interface StateRow extends RateRow {
+  readonly store: Store | null;
+  readonly track: FlatTrack | null;
+}
+
 /** Stores that integrate, those that a demanded stroke forced, and tracks: all states, by name. */
-function rateRows(
+function stateRows(
   assignments: Assignments,
   dependence: Dependence,
-  values: ReadonlyMap<Symbol, Expr>,
+  values: Values,
   settle: (expr: Expr) => Expr,
-): RateRow[] {
+): StateRow[] {
   const { graph } = assignments.causal;
   const { pool } = graph;
-  const rows: RateRow[] = dependence.independent.map(({ name, symbol, rateSymbol, rateVariable, sign }) => ({
-    name,
-    symbol,
-    rateSymbol,
-    rate: pool.product(pool.number(sign), values.get(rateVariable) ?? pool.zero),
-    constraint: null,
-  }));
+  const rows: StateRow[] = dependence.independent.map((store) => {
+    const carried = values.get(store.rateVariable) ?? pool.zero;
+    const rate = store.sign === 1 ? carried : pool.negate(carried);
+    return rowOf(pool, {
+      name: store.name,
+      symbol: store.symbol,
+      rate,
+      constraint: null,
+      store,
+      track: null,
+    });
+  });
   for (const { store, value } of dependence.forced) {
-    const { name, symbol, rateSymbol } = store;
-    rows.push({ name, symbol, rateSymbol, rate: null, constraint: value });
+    const { name, symbol } = store;
+    rows.push(rowOf(pool, { name, symbol, rate: null, constraint: value, store, track: null }));
   }
-  for (const { name, symbol, rate } of graph.tracks) {
-    rows.push({ name, symbol, rateSymbol: pool.symbol("rate", name), rate: settle(rate), constraint: null });
+  for (const track of graph.tracks) {
+    const { name, symbol, rate } = track;
+    rows.push(rowOf(pool, { name, symbol, rate: settle(rate), constraint: null, store: null, track }));
   }
   return rows.sort((a, b) => compareNames(a.name, b.name));
 }
 
-function stateOf(assignments: Assignments, row: RateRow, start: number): State {
-  const { graph } = assignments.causal;
-  const { name, symbol } = row;
-  const track = graph.tracks.find((each) => each.symbol === symbol);
-  if (track !== undefined) {
-    const { unit, span } = track;
+function rowOf(pool: Pool, row: Omit<StateRow, "rateSymbol">): StateRow {
+  return {
+    ...row,
+    get rateSymbol() {
+      return pool.symbol("rate", row.name);
+    },
+  };
+}
+
+function stateOf(assignments: Assignments, row: StateRow, start: number): State {
+  const { name, symbol, store, track } = row;
+  if (store === null) {
+    const { unit, span } = track as FlatTrack;
     return { name, symbol, kind: "tracked", unit, start, node: null, bond: null, span, coEnergy: null };
   }
-  const store = storeBySymbol(assignments).get(symbol) as Store;
-  const node = graph.nodes[store.node];
   return {
     name,
     symbol,
@@ -148,23 +162,12 @@ function stateOf(assignments: Assignments, row: RateRow, start: number): State {
     start,
     node: store.node,
     bond: store.bond,
-    span: node.span,
+    span: assignments.causal.graph.nodes[store.node].span,
     // Only the view in co-energy variables asks for it.
     get coEnergy() {
       return coEnergyOf(assignments, store);
     },
   };
-}
-
-const bySymbol = new WeakMap<Assignments, Map<Symbol, Store>>();
-
-function storeBySymbol(assignments: Assignments): Map<Symbol, Store> {
-  let stores = bySymbol.get(assignments);
-  if (stores === undefined) {
-    stores = new Map(assignments.stores.map((store) => [store.symbol, store]));
-    bySymbol.set(assignments, stores);
-  }
-  return stores;
 }
 
 function unitOf({ causal }: Assignments, store: Store) {

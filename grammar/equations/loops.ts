@@ -9,6 +9,7 @@ import { turnRound } from "../symbolic/turn.ts";
 import type { Assignment, Assignments } from "./assignments.ts";
 import { implicitNote, loopFinding, singularLoop } from "./loop-findings.ts";
 import type { AlgebraicLoop } from "./model.ts";
+import type { Values } from "./paths.ts";
 import { tearLoop } from "./tear.ts";
 import { collected } from "./tidy.ts";
 
@@ -29,7 +30,7 @@ const CLOSED_FORM_UP_TO = 12;
 export function solveLoop(
   assignments: Assignments,
   members: readonly Assignment[],
-  settled: ReadonlyMap<Symbol, Expr>,
+  settled: Values,
 ): LoopSolution {
   const { pool } = assignments.causal.graph;
   const { torn, ordered } = tearLoop(assignments, members);
@@ -39,7 +40,7 @@ export function solveLoop(
 
   const values = new Map<Symbol, Expr>(unknownOf);
   const settle = substitution(pool, {
-    get: (key) => values.get(key as Symbol) ?? settled.get(key as Symbol),
+    get: (key) => values.get(key as Symbol) ?? settled.get(key),
   });
   for (const { variable, right } of ordered) values.set(variable, settle(right as Expr));
   const given = torn.map(({ right }) => (right === null ? null : settle(right)));

@@ -1,4 +1,5 @@
 import type { Finding } from "../diagnostics/finding.ts";
+import { ById } from "../symbolic/by-id.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { eachSymbol } from "../symbolic/symbols.ts";
@@ -7,12 +8,17 @@ import { connectedGroups } from "./dependency.ts";
 import { solveLoop } from "./loops.ts";
 import type { AlgebraicLoop } from "./model.ts";
 
+/** What variables have been settled to. */
+export interface Values {
+  get(variable: Expr): Expr | undefined;
+}
+
 /**
  * Every variable followed along its causal paths, till only states, inputs, parameters, time, the rates of dependent
  * stores and what loops leave unknown are left.
  */
 export interface Followed {
-  readonly values: ReadonlyMap<Symbol, Expr>;
+  readonly values: Values;
   readonly loops: readonly AlgebraicLoop[];
   readonly findings: readonly Finding[];
   /** A singular loop: there are no equations. */
@@ -22,11 +28,12 @@ export interface Followed {
 export function followPaths(assignments: Assignments): Followed {
   const { graph } = assignments.causal;
   const { pool } = graph;
-  const list = [...assignments.of.values()];
-  const index = new Map(list.map(({ variable }, i) => [variable, i]));
+  const { list } = assignments;
+  const index = new ById<number>();
+  for (let i = 0; i < list.length; i += 1) index.set(list[i].variable, i);
   const edges = list.map((assignment) => dependenciesOf(assignment, index));
-  const values = new Map<Symbol, Expr>();
-  const settle = substitution(pool, values as ReadonlyMap<Expr, Expr>);
+  const values = new ById<Expr>();
+  const settle = substitution(pool, values, undefined, new ById());
   const loops: AlgebraicLoop[] = [];
   const findings: Finding[] = [];
   let refused = false;
@@ -36,7 +43,7 @@ export function followPaths(assignments: Assignments): Followed {
     const assignment = list[first];
     if (group.length === 1 && assignment.right !== null && !edges[first].includes(first)) {
       const { right } = assignment;
-      values.set(assignment.variable, values.get(right as Symbol) ?? settle(right));
+      values.set(assignment.variable, values.get(right) ?? settle(right));
       continue;
     }
     const solution = solveLoop(
@@ -54,7 +61,7 @@ export function followPaths(assignments: Assignments): Followed {
   return { values, loops, findings, refused };
 }
 
-function dependenciesOf({ right, residual }: Assignment, index: ReadonlyMap<Symbol, number>): number[] {
+function dependenciesOf({ right, residual }: Assignment, index: ById<number>): number[] {
   const expr = (right ?? residual) as Expr;
   // Most rights are one variable or a short sum of them.
   if (expr.op === "symbol") {

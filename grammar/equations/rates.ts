@@ -1,3 +1,4 @@
+import { ById } from "../symbolic/by-id.ts";
 import { differentiation } from "../symbolic/derivative.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { linearForms } from "../symbolic/linear.ts";
@@ -114,7 +115,8 @@ export function solveRates(
       singular.push(names);
       return;
     }
-    if (solution.kind === "large") coupled.push({ names, mass, right });
+    if (solution.kind === "large" && unknowns.length > 1) coupled.push({ names, mass, right });
+    else if (solution.kind === "large") rates.set(unknowns[0], pool.divide(right[0], mass[0][0]));
     else
       for (const [i, unknown] of unknowns.entries()) rates.set(unknown, collected(pool, solution.values[i]));
     // Put in after the states' rates are known.
@@ -153,7 +155,7 @@ function followerRates(pool: Pool, rows: readonly RateRow[]): (value: Expr) => E
 
 /** Looks for rate symbols, remembering what holds none: an expression without rates is known to be so at once. */
 export class RateFinder {
-  readonly #holds = new Map<Expr, boolean>();
+  readonly #holds = new ById<boolean>();
 
   holds(root: Expr): boolean {
     postorder(

@@ -3,7 +3,7 @@ import type { Pool } from "../symbolic/pool.ts";
 import { collectedForm } from "../symbolic/rational-form.ts";
 
 const SMALL = 60;
-const LONG = 240;
+const LONG = 400;
 
 /** One fraction instead of several over sums, where that is the shorter way to write it and cheap to find. */
 export function tidy(pool: Pool, expr: Expr): Expr {
@@ -24,13 +24,12 @@ function hasSumBelow(expr: Expr): boolean {
   return expr.args.some(hasSumBelow);
 }
 
-/** The number of leaves in the text of an expression, counted up to `limit`. */
+/** The number of nodes in the text of an expression, counted up to `limit`: never the work of walking a deep one. */
 function writtenSize(expr: Expr, limit: number): number {
-  let size = 0;
+  let size = 1;
   const stack = [expr];
-  while (stack.length > 0 && size < limit) {
-    const top = stack.pop() as Expr;
-    if (top.args.length === 0) size += 1;
+  for (let top = stack.pop(); top !== undefined && size < limit; top = stack.pop()) {
+    size += top.args.length;
     for (const arg of top.args) stack.push(arg);
   }
   return size;

@@ -21,15 +21,15 @@ export function canonicalCall(pool: Pool, fn: FunctionName, args: readonly Node[
     // sin(1) stays: rounded constants would make sums depend on the order in which they are added.
     if (fractionOf(value) !== null) return pool.number(value) as Node;
   }
-  if (args.length > 1) return pool.intern("call", args, 0, fn, null);
+  if (args.length > 1) return pool.intern("call", args, 0, fn);
   const x = args[0];
   if (fn === "abs") return modulus(pool, x);
   if (fn === "sign") return signum(pool, x);
   if ((ODD.has(fn) || EVEN.has(fn)) && startsNegative(x)) {
-    const turned = pool.intern("call", [pool.negate(x) as Node], 0, fn, null);
+    const turned = pool.intern("call", [pool.negate(x) as Node], 0, fn);
     return ODD.has(fn) ? (pool.negate(turned) as Node) : turned;
   }
-  return pool.intern("call", [x], 0, fn, null);
+  return pool.intern("call", [x], 0, fn);
 }
 
 function startsNegative(x: Node): boolean {
@@ -45,7 +45,7 @@ function modulus(pool: Pool, x: Node): Node {
   if (x.op === "number") return pool.number(Math.abs(x.value)) as Node;
   const content = x.op === "sum" ? contentOf(x) : 1;
   const inner = content === 1 ? x : scaleSum(pool, divide(1, content), x);
-  const value = inner.nonNegative ? inner : pool.intern("call", [inner], 0, "abs", null);
+  const value = inner.nonNegative ? inner : pool.intern("call", [inner], 0, "abs");
   return pool.product(pool.number(Math.abs(content)), value) as Node;
 }
 
@@ -56,9 +56,8 @@ function signum(pool: Pool, x: Node): Node {
     const rest = pool.product(x.args.slice(1));
     return pool.product(pool.number(Math.sign(x.args[0].value)), pool.call("sign", rest)) as Node;
   }
-  if (startsNegative(x))
-    return pool.negate(pool.intern("call", [pool.negate(x) as Node], 0, "sign", null)) as Node;
-  return pool.intern("call", [x], 0, "sign", null);
+  if (startsNegative(x)) return pool.negate(pool.intern("call", [pool.negate(x) as Node], 0, "sign")) as Node;
+  return pool.intern("call", [x], 0, "sign");
 }
 
 function extremum(pool: Pool, fn: "min" | "max", args: readonly Node[]): Node {
@@ -70,5 +69,5 @@ function extremum(pool: Pool, fn: "min" | "max", args: readonly Node[]): Node {
   }
   const sorted = [...others].sort(compareFactors);
   if (number !== null) sorted.unshift(pool.number(number) as Node);
-  return sorted.length === 1 ? sorted[0] : pool.intern("call", sorted, 0, fn, null);
+  return sorted.length === 1 ? sorted[0] : pool.intern("call", sorted, 0, fn);
 }

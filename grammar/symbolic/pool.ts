@@ -17,9 +17,11 @@ const NO_ARGS: readonly Node[] = [];
 export class Pool {
   #buckets: (Node | null)[] = new Array<Node | null>(1024).fill(null);
   #count = 0;
-  readonly zero: Node = this.intern("number", NO_ARGS, 0, "", null);
-  readonly one: Node = this.intern("number", NO_ARGS, 1, "", null);
-  readonly minusOne: Node = this.intern("number", NO_ARGS, -1, "", null);
+  /** Symbols by role and name: the runtime keeps the hash of a name, so its own map is quicker than ours. */
+  readonly #symbols = new Map<SymbolRole, Map<string, Node>>();
+  readonly zero: Node = this.intern("number", NO_ARGS, 0, "");
+  readonly one: Node = this.intern("number", NO_ARGS, 1, "");
+  readonly minusOne: Node = this.intern("number", NO_ARGS, -1, "");
 
   /** How many distinct expressions there are: a measure of work done, for limits. */
   get size(): number {
@@ -27,7 +29,7 @@ export class Pool {
   }
 
   number(value: number): Expr {
-    return this.intern("number", NO_ARGS, value === 0 ? 0 : value, "", null);
+    return this.intern("number", NO_ARGS, value === 0 ? 0 : value, "");
   }
 
   rational(numerator: number, denominator: number): Expr {
@@ -35,7 +37,18 @@ export class Pool {
   }
 
   symbol(role: SymbolRole, name: string): Symbol {
-    return this.intern("symbol", NO_ARGS, 0, name, role) as Node as Symbol;
+    let ofRole = this.#symbols.get(role);
+    if (ofRole === undefined) {
+      ofRole = new Map();
+      this.#symbols.set(role, ofRole);
+    }
+    let symbol = ofRole.get(name);
+    if (symbol === undefined) {
+      symbol = new Node(this.#count, "symbol", NO_ARGS, 0, name, role, this.#count, null);
+      this.#count += 1;
+      ofRole.set(name, symbol);
+    }
+    return symbol as Node as Symbol;
   }
 
   sum(...args: Expr[] | [readonly Expr[]]): Expr {
@@ -70,7 +83,7 @@ export class Pool {
   where(condition: Expr, then: Expr, otherwise: Expr): Expr {
     if (condition.op === "number") return condition.value !== 0 ? then : otherwise;
     if (then === otherwise) return then;
-    return this.intern("where", [condition as Node, then as Node, otherwise as Node], 0, "", null);
+    return this.intern("where", [condition as Node, then as Node, otherwise as Node], 0, "");
   }
 
   /** `op` is one of < <= > >= = !=; a truth value is 1 or 0. */
@@ -91,15 +104,15 @@ export class Pool {
   }
 
   /** The one node of this structure. For the canonical constructors only: the arguments must be canonical. */
-  intern(op: Operator, args: readonly Node[], value: number, name: string, role: SymbolRole | null): Node {
-    const hash = hashOf(op, args, value, name, role);
+  intern(op: Operator, args: readonly Node[], value: number, name: string): Node {
+    const hash = hashOf(op, args, value, name);
     const mask = this.#buckets.length - 1;
     for (let node = this.#buckets[hash & mask]; node !== null; node = node.next) {
-      if (node.hash === hash && same(node, op, args, value, name, role)) return node;
+      if (node.hash === hash && same(node, op, args, value, name)) return node;
     }
     if (this.#count > this.#buckets.length) this.#grow();
     const at = hash & (this.#buckets.length - 1);
-    const node = new Node(this.#count, op, args, value, name, role, hash, this.#buckets[at]);
+    const node = new Node(this.#count, op, args, value, name, null, hash, this.#buckets[at]);
     this.#buckets[at] = node;
     this.#count += 1;
     return node;
@@ -124,29 +137,15 @@ function nodes(args: Expr[] | [readonly Expr[]]): readonly Node[] {
   return (Array.isArray(args[0]) ? args[0] : args) as readonly Node[];
 }
 
-function same(
-  node: Node,
-  op: Operator,
-  args: readonly Node[],
-  value: number,
-  name: string,
-  role: SymbolRole | null,
-): boolean {
-  if (node.op !== op || node.name !== name || node.role !== role || node.args.length !== args.length)
-    return false;
+function same(node: Node, op: Operator, args: readonly Node[], value: number, name: string): boolean {
+  if (node.op !== op || node.name !== name || node.args.length !== args.length) return false;
   for (let i = 0; i < args.length; i += 1) if (node.args[i] !== args[i]) return false;
   return Object.is(node.value, value);
 }
 
 const bits = new DataView(new ArrayBuffer(8));
 
-function hashOf(
-  op: Operator,
-  args: readonly Node[],
-  value: number,
-  name: string,
-  role: SymbolRole | null,
-): number {
+function hashOf(op: Operator, args: readonly Node[], value: number, name: string): number {
   let hash = op.length * 31 + op.charCodeAt(0);
   for (let i = 0; i < args.length; i += 1) hash = mix(hash, args[i].id);
   if (op === "number") {
@@ -154,7 +153,6 @@ function hashOf(
     hash = mix(mix(hash, bits.getInt32(0)), bits.getInt32(4));
   }
   for (let i = 0; i < name.length; i += 1) hash = (Math.imul(hash, 31) + name.charCodeAt(i)) | 0;
-  if (role !== null) hash = mix(hash, role.charCodeAt(0));
   // A last scramble, since the low bits alone choose the bucket.
   hash = Math.imul(hash ^ (hash >>> 16), 0x45d9f3b);
   return hash ^ (hash >>> 15);

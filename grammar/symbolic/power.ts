@@ -32,7 +32,7 @@ export function canonicalPower(pool: Pool, base: Node, exponent: Node): Node {
 }
 
 function keep(pool: Pool, base: Node, exponent: Node): Node {
-  return pool.intern("power", [base, exponent], 0, "", null);
+  return pool.intern("power", [base, exponent], 0, "");
 }
 
 /**

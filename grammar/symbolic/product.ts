@@ -38,13 +38,12 @@ function numberTimes(pool: Pool, number: Node, other: Node): Node | null {
   if (number.value === 1) return other;
   if (other.op === "number") return pool.number(exact.multiply(number.value, other.value)) as Node;
   if (other.op === "sum") return scaleSum(pool, number.value, other);
-  if (other.op !== "product") return pool.intern("product", [number, other], 0, "", null);
+  if (other.op !== "product") return pool.intern("product", [number, other], 0, "");
   const own = other.args[0].op === "number" ? other.args[0].value : 1;
   const coefficient = exact.multiply(number.value, own);
   const factors = own === 1 ? other.args : other.args.slice(1);
-  if (coefficient !== 1)
-    return pool.intern("product", [pool.number(coefficient) as Node, ...factors], 0, "", null);
-  return factors.length === 1 ? factors[0] : pool.intern("product", factors, 0, "", null);
+  if (coefficient !== 1) return pool.intern("product", [pool.number(coefficient) as Node, ...factors], 0, "");
+  return factors.length === 1 ? factors[0] : pool.intern("product", factors, 0, "");
 }
 
 function collect(pool: Pool, into: Collected, factor: Node): void {
@@ -119,5 +118,5 @@ function assemble(pool: Pool, into: Collected): Node {
   if (factors.length === 1) return canonicalProduct(pool, [pool.number(coefficient) as Node, factors[0]]);
   factors.sort(compareFactors);
   if (coefficient !== 1) factors.unshift(pool.number(coefficient) as Node);
-  return pool.intern("product", factors, 0, "", null);
+  return pool.intern("product", factors, 0, "");
 }

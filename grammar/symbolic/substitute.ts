@@ -1,3 +1,4 @@
+import type { Memo } from "./by-id.ts";
 import type { Expr, FunctionName } from "./expression.ts";
 import type { Pool } from "./pool.ts";
 import { postorder } from "./postorder.ts";
@@ -9,14 +10,15 @@ export function substitute(pool: Pool, expr: Expr, map: ReadonlyMap<Expr, Expr>)
 
 /**
  * As `substitute` for many expressions: what they share is rebuilt once. The map may grow between calls, as long as
- * no expression given before held a key that came later. What is `untouched` holds no key and isn't looked into.
+ * no expression given before held a key that came later. What is `untouched` holds no key and isn't looked into;
+ * `done` is where results are remembered.
  */
 export function substitution(
   pool: Pool,
   map: { get(key: Expr): Expr | undefined },
   untouched: (expr: Expr) => boolean = () => false,
+  done: Memo<Expr> = new Map(),
 ): (expr: Expr) => Expr {
-  const done = new Map<Expr, Expr>();
   const known = (expr: Expr) => done.has(expr);
   const visit = (expr: Expr) => {
     done.set(expr, map.get(expr) ?? (untouched(expr) ? expr : rebuilt(pool, expr, done)));
@@ -27,7 +29,7 @@ export function substitution(
   };
 }
 
-function rebuilt(pool: Pool, expr: Expr, done: ReadonlyMap<Expr, Expr>): Expr {
+function rebuilt(pool: Pool, expr: Expr, done: Memo<Expr>): Expr {
   if (expr.args.length === 0) return expr;
   const args: Expr[] = [];
   let same = true;

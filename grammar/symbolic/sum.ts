@@ -34,7 +34,7 @@ export function canonicalSum(pool: Pool, args: readonly Node[]): Node {
   const terms = order.map((i) => scaleTerm(pool, into.coefficients[i], into.rests[i]));
   if (into.constant !== 0) terms.unshift(pool.number(into.constant) as Node);
   if (terms.length === 0) return pool.zero;
-  return terms.length === 1 ? terms[0] : pool.intern("sum", terms, 0, "", null);
+  return terms.length === 1 ? terms[0] : pool.intern("sum", terms, 0, "");
 }
 
 function collect(pool: Pool, into: Collected, term: Node): void {
@@ -83,7 +83,7 @@ function joinSquares(pool: Pool, into: Collected): void {
 /** A term without its numeric coefficient. */
 export function restOf(pool: Pool, term: Node): Node {
   if (term.op !== "product" || term.args[0].op !== "number") return term;
-  return term.args.length === 2 ? term.args[1] : pool.intern("product", term.args.slice(1), 0, "", null);
+  return term.args.length === 2 ? term.args[1] : pool.intern("product", term.args.slice(1), 0, "");
 }
 
 /** coefficient * rest, where `rest` is canonical and has no coefficient of its own. */
@@ -91,7 +91,7 @@ function scaleTerm(pool: Pool, coefficient: number, rest: Node): Node {
   if (coefficient === 1) return rest;
   const factor = pool.number(coefficient) as Node;
   const factors = rest.op === "product" ? [factor, ...rest.args] : [factor, rest];
-  return pool.intern("product", factors, 0, "", null);
+  return pool.intern("product", factors, 0, "");
 }
 
 /** factor * sum, term by term; the order of terms does not depend on coefficients, so it stays. */
@@ -103,7 +103,7 @@ export function scaleSum(pool: Pool, factor: number, sum: Node): Node {
       ? (pool.number(exact.multiply(factor, term.value)) as Node)
       : scaleTerm(pool, exact.multiply(factor, coefficientOf(term)), restOf(pool, term)),
   );
-  return pool.intern("sum", terms, 0, "", null);
+  return pool.intern("sum", terms, 0, "");
 }
 
 /**
