@@ -50,7 +50,8 @@ export function assemble(translator: Translator): FlatGraph | null {
   const root = draft.instances[0];
   const nodes = draft.nodes.map((node) => flatNode(translator, node));
   const starts = flatStarts(translator);
-  if (draft.broken) return null;
+  const refused = draft.findings.some(({ severity }) => severity === "error");
+  if (draft.broken || (draft.incomplete && !refused)) return null;
   const values = draft.instances.flatMap((instance) => [...instance.values.values()]);
   const { system } = root.template;
   return {

@@ -162,8 +162,12 @@ export class Draft {
   readonly consts = new Map<ValueDeclaration, FileConst | "open">();
   /** The structure can't be built; later steps would only guess. */
   broken = false;
+  /** Some expression stands for nothing; where no finding of this system says why, one of its file does. */
+  incomplete = false;
   /** Some statement could not be read, so that what seems to be missing may well stand there. */
   unread = false;
+  /** What an unknown name at a place in the text was probably meant to be. */
+  readonly meant = new Map<string, string | null>();
   readonly #reported = new Set<string>();
 
   constructor(root: SourceFile) {

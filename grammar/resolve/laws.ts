@@ -162,7 +162,7 @@ function leftSide(translator: Translator, node: DraftNode, law: Law, scope: Scop
     translator.trying ||
     finalBond(endOf(node, left.port)?.bond ?? node.ends[0].bond).domain !== null
   ) {
-    if (left.typed !== translator.unknown)
+    if (left.typed.measure !== "unknown")
       translator.refuse(
         "law-form",
         law.range,
@@ -188,7 +188,7 @@ function ownVariablesFit(
     const heat = node.type === "RS" && own.port === "out";
     const fits = heat || (joined.includes(own.variable) && !same);
     if (fits) continue;
-    if (own.typed === translator.unknown) return false;
+    if (own.typed.measure === "unknown") return false;
     const name = several ? `${own.port}.${own.variable}` : own.variable;
     translator.refuse(
       "law-form",
@@ -220,7 +220,7 @@ function energyLaw(
   }
   const right = translator.whole(law.right, scope);
   const kinds = node.type === "C" ? ["q"] : node.type === "I" ? ["p"] : ["p", "q"];
-  const wrong = used.find((own) => !kinds.includes(own.variable) && own.typed !== translator.unknown);
+  const wrong = used.find((own) => !kinds.includes(own.variable) && own.typed.measure !== "unknown");
   if (wrong !== undefined) {
     translator.refuse(
       "law-form",

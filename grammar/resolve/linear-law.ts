@@ -83,7 +83,10 @@ function ownName(
 ): Expression | null {
   const { name } = declaration.name;
   const { instance } = node;
-  if (instance.unread.has(name.text)) return null;
+  if (instance.unread.has(name.text)) {
+    translator.draft.incomplete = true;
+    return null;
+  }
   if (
     instance.values.has(name.text) ||
     instance.file.visible.values.has(name.text) ||
@@ -93,8 +96,9 @@ function ownName(
   }
   const indexed = declaration.name.indices.length > 0 && instance.values.has(node.local);
   if (indexed) return { kind: "reference", path: [declaration.name], range: declaration.name.range };
-  if (translator.trying || instance.file.missing === true || instance.file.missing.has(name.text))
-    return null;
+  if (translator.trying) return null;
+  translator.draft.incomplete = true;
+  if (instance.file.missing === true || instance.file.missing.has(name.text)) return null;
   translator.draft.report(
     finding(
       "law-missing",

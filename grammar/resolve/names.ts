@@ -2,7 +2,7 @@ import { type Finding, finding } from "../diagnostics/finding.ts";
 import { nearest } from "../diagnostics/nearest.ts";
 import type { Range } from "../source/span.ts";
 import type { IndexedName } from "../syntax/tree.ts";
-import type { Draft, DraftNode, Indices, Instance, Named } from "./draft.ts";
+import type { Draft, Indices, Instance, Named } from "./draft.ts";
 import { spanOf } from "./draft.ts";
 import { wholeScope } from "./structure.ts";
 import { wholeNumber } from "./whole-numbers.ts";
@@ -61,17 +61,41 @@ export function lookUp(
   if (text === null) return null;
   const named = inside.nodes.get(text);
   if (named !== undefined) return named;
-  const span = plain ? name.name.range : name.range;
-  if (inside.values.has(text)) {
-    draft.report(
-      finding("unknown-name", spanOf(from, span), `\`${text}\` is a value; there is no node of that name.`),
-    );
-    return null;
-  }
   if (!plain && inside.nodes.get(name.name.text)?.kind === "broken") return { kind: "broken" };
-  const meant = nearest(text, inside.nodes.keys());
-  const likely = meant === null ? undefined : inside.nodes.get(meant);
-  if (likely?.kind === "node") (likely as DraftNode).suspect = true;
-  draft.report(unknownName(from, span, `There is no node \`${text}\`.`, text, inside.nodes.keys()));
+  reportUnknown(draft, name, text, inside, from);
   return null;
+}
+
+/** Once for a place in the text, however many turns of a repeat or instances of a sub come by it. */
+function reportUnknown(
+  draft: Draft,
+  name: IndexedName,
+  text: string,
+  inside: Instance,
+  from: Instance,
+): void {
+  const base = name.name.text;
+  const place = `${from.file.path} ${name.range.start}`;
+  let meant = draft.meant.get(place);
+  if (meant === undefined) {
+    const bases = new Set<string>();
+    for (const known of inside.nodes.keys()) bases.add(known.split("[", 1)[0]);
+    meant = bases.has(base) ? null : nearest(base, bases);
+    draft.meant.set(place, meant);
+    const span = name.indices.length === 0 ? name.name.range : name.range;
+    if (inside.values.has(text)) {
+      const message = `\`${text}\` is a value; there is no node of that name.`;
+      draft.report(finding("unknown-name", spanOf(from, span), message));
+    } else if (meant === null) {
+      const others = bases.has(base) && name.indices.length === 0 ? `; there are \`${base}[ … ]\`` : "";
+      draft.report(finding("unknown-name", spanOf(from, span), `There is no node \`${text}\`${others}.`));
+    } else {
+      const message = `There is no node \`${text}\`. Is \`${meant}\` meant?`;
+      const fix = { title: `Write ${meant}`, edits: [{ span: spanOf(from, name.name.range), text: meant }] };
+      draft.report(finding("unknown-name", spanOf(from, span), message, { fix }));
+    }
+  }
+  // What was probably meant is not called unconnected on top.
+  const likely = meant === null ? undefined : inside.nodes.get(meant + text.slice(base.length));
+  if (likely?.kind === "node") likely.suspect = true;
 }

@@ -31,13 +31,19 @@ export class Translator {
   readonly calls: { readonly name: string; readonly at: Range; readonly file: SourceFile }[] = [];
   /** Values that are being worked out, outermost first: a circle shows when one of them is met again. */
   readonly open: Value[] = [];
-  readonly unknown: Typed;
+  readonly #unknown: Typed;
   #depth = 0;
   #work = 0;
 
   constructor(draft: Draft) {
     this.draft = draft;
-    this.unknown = { expr: draft.pool.symbol("unknown", "?"), measure: "unknown", shown: null };
+    this.#unknown = { expr: draft.pool.symbol("unknown", "?"), measure: "unknown", shown: null };
+  }
+
+  /** What no finding follows from; the system that holds it is not complete. */
+  get unknown(): Typed {
+    if (!this.trying) this.draft.incomplete = true;
+    return this.#unknown;
   }
 
   /** An expression of a statement, from the top. */

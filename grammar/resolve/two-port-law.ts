@@ -52,7 +52,7 @@ export function twoPortLaw(
     );
   const left = ownVariable(translator, node, law.left);
   const form = left === null ? undefined : FORMS[`${node.type} ${left.port}.${left.variable}`];
-  if (left !== null && left.typed === translator.unknown && form === undefined) return null;
+  if (left !== null && left.typed.measure === "unknown" && form === undefined) return null;
   if (left === null || form === undefined) return refuse(law.range, formOf(node));
   const [partner, inverse] = form;
   used.length = 0;
@@ -60,7 +60,7 @@ export function twoPortLaw(
   if (right.measure === "unknown" && !translator.trying) return null;
   const other = used.find((own) => `${own.port}.${own.variable}` === partner);
   if (other === undefined || used.some((own) => `${own.port}.${own.variable}` !== partner)) {
-    return right.measure === "unknown" && used.some(({ typed }) => typed === translator.unknown)
+    return right.measure === "unknown" && used.some(({ typed }) => typed.measure === "unknown")
       ? null
       : refuse(law.range, formOf(node));
   }
