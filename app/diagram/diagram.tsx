@@ -1,6 +1,7 @@
 import { useCallback, useMemo, useRef, useState } from "react";
 import type { Span } from "../../grammar/source/span.ts";
 import type { DiagramModel } from "../../grammar/writing/diagram-model.ts";
+import "./diagram.css";
 import { DiagramTable } from "./diagram-table.tsx";
 import { DrawingView } from "./drawing-view.tsx";
 import type { Part } from "./nearest.ts";
@@ -52,9 +53,7 @@ export function Diagram({ model, lit, onLight, onOpen }: DiagramProps) {
   if (asTable) {
     return (
       <div className="diagram">
-        <p className="no-print diagram-tools" style={{ fontSize: "0.8125rem" }}>
-          {asTableButton}
-        </p>
+        <p className="no-print diagram-tools">{asTableButton}</p>
         <DiagramTable model={model} isLit={isLit} onPoint={onPoint} onOpen={onOpen} />
       </div>
     );

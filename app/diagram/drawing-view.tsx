@@ -1,7 +1,16 @@
-import { type KeyboardEvent, type ReactNode, useCallback, useId, useRef, useState } from "react";
+import {
+  type CSSProperties,
+  type KeyboardEvent,
+  type ReactNode,
+  useCallback,
+  useId,
+  useRef,
+  useState,
+} from "react";
 import type { DiagramModel } from "../../grammar/writing/diagram-model.ts";
 import { type Box, boxOf, type Drawing } from "../../grammar/writing/drawing.ts";
 import { drawingSvg } from "../../grammar/writing/drawing-svg.ts";
+import "./diagram.css";
 import { DrawnPartView } from "./drawn-part.tsx";
 import { marksOf } from "./marks.ts";
 import { nearest, type Part, type Way } from "./nearest.ts";
@@ -10,7 +19,9 @@ import { useViewBox } from "./use-view-box.ts";
 import { moved, revealing, zoomed } from "./view-box.ts";
 
 const NOTHING: Box = { x: 0, y: 0, width: 600, height: 200 };
-const TOOLS = { display: "flex", flexWrap: "wrap", gap: "0.25rem", fontSize: "0.8125rem" } as const;
+/** The least scale at which names can be read, and how wide a drawing may be to be kept at it. */
+const READABLE = 0.6;
+const WIDEST_OVER = 900;
 const WAYS: Readonly<Record<string, Way>> = {
   ArrowLeft: "left",
   ArrowRight: "right",
@@ -104,40 +115,37 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
     });
 
   const marks = marksOf(model);
+  const least = Math.min(READABLE * all.width, WIDEST_OVER);
   return (
     <div className="diagram">
-      {/* biome-ignore lint/a11y/useSemanticElements: a fieldset cannot draw */}
-      <svg
-        ref={svg}
-        viewBox={`${view.x} ${view.y} ${view.width} ${view.height}`}
-        width={all.width}
-        height={all.height}
-        style={{
-          display: "block",
-          maxWidth: "100%",
-          height: "auto",
-          maxHeight: "70vh",
-          margin: "0 auto",
-          touchAction: "pan-y",
-        }}
-        // biome-ignore lint/a11y/noNoninteractiveTabindex: the arrow keys move what it shows
-        tabIndex={0}
-        role="group"
-        aria-label={`Bond graph of ${model.system}`}
-        aria-describedby={help}
-        aria-busy={waiting}
-        onKeyDown={onFrameKey}
-        {...drag}
-      >
-        {parts("bond")}
-        {parts("node")}
-      </svg>
+      <div className="diagram-sheet" style={{ "--least-width": `${least}px` } as CSSProperties}>
+        {/* biome-ignore lint/a11y/useSemanticElements: a fieldset cannot draw */}
+        <svg
+          ref={svg}
+          viewBox={`${view.x} ${view.y} ${view.width} ${view.height}`}
+          width={all.width}
+          height={all.height}
+          // The whole drawing lets a finger scroll the page; what is zoomed is moved by it.
+          style={{ touchAction: whole ? "auto" : "none" }}
+          // biome-ignore lint/a11y/noNoninteractiveTabindex: the arrow keys move what it shows
+          tabIndex={0}
+          role="group"
+          aria-label={`Bond graph of ${model.system}`}
+          aria-describedby={help}
+          aria-busy={waiting}
+          onKeyDown={onFrameKey}
+          {...drag}
+        >
+          {parts("bond")}
+          {parts("node")}
+        </svg>
+      </div>
       <p className="note" role="status">
         {fault !== null ? `The drawing could not be laid out: ${fault}. The table says the same.` : null}
         {fault === null && drawing === null ? "The drawing is being laid out." : null}
       </p>
       {marks.length === 0 ? null : <p className="note">{marks.join(" · ")}</p>}
-      <p className="no-print diagram-tools" style={TOOLS}>
+      <p className="no-print diagram-tools">
         {children}
         <button type="button" className="button" onClick={() => zoom(1.25)}>
           Closer
@@ -168,8 +176,8 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
           Save as SVG
         </button>
       </p>
-      <details className="note no-print">
-        <summary style={{ minHeight: "1.5rem" }}>Keys and pointer</summary>
+      <details className="note no-print diagram-keys">
+        <summary>Keys and pointer</summary>
         <p id={help}>
           Drag or use the arrow keys to move, + and − or the wheel with Ctrl to zoom, 0 for the whole. Tab
           goes on to the elements: there the arrow keys lead from one to the next, Enter opens its line,

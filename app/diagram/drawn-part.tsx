@@ -45,7 +45,6 @@ export const DrawnPartView = memo(function DrawnPartView(props: DrawnPartProps) 
       data-id={part.id}
       data-lit={lit}
       className="drawn-part"
-      style={{ cursor: "pointer" }}
       onPointerEnter={() => onPoint(own)}
       onPointerLeave={() => onPoint(null)}
       onFocus={() => onFocus(own)}
