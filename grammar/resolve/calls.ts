@@ -7,7 +7,7 @@ import { spanIn } from "./files.ts";
 import { plainScope, type Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
 import type { Call } from "./tree-walk.ts";
-import { isDimension, measureText, type Typed } from "./typed.ts";
+import { isDimension, isIn, type Typed } from "./typed.ts";
 
 export function translateCall(translator: Translator, tree: Call, scope: Scope): Typed {
   const name = tree.name.text;
@@ -69,7 +69,7 @@ function builtIn(translator: Translator, name: FunctionName, tree: Call, scope: 
     return translator.mismatch(
       tree.arguments[0].range,
       scope,
-      `\`${name}\` takes a plain number or an angle, this is in ${measureText(measure, first.shown)}.`,
+      `\`${name}\` takes a plain number or an angle, this is ${isIn(measure, first.shown)}.`,
     );
   }
   return { expr, measure: DIMENSIONLESS, shown: null };

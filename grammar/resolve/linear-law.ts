@@ -10,7 +10,7 @@ import { declarationSpan, endOf } from "./law-scope.ts";
 import { bondVariable, finalBond, storeVariable } from "./port-variables.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
-import { isDimension, measureText } from "./typed.ts";
+import { isDimension, isIn } from "./typed.ts";
 
 /** The two forms of a linear law: `left = value*right`, or with the sides changed `right = value*left`. */
 const FORMS = {
@@ -52,7 +52,7 @@ export function linearLaw(
     translator.mismatch(
       tree.range,
       scope,
-      `The linear parameter of ${node.type} ${node.local} is in ${measureText(value.measure, value.shown)}; in ${bond.domain.name} it is in ${units[0]} (\`${form.left} = value*${form.right}\`) or in ${units[1]} (\`${form.right} = value*${form.left}\`).`,
+      `The linear parameter of ${node.type} ${node.local} is ${isIn(value.measure, value.shown)}; in ${bond.domain.name} it is in ${units[0]} (\`${form.left} = value*${form.right}\`) or in ${units[1]} (\`${form.right} = value*${form.left}\`).`,
     );
     return null;
   }

@@ -11,7 +11,7 @@ import type { Draft, Value } from "./draft.ts";
 import { type SourceFile, spanIn } from "./files.ts";
 import { translateReference } from "./references.ts";
 import type { Scope } from "./scope.ts";
-import { cyclesForAngle, fits, isDimension, type Measure, measureText, type Typed } from "./typed.ts";
+import { cyclesForAngle, fits, isDimension, isIn, type Measure, measureText, type Typed } from "./typed.ts";
 
 type Binary = Extract<Expression, { kind: "binary" }>;
 
@@ -114,12 +114,8 @@ export class Translator {
     by: string,
   ): Typed {
     if (!fits(typed.measure, measure)) {
-      const given = measureText(typed.measure, typed.shown);
-      return this.mismatch(
-        range,
-        scope,
-        `${what} is in ${given}, ${by} wants ${measureText(measure, shown)}.`,
-      );
+      const given = isIn(typed.measure, typed.shown);
+      return this.mismatch(range, scope, `${what} is ${given}, ${by} wants ${measureText(measure, shown)}.`);
     }
     if (cyclesForAngle(shown, typed.shown)) {
       return this.mismatch(
@@ -293,7 +289,7 @@ export class Translator {
       return this.mismatch(
         tree.right.range,
         scope,
-        `An exponent is a plain number, this one is in ${measureText(exponent.measure, exponent.shown)}.`,
+        `An exponent is a plain number, this one is ${isIn(exponent.measure, exponent.shown)}.`,
       );
     }
     const expr = this.draft.pool.power(base.expr, exponent.expr);
@@ -305,7 +301,7 @@ export class Translator {
       return this.mismatch(
         tree.range,
         scope,
-        `What is raised is in ${measureText(base.measure, base.shown)}: only a whole or half power, written as a number, has a unit.`,
+        `What is raised is ${isIn(base.measure, base.shown)}: only a whole or half power, written as a number, has a unit.`,
       );
     }
     return { expr, measure: dimension, shown: null };
@@ -338,7 +334,7 @@ export class Translator {
         typed[i] = this.mismatch(
           trees[i].range,
           scope,
-          `${what} must be in one unit: this is in ${measureText(typed[i].measure, typed[i].shown)}, the first in ${measureText(first.measure, first.shown)}.`,
+          `${what} must be in one unit: this is ${isIn(typed[i].measure, typed[i].shown)}, the first ${isIn(first.measure, first.shown)}.`,
         );
       } else if (cyclesForAngle(first.shown, typed[i].shown) || cyclesForAngle(typed[i].shown, first.shown)) {
         typed[i] = this.mismatch(

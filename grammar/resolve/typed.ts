@@ -33,14 +33,20 @@ export function cyclesForAngle(wanted: Unit | null, given: Unit | null): boolean
   return wanted?.angular === true && given?.cycles === true;
 }
 
-/** `N*s/m`, in the unit of the domain where that is known; `no unit` for a plain number. */
+/** What a quantity is measured in, in the unit of its domain where that is known: `N*s/m`, `a plain number`. */
 export function measureText(measure: Measure, shown: Unit | null): string {
   if (measure === "truth") return "a condition";
   if (measure === "any" || measure === "unknown") return "any unit";
-  if (isDimensionless(measure)) return shown?.angular === true ? "rad" : "no unit";
+  if (isDimensionless(measure)) return shown?.angular === true ? "rad" : "a plain number";
   if (shown !== null && equal(shown.dimension, measure)) {
     if (shown.factor === 1) return shown.text;
     if (shown.angular) return "rad/s";
   }
   return unitText(measure);
+}
+
+/** As a predicate: `in N*s/m`, `a plain number`. */
+export function isIn(measure: Measure, shown: Unit | null): string {
+  const text = measureText(measure, shown);
+  return text.startsWith("a ") ? text : `in ${text}`;
 }
