@@ -136,6 +136,7 @@ export class ExpressionParser extends EmbeddedActionsParser {
   readonly operand = this.RULE(
     "operand",
     (): Expression =>
+      this.#bareReference() ??
       this.OR<Expression>([
         { ALT: () => this.SUBRULE(this.quantity) },
         { GATE: () => this.LA(2).tokenType === Open, ALT: () => this.SUBRULE(this.call) },
@@ -190,11 +191,11 @@ export class ExpressionParser extends EmbeddedActionsParser {
 
   /** `armature.f`, `cell[i-1].spring.q`. */
   readonly reference = this.RULE("reference", (): Reference => {
-    const first = this.SUBRULE1(this.indexed);
+    const first = this.#bareName() ?? this.SUBRULE1(this.indexed);
     const path = [first];
     this.MANY(() => {
       this.CONSUME(Dot);
-      path.push(this.SUBRULE2(this.indexed));
+      path.push(this.#bareName() ?? this.SUBRULE2(this.indexed));
     });
     return { kind: "reference", path, range: this.RECORDING_PHASE ? NOWHERE : this.to(first.range.start) };
   });
@@ -217,6 +218,22 @@ export class ExpressionParser extends EmbeddedActionsParser {
     return { value: token.image.slice(1, -1), range: rangeOf(token) };
   });
 
+  /** Most operands are a name and nothing more: those are taken at once, not by way of three rules. */
+  #bareReference(): Reference | null {
+    const after = this.LA(2).tokenType;
+    if (after === Open || after === Dot) return null;
+    const name = this.#bareName();
+    return name === null ? null : { kind: "reference", path: [name], range: name.range };
+  }
+
+  /** A name without an index; null while Chevrotain records the grammar, which it must see in full. */
+  #bareName(): IndexedName | null {
+    if (this.RECORDING_PHASE || this.LA(2).tokenType === OpenIndex) return null;
+    if (!belongs(this.LA(1).tokenType, Name)) return null;
+    const name = identifier(this.CONSUME(Name));
+    return { name, indices: [], range: name.range };
+  }
+
   /** Stops before the call stack can run out, whatever brackets, signs and powers are piled up. */
   #nest(more: number): void {
     this.#depth += more;
@@ -230,8 +247,9 @@ export class ExpressionParser extends EmbeddedActionsParser {
       if (this.text[at] === "\n" || this.text[at] === "\r") return false;
     }
     if (next.tokenType === Name || next.tokenType === Percent) return true;
-    const after = this.LA(2);
-    return next.image === "1" && after.tokenType === Slash && after.startOffset === next.startOffset + 1;
+    const [stroke, word] = [this.LA(2), this.LA(3)];
+    if (next.image !== "1" || stroke.tokenType !== Slash || stroke.startOffset !== ends(next)) return false;
+    return word.startOffset === ends(stroke) && isWord(word);
   }
 
   #unitGoesOn(): boolean {
