@@ -19,6 +19,7 @@ const application: UserConfig = {
       ...["react", "react-dom/client", "react-router", "react-router/dom"],
       ...["chevrotain", "diff", "elkjs/lib/elk-api.js", "elkjs/lib/elk-worker.min.js", "katex", "zod"],
       ...["monaco-editor/editor", "monaco-editor/features/*/register"],
+      "monaco-editor/editor/contrib/suggest/browser/suggestController.js",
     ],
     exclude: SERVER_ONLY,
   },

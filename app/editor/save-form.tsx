@@ -41,7 +41,7 @@ export function SaveForm({ ref, base, parent, path, unsaved, alive, mayWrite, ke
         className="field"
         placeholder="What this version changes"
         autoComplete="off"
-        value={alive ? saving.message : undefined}
+        value={saving.message}
         onChange={(event) => saving.setMessage(event.target.value)}
         aria-invalid={invalid}
         aria-describedby="save-saying"

@@ -160,6 +160,8 @@ function openEditor(host: HTMLDivElement, current: { readonly current: TextPageP
     fixedOverflowWidgets: true,
     tabSize: 2,
     wordBasedSuggestions: "off",
+    // Enter ends the line, whatever is on offer; Tab takes it.
+    acceptSuggestionOnEnter: "off",
     scrollbar: {
       useShadows: false,
       verticalScrollbarSize: 10,

@@ -166,6 +166,6 @@ function pairOf(entry: OutlineEntry): [string, string] {
 }
 
 function named(entry: OutlineEntry): Suggestion {
-  const detail = entry.description ?? entry.declaration;
-  return { label: entry.name, insert: entry.name, detail: `${entry.word}  ${detail}`, sort: "name" };
+  const detail = entry.description === null ? entry.declaration : `${entry.word}: ${entry.description}`;
+  return { label: entry.name, insert: entry.name, detail, sort: "name" };
 }

@@ -39,14 +39,10 @@ export function registerServices(source: ServiceSource): monaco.IDisposable {
       }),
     }),
     languages.registerHoverProvider(NOTATION, {
-      provideHover(model, position): Provided<monaco.languages.Hover> {
-        const entry = entryAt(source.view(), model, position);
-        if (entry === null) return null;
-        const code = `\`\`\`${NOTATION}\n${entry.declaration}\n\`\`\``;
-        const where = entry.place.file === pathOf(model.uri) ? `line ${entry.place.line}` : entry.place.file;
-        return {
-          contents: [{ value: code }, { value: [entry.description, where].filter(Boolean).join("  \n") }],
-        };
+      async provideHover(model, position): Promise<Provided<monaco.languages.Hover>> {
+        const view = source.view();
+        const contents = [...declared(view, model, position), ...(await explained(view, model, position))];
+        return contents.length === 0 ? null : { contents };
       },
     }),
     languages.registerDefinitionProvider(NOTATION, {
@@ -131,6 +127,37 @@ function entryAt(
     ({ place }) => place.line === position.lineNumber && place.column === word.startColumn,
   );
   return declared ?? meant.find(({ space }) => (space === "node") === node) ?? meant[0] ?? null;
+}
+
+/** What a name was declared as. */
+function declared(
+  view: FileView | null,
+  model: monaco.editor.ITextModel,
+  position: monaco.Position,
+): monaco.IMarkdownString[] {
+  const entry = entryAt(view, model, position);
+  if (entry === null) return [];
+  const code = `\`\`\`${NOTATION}\n${entry.declaration}\n\`\`\``;
+  const where = entry.place.file === pathOf(model.uri) ? `line ${entry.place.line}` : entry.place.file;
+  return [{ value: code }, { value: [entry.description, where].filter(Boolean).join("  \n") }];
+}
+
+/** What the findings here mean, and where to read on; the pages are loaded when somebody first asks. */
+async function explained(
+  view: FileView | null,
+  model: monaco.editor.ITextModel,
+  position: monaco.Position,
+): Promise<monaco.IMarkdownString[]> {
+  const path = pathOf(model.uri);
+  const here = (view?.findings ?? []).filter(
+    ({ place }) => place.file === path && monaco.Range.containsPosition(rangeOf(place), position),
+  );
+  if (here.length === 0) return [];
+  const { pageOf } = await import("../../../grammar/diagnostics/pages.ts");
+  return [...new Set(here.map(({ name }) => name))].map((name) => {
+    const address = new URL(`/reference/findings/${name}`, window.location.href);
+    return { value: `${pageOf(name)?.what ?? ""} [More about ${name}](${address})` };
+  });
 }
 
 function symbols(view: FileView | null, path: string): monaco.languages.DocumentSymbol[] {

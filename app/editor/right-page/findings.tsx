@@ -1,10 +1,8 @@
 import { useContext } from "react";
+import { SeverityWord } from "../../components/severity-word.tsx";
 import type { FindingView, Place } from "../view-model.ts";
 import { LightingContext } from "./lighting.ts";
 import { Section } from "./section.tsx";
-
-export const SIGNS = { error: "✕", warning: "△", note: "○" } as const;
-const INK = { error: "text-mistake", warning: "text-warning", note: "text-faded" } as const;
 
 interface FindingsProps {
   readonly path: string;
@@ -28,12 +26,16 @@ export function Findings({ path, findings, mayFix, onFix, onOpen }: FindingsProp
               <Where path={path} place={found.place} onOpen={onOpen} />
               <div>
                 <p>
-                  <span className={`font-semibold ${INK[found.severity]}`}>
-                    <span aria-hidden="true">{SIGNS[found.severity]} </span>
-                    {found.severity}
-                  </span>{" "}
-                  <Prose text={found.message} />{" "}
-                  <code className="text-faded whitespace-nowrap">{found.name}</code>
+                  <SeverityWord severity={found.severity} /> <Prose text={found.message} />{" "}
+                  <a
+                    href={`/reference/findings/${found.name}`}
+                    target="_blank"
+                    title="What this finding means, on a page of its own"
+                    className="font-mono text-note whitespace-nowrap"
+                    rel="noopener"
+                  >
+                    {found.name}
+                  </a>
                 </p>
                 {found.facts.length > 0 && (
                   <ul className="facts">
