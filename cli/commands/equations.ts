@@ -1,14 +1,14 @@
 import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
 import { derivationOf } from "../../grammar/equations/derivation.ts";
 import type { StateModel } from "../../grammar/equations/model.ts";
-import { checkFile, type SystemReport } from "../../grammar/pipeline.ts";
+import { checkFile, type SystemReport, type TreeCache } from "../../grammar/pipeline.ts";
 import type { Span } from "../../grammar/source/span.ts";
 import { type CheckedFile, equationsDocument } from "../../grammar/writing/json.ts";
 import { systemMarkdown } from "../../grammar/writing/markdown.ts";
 import { modelLatex } from "../../grammar/writing/system-latex.ts";
 import { columns, glossaryText, modelText, type TextSection } from "../../grammar/writing/system-text.ts";
 import { expressionText } from "../../grammar/writing/text.ts";
-import { modelFiles } from "../model-files.ts";
+import { type ModelFile, modelFiles } from "../model-files.ts";
 import { findingText } from "../output/findings.ts";
 import { type ColourChoice, inert, type Paint, paintFor, print, remark } from "../output/print.ts";
 import { WrongUse } from "../wrong-use.ts";
@@ -26,28 +26,31 @@ export interface EquationsArguments {
 export function equations(file: string, options: EquationsArguments): number {
   const [model, ...others] = modelFiles([file], options.stdinName);
   if (others.length > 0) throw new WrongUse(`${file} is a folder; equations are derived for one file.`);
-  const report = checkFile(model.files, model.path);
-  const from: CheckedFile = { report, files: model.files, shown: model.shown };
-  const system = chooseSystem(from, options.system);
+  const from = checkedSystem(model, options.system);
+  const system = from.report.systems.at(0) ?? null;
   const text = reportText(from, system, options);
   if (text !== "") print(text);
   if (options.format === "text" || options.format === "latex") remarkFindings(from, system, options.color);
-  const refused = system?.model == null || report.findings.some(({ severity }) => severity === "error");
+  const refused = system?.model == null || from.report.findings.some(({ severity }) => severity === "error");
   return refused ? 1 : 0;
 }
 
-/** The last system of the file, unless one is named. null where the text holds none that could be read. */
-function chooseSystem({ report, shown }: CheckedFile, name: string | undefined): SystemReport | null {
-  const system =
-    name === undefined ? report.systems.at(-1) : report.systems.find((one) => one.system === name);
-  if (system === undefined && name !== undefined) {
-    const names = report.systems.map((one) => one.system).join(", ") || "none";
-    throw new WrongUse(`${shown(report.path)} holds no system ${name}; it holds: ${names}.`);
+/** The file with one of its systems, the last unless one is named, and with no findings of the others. */
+function checkedSystem({ files, path, shown }: ModelFile, name: string | undefined): CheckedFile {
+  const cache: TreeCache = new Map();
+  const whole = checkFile(files, path, { system: name, cache });
+  const chosen = whole.systems.at(-1)?.system;
+  if (chosen === undefined && name !== undefined) {
+    const all = checkFile(files, path, { cache }).systems.map(({ system }) => system);
+    throw new WrongUse(`${shown(path)} holds no system ${name}; it holds: ${all.join(", ") || "none"}.`);
   }
-  if (system === undefined && report.findings.length === 0) {
-    throw new WrongUse(`${shown(report.path)} holds no system.`);
-  }
-  return system ?? null;
+  if (chosen === undefined && whole.findings.length === 0)
+    throw new WrongUse(`${shown(path)} holds no system.`);
+  const report =
+    chosen === undefined || whole.systems.length === 1
+      ? whole
+      : checkFile(files, path, { system: chosen, cache });
+  return { report, files, shown };
 }
 
 function reportText(from: CheckedFile, system: SystemReport | null, options: EquationsArguments): string {

@@ -96,6 +96,17 @@ describe("equations", () => {
     expect(report).toContain("not a substitute for testing");
   });
 
+  it("takes the last system of a file unless one is named, and only its findings", () => {
+    const second = CLEAN.slice(CLEAN.indexOf("## A cart")).replace("system Cart", "system Trolley");
+    place.write("two.wright", `${CONFLICT}\n${second}`);
+    const last = place.run(["equations", "--format", "json", "two.wright"]);
+    expect(EquationsDocument.parse(JSON.parse(last.out))).toMatchObject({ system: "Trolley", findings: [] });
+    expect(last.code).toBe(0);
+    const first = place.run(["equations", "--format", "json", "two.wright", "--system", "Lines"]);
+    expect(EquationsDocument.parse(JSON.parse(first.out))).toMatchObject({ system: "Lines", states: [] });
+    expect(first.code).toBe(1);
+  });
+
   it("keeps findings off standard output", () => {
     const { out, err } = place.run(["equations", "dependent.wright"]);
     expect(out).not.toContain("derivative-causality");
