@@ -10,6 +10,8 @@ export default [
   route("sets/:team/:set/history", "routes/set-history/route.tsx"),
   route("sets/:team/:set/commits/:commit", "routes/show-commit/route.tsx"),
   route("sets/:team/:set/files/:commit/*", "routes/show-file/route.tsx"),
+  route("reference", "routes/reference/route.tsx"),
+  route("reference/findings/:name", "routes/explain-finding/route.tsx"),
   route("w/:name", "routes/worker/route.ts"),
   route("health", "routes/health/route.ts"),
   // The middleware does not run for an address without a route; this one gives the rest their headers.

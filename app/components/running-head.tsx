@@ -21,6 +21,7 @@ export function RunningHead({ person, theme }: RunningHeadProps) {
         <Where />
       </nav>
       <div className="reader">
+        {person !== null && <Link to="/reference">Reference</Link>}
         <ThemeSwitch initial={theme} />
         {person !== null && (
           <Form method="post" action="/sign-out" className="contents">

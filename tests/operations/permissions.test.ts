@@ -30,6 +30,8 @@ const table: Record<string, { loader?: string; action?: string }> = {
   "routes/set-history/route.tsx": { loader: "set.read" },
   "routes/show-commit/route.tsx": { loader: "set.read" },
   "routes/show-file/route.tsx": { loader: "set.read" },
+  "routes/reference/route.tsx": { loader: "signed-in" },
+  "routes/explain-finding/route.tsx": { loader: "signed-in" },
   "routes/worker/route.ts": { loader: "anyone" },
   "routes/health/route.ts": { loader: "anyone" },
   "routes/not-found/route.tsx": { loader: "anyone", action: "anyone" },

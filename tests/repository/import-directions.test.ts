@@ -15,7 +15,7 @@ const STAGES = ["syntax", "resolve", "causality", "equations", "analysis", "expe
 const RESULTS = ["grammar/comparison", "grammar/writing"];
 const CORE = [...BELOW_STAGES, ...STAGES, "grammar/simulation", ...RESULTS, "grammar"];
 const OPERATIONS = ["app/operations", "app/storage", "app/session"];
-const PAGES = ["app/routes", "app/components", "app/editor", "app/diagram", "app/review"];
+const PAGES = ["app/routes", "app/components", "app/editor", "app/diagram", "app/reference", "app/review"];
 const FOLDERS = [...CORE, ...OPERATIONS, ...PAGES, "cli", "db", "tests"];
 
 function upTo(stage: string): string[] {
