@@ -33,6 +33,9 @@ export function assignCausality(graph: FlatGraph): { causal: CausalGraph; findin
 /** Each costs the whole assignment again; nobody ties this many by rings of junctions alone. */
 const MOST_TIED = 64;
 
+/** Each finding tells its whole chain; who has this many conflicts mends them in turns. */
+const MOST_CONFLICTS = 100;
+
 function assignSequentially(
   graph: FlatGraph,
   nodes: readonly FlatNode[],
@@ -53,7 +56,10 @@ function assignSequentially(
     // What contradicts itself after a conflict is not worth a finding: one mistake, one finding.
     const chosen = grant(wishes(graph, nodes, stores, tied, openIn(careful)), careful) ?? [];
     const causal = causalGraph(graph, careful, stores, chosen);
-    return { causal, findings: clashes.map((clash) => conflictFinding(causal, clash)) };
+    return {
+      causal,
+      findings: clashes.slice(0, MOST_CONFLICTS).map((clash) => conflictFinding(causal, clash)),
+    };
   }
   const found = searchStrokes(ordered, careful, [...wishes(graph, nodes, stores, tied, () => true)]);
   const causal = causalGraph(graph, careful, stores, "chosen" in found ? found.chosen : []);

@@ -94,6 +94,9 @@ const WIDEST = 72;
 
 /** Rows with their first cells padded to one width. */
 export function columns(rows: readonly (readonly [string, string])[]): string[] {
-  const width = Math.max(0, ...rows.map(([first]) => first.length).filter((length) => length <= WIDEST));
+  const width = rows.reduce(
+    (most, [first]) => (first.length <= WIDEST ? Math.max(most, first.length) : most),
+    0,
+  );
   return rows.map(([first, second]) => (second === "" ? first : `${first.padEnd(width)}  ${second}`));
 }
