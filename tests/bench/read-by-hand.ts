@@ -50,6 +50,10 @@ export function readByHand(text: string): Node[] {
     }
   }
 
+  function isAt(wanted: string): boolean {
+    return kind === wanted;
+  }
+
   function take(): string {
     const taken = word;
     advance();
@@ -104,7 +108,7 @@ export function readByHand(text: string): Node[] {
     }
     if (kind === "number") {
       const value = take();
-      if (kind !== "word") return { kind: "number", start: from, parts: [value] };
+      if (!isAt("word")) return { kind: "number", start: from, parts: [value] };
       const unit = start;
       while (at < text.length && !/[\s)]/.test(text[at])) at += 1;
       const written = text.slice(unit, at);
