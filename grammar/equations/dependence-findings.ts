@@ -5,13 +5,18 @@ import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import type { Dependence } from "./dependence.ts";
 import { listed } from "./listed.ts";
-import type { SolvedRates } from "./rates.ts";
+import type { AlgebraicLoop } from "./model.ts";
+import { followable, type SolvedRates } from "./rates.ts";
 
 /** How far back along its causal path a dependence is followed for the facts of a finding. */
 const PATH_LIMIT = 60;
 
-export function dependenceFinding(assignments: Assignments, store: Store, value: Expr): Finding {
-  const symbols = [...symbolsOf(value)];
+export function dependenceFinding(
+  assignments: Assignments,
+  store: Store,
+  settledBy: ReadonlySet<Symbol>,
+): Finding {
+  const symbols = [...settledBy];
   const states = named(symbols, "state");
   const inputs = named(symbols, "input");
   const causes = [
@@ -39,11 +44,13 @@ export function refusedRates(
   assignments: Assignments,
   dependence: Dependence,
   solved: SolvedRates,
+  loops: readonly AlgebraicLoop[],
 ): Finding[] {
   const { nodes } = assignments.causal.graph;
   const findings: Finding[] = [];
+  const moving = new Set(loops.filter(followable).map(({ variables }) => variables[0].symbol.name));
   for (const { store, value } of dependence.followers) {
-    const unknown = named([...symbolsOf(value)], "unknown");
+    const unknown = named([...symbolsOf(value)], "unknown").filter((name) => !moving.has(name));
     if (unknown.length === 0) continue;
     const message =
       `\`${store.name}\` follows from ${listed(unknown)}, which only a numerical solution gives; ` +

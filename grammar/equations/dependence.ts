@@ -1,5 +1,7 @@
-import type { Expr } from "../symbolic/expression.ts";
+import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
+import type { AlgebraicLoop } from "./model.ts";
 import type { Values } from "./paths.ts";
 import { RateFinder } from "./rates.ts";
 
@@ -35,4 +37,16 @@ export function classifyStores(assignments: Assignments, values: Values): Depend
     (finder.holds(value) ? forced : followers).push({ store, value });
   }
   return { independent, followers, forced };
+}
+
+/** The symbols that settle a value, with those in the residuals of what loops leave unknown in it. */
+export function settledBy(value: Expr, loops: readonly AlgebraicLoop[]): ReadonlySet<Symbol> {
+  const found = new Set(symbolsOf(value));
+  // A set visits what is added to it on the way.
+  for (const symbol of found) {
+    if (symbol.role !== "unknown") continue;
+    const loop = loops.find(({ variables }) => variables.some((variable) => variable.symbol === symbol));
+    for (const each of symbolsOf(...(loop?.residuals ?? []))) found.add(each);
+  }
+  return found;
 }

@@ -9,9 +9,9 @@ import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { type Assignments, assignmentsOf, type Store } from "./assignments.ts";
 import { coEnergyOf } from "./coenergy-value.ts";
-import { classifyStores, type Dependence } from "./dependence.ts";
+import { classifyStores, type Dependence, settledBy } from "./dependence.ts";
 import { dependenceFinding, inputRateFinding, refusedRates } from "./dependence-findings.ts";
-import type { DependentStore, ModelInput, RateEquation, State, StateModel } from "./model.ts";
+import type { AlgebraicLoop, DependentStore, ModelInput, RateEquation, State, StateModel } from "./model.ts";
 import { followPaths, type Values } from "./paths.ts";
 import { type Follower, RateFinder, type RateRow, type SolvedRates, solveRates } from "./rates.ts";
 import { startValues } from "./start.ts";
@@ -37,16 +37,18 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const followers = dependence.followers.map(
     ({ store, value }): Follower => ({ name: store.name, rateSymbol: store.rateSymbol, value }),
   );
-  const solved = tied ? solveRates(pool, rows, followers) : NOTHING_TIED;
-  const refused = refusedRates(assignments, dependence, solved);
+  const solved = tied ? solveRates(pool, rows, followers, followed.loops) : NOTHING_TIED;
+  const refused = refusedRates(assignments, dependence, solved, followed.loops);
   findings.push(...refused);
   if (refused.length > 0) return { model: null, findings };
 
   const finish = tied ? rateFree(pool, solved) : (expr: Expr) => expr;
   const dependent = dependence.followers.map((follower) =>
-    dependentStore(assignments, follower.store, follower.value, finish),
+    dependentStore(assignments, follower.store, follower.value, followed.loops, finish),
   );
-  const paths = dependence.followers.map(({ store, value }) => dependenceFinding(assignments, store, value));
+  const paths = dependence.followers.map(({ store, value }) =>
+    dependenceFinding(assignments, store, settledBy(value, followed.loops)),
+  );
   findings.push(...paths);
 
   const { starts, findings: startFindings } = startValues(assignments, dependence);
@@ -179,9 +181,10 @@ function dependentStore(
   assignments: Assignments,
   store: Store,
   value: Expr,
+  loops: readonly AlgebraicLoop[],
   finish: (expr: Expr) => Expr,
 ): DependentStore {
-  const of = [...symbolsOf(value)].filter(({ role }) => role === "state").map(({ name }) => name);
+  const of = [...settledBy(value, loops)].filter(({ role }) => role === "state").map(({ name }) => name);
   return {
     name: store.name,
     symbol: store.symbol,

@@ -8,6 +8,7 @@ import { solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { connectedGroups } from "./dependency.ts";
+import type { AlgebraicLoop } from "./model.ts";
 import { collected } from "./tidy.ts";
 
 /** A state whose rate is `rate`, or, where it is null, one that has to satisfy `constraint` = its own value. */
@@ -50,6 +51,7 @@ export function solveRates(
   pool: Pool,
   rows: readonly RateRow[],
   followers: readonly Follower[],
+  loops: readonly AlgebraicLoop[],
 ): SolvedRates {
   const rates = new Map<Expr, Expr>();
   const coupled: CoupledRates[] = [];
@@ -58,7 +60,7 @@ export function solveRates(
   const followed = new Map(followers.map((follower) => [follower.rateSymbol, follower]));
   const finder = new RateFinder();
   const restful = (expr: Expr) => !finder.holds(expr);
-  const rateOfFollower = followerRates(pool, rows);
+  const rateOfFollower = followerRates(pool, rows, loops);
 
   const items: (RateRow | Follower)[] = [...rows, ...followers];
   const index = new Map(items.map((item, i) => [item.rateSymbol, i]));
@@ -126,31 +128,50 @@ export function solveRates(
   }
 }
 
-/** ġ as an expression in the rates of states and inputs. */
-function followerRates(pool: Pool, rows: readonly RateRow[]): (value: Expr) => Expr {
+/**
+ * ġ as an expression in the rates of states and inputs. What a loop leaves unknown moves so that its residual stays
+ * zero: ż = -(∂r/∂x·ẋ + …)/(∂r/∂z).
+ */
+function followerRates(
+  pool: Pool,
+  rows: readonly RateRow[],
+  loops: readonly AlgebraicLoop[],
+): (value: Expr) => Expr {
   const rateOf = new Map(rows.map((row) => [row.symbol, row.rateSymbol]));
+  const residualOf = new Map(
+    loops.filter(followable).map((loop) => [loop.variables[0].symbol, loop.residuals[0]]),
+  );
   const slopes = new Map<Symbol, (expr: Expr) => Expr>();
-  return (value) => {
+  const slope = (expr: Expr, symbol: Symbol): Expr => {
+    let of = slopes.get(symbol);
+    if (of === undefined) {
+      of = differentiation(pool, symbol);
+      slopes.set(symbol, of);
+    }
+    return of(expr);
+  };
+  const moved = (value: Expr, held: Symbol | null): Expr => {
     const terms: Expr[] = [];
     for (const symbol of symbolsOf(value)) {
-      const rate =
-        symbol.role === "state"
-          ? rateOf.get(symbol)
-          : symbol.role === "input"
-            ? pool.symbol("inputRate", symbol.name)
-            : symbol.role === "time"
-              ? pool.one
-              : undefined;
-      if (rate === undefined) continue;
-      let slope = slopes.get(symbol);
-      if (slope === undefined) {
-        slope = differentiation(pool, symbol);
-        slopes.set(symbol, slope);
-      }
-      terms.push(pool.product(slope(value), rate));
+      const rate = symbol === held ? undefined : symbolRate(symbol);
+      if (rate !== undefined) terms.push(pool.product(slope(value, symbol), rate));
     }
     return pool.sum(terms);
   };
+  const symbolRate = (symbol: Symbol): Expr | undefined => {
+    if (symbol.role === "state") return rateOf.get(symbol);
+    if (symbol.role === "input") return pool.symbol("inputRate", symbol.name);
+    if (symbol.role === "time") return pool.one;
+    const residual = residualOf.get(symbol);
+    if (residual === undefined) return undefined;
+    return pool.negate(pool.divide(moved(residual, symbol), slope(residual, symbol)));
+  };
+  return (value) => moved(value, null);
+}
+
+/** A loop with one unknown, whose rate can be written down. */
+export function followable({ variables, solved }: AlgebraicLoop): boolean {
+  return !solved && variables.length === 1;
 }
 
 /** Looks for rate symbols, remembering what holds none: an expression without rates is known to be so at once. */

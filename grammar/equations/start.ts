@@ -44,7 +44,7 @@ export function startValues(
 function refusal(start: FlatStart, follower: Store | undefined): string {
   return follower === undefined
     ? `\`${start.target.name}\` is no state and settles none: give a start to a store's p or q, to f of an inertia or to e of a compliance.`
-    : `\`${follower.name}\` follows from other stores, so it can't have a start of its own; give one to a store that it follows.`;
+    : `\`${follower.name}\` is settled by other stores or a source, so it can't have a start of its own; give one to what it follows.`;
 }
 
 /** The state at which the store's law gives this effort or flow; in closed form, else by Newton's method from 0. */

@@ -30,7 +30,7 @@ function valueFrom(expr: Expr, valueOf: (arg: Expr) => number, lookup: (symbol: 
     case "sum":
       return args.reduce((total, arg) => total + valueOf(arg), 0);
     case "product":
-      return args.reduce((total, arg) => total * valueOf(arg), 1);
+      return quotientValue(args, valueOf);
     case "power":
       return args[1].value === 0.5 ? Math.sqrt(valueOf(args[0])) : valueOf(args[0]) ** valueOf(args[1]);
     case "call":
@@ -46,6 +46,17 @@ function valueFrom(expr: Expr, valueOf: (arg: Expr) => number, lookup: (symbol: 
     case "not":
       return valueOf(args[0]) === 0 ? 1 : 0;
   }
+}
+
+/** What stands below the fraction bar is divided by, not multiplied with its inverse: 3/10 has one rounding. */
+function quotientValue(factors: readonly Expr[], valueOf: (arg: Expr) => number): number {
+  let above = 1;
+  let below = 1;
+  for (const factor of factors) {
+    if (factor.op === "power" && factor.args[1].value === -1) below *= valueOf(factor.args[0]);
+    else above *= valueOf(factor);
+  }
+  return above / below;
 }
 
 export function holds(op: string, a: number, b: number): boolean {

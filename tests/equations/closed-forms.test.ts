@@ -177,6 +177,25 @@ describe("dependent stores", () => {
     expect(model.dependent).toEqual([]);
   });
 
+  test("a dependent store whose law can't be turned round is followed through its residual", () => {
+    const report = check(`
+      param J1 = 2 kg*m^2
+      param w0 = 1 rad/s
+      param h0 = 3 kg*m^2/s
+      param c = 1 N*m
+      input T : N*m
+      Se drive e = T
+      1 w : rotation
+      I first f = p/J1
+      I second f = w0*(p/h0 + (p/h0)^5 + sinh(p/h0))
+      drive -> w -> first, second`);
+    const [loop] = report.model?.loops ?? [];
+    expect(loop).toMatchObject({ solved: false, circular: false });
+    expect(report.model?.dependent.map(({ name, of }) => [name, of])).toEqual([["second.p", ["first.p"]]]);
+    // d first/dt + d second/dt = T, with d second/dt = (d first/dt / J1)/(∂f/∂p).
+    expect(report.model && rates(report.model)["first.p"]).toContain("cosh(second.p/h0)");
+  });
+
   test("a store that would need the second derivative of an input is refused", () => {
     const report = check(`
       input u : V
