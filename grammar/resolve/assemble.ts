@@ -1,4 +1,4 @@
-import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Symbol } from "../symbolic/expression.ts";
 import { describe } from "./describe.ts";
 import { type DraftNode, type Instance, spanOf, type Value } from "./draft.ts";
 import { workOut } from "./evaluate-values.ts";
@@ -13,14 +13,11 @@ import type {
   FlatOutput,
   FlatParameter,
   FlatPort,
-  FlatStart,
   FlatTrack,
 } from "./graph.ts";
 import { lawsOf } from "./laws.ts";
-import { fixedNumber } from "./numbers.ts";
 import { portNames } from "./port-variables.ts";
-import { translateReference } from "./references.ts";
-import { plainScope } from "./scope.ts";
+import { flatStarts } from "./starts.ts";
 import type { Translator } from "./translate.ts";
 
 /** Params first, since laws that learn a domain need their units; what depends on bonds comes after domains. */
@@ -192,60 +189,4 @@ function flatTrack(translator: Translator, value: Value): FlatTrack[] {
   if (value.track === null) return [];
   const symbol = translator.draft.pool.symbol("state", value.name);
   return [{ name: value.name, symbol, ...value.track, span: spanOf(value.instance, value.statement.range) }];
-}
-
-function flatStarts(translator: Translator): FlatStart[] {
-  const { draft } = translator;
-  if (draft.starts.length === 0) return [];
-  const startable = new Set<Expr>();
-  for (const node of draft.nodes) {
-    if (node.type !== "C" && node.type !== "I" && node.type !== "IC") continue;
-    for (const { bond } of node.ends) {
-      if (bond.effort !== null) startable.add(bond.effort);
-      if (bond.flow !== null) startable.add(bond.flow);
-    }
-  }
-  const seen = new Set<Expr>();
-  return draft.starts.flatMap(({ statement, instance, indices }): FlatStart[] => {
-    const scope = plainScope(instance.file, instance, indices, true);
-    const { target, value } = statement;
-    if (target === null || value === null) {
-      translator.refuse(
-        "syntax",
-        statement.range,
-        scope,
-        "`start steady` belongs in a trial; here a state gets a value: `start spring.q = 4 mm`.",
-      );
-      return [];
-    }
-    const typed = translateReference(translator, target, { ...scope, fixed: false });
-    if (typed.measure === "unknown") return [];
-    const symbol = typed.expr as Symbol;
-    if (symbol.op !== "symbol" || (symbol.role !== "state" && !startable.has(symbol))) {
-      translator.refuse(
-        "unknown-variable",
-        target.range,
-        scope,
-        "Only what a store or a track holds can be given a start: its p or q, or its effort or flow.",
-      );
-      return [];
-    }
-    if (seen.has(symbol)) {
-      translator.refuse("duplicate-name", target.range, scope, "This start is given already.");
-      return [];
-    }
-    seen.add(symbol);
-    const number = fixedNumber(
-      translator,
-      value,
-      scope,
-      typed.measure,
-      typed.shown,
-      "The start value",
-      "this state",
-    );
-    return number === null
-      ? []
-      : [{ target: symbol, value: number, span: spanOf(instance, statement.range) }];
-  });
 }

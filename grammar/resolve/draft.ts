@@ -143,6 +143,8 @@ export interface PlacedStatement<T extends Start | Expect> {
   readonly indices: Indices;
 }
 
+export type PlacedStart = PlacedStatement<Start>;
+
 export const NO_INDICES: Indices = new Map();
 
 /** One system while it is worked out: what the steps of `resolve` hand to each other. */

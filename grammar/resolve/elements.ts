@@ -6,9 +6,13 @@ import { reversingFix } from "./reversing-fix.ts";
 export function checkElements(draft: Draft): void {
   for (const node of draft.nodes) {
     if (node.type === "port") continue;
-    if (!checkNode(draft, node)) draft.broken = true;
+    if (checkNode(draft, node)) continue;
+    draft.broken = true;
+    if (node.declaration.kind === "element" && node.declaration.ports !== null) node.suspect = true;
   }
 }
+
+const MAY_HAVE_PORTS: ReadonlySet<string> = new Set(["R", "C", "I", "IC"]);
 
 function checkNode(draft: Draft, node: DraftNode): boolean {
   if (node.suspect) return false;
@@ -20,6 +24,26 @@ function checkNode(draft: Draft, node: DraftNode): boolean {
   }
   if (node.type === "0" || node.type === "1") return true;
   const ports = node.declaration.kind === "element" ? node.declaration.ports : null;
+  if (ports !== null && !MAY_HAVE_PORTS.has(node.type)) {
+    draft.report(
+      finding(
+        "wrong-port-count",
+        at,
+        `${node.type} ${node.local} has no ports with names; only R, C, I and IC can have them.`,
+      ),
+    );
+    return false;
+  }
+  if (node.type === "IC" && ports === null) {
+    draft.report(
+      finding(
+        "wrong-port-count",
+        at,
+        `IC ${node.local} needs ports with names, as in \`IC ${node.local}(coil, plunger)\`.`,
+      ),
+    );
+    return false;
+  }
   if (ports !== null) return checkField(draft, node);
   return node.type === "TF" || node.type === "GY" || node.type === "RS"
     ? checkTwoPort(draft, node)
@@ -80,7 +104,19 @@ function checkTwoPort(draft: Draft, node: DraftNode): boolean {
 function checkField(draft: Draft, node: DraftNode): boolean {
   const ports = node.declaration.kind === "element" ? (node.declaration.ports ?? []) : [];
   let right = true;
+  const names = new Set<string>();
   for (const port of ports) {
+    if (names.has(port.name.text)) {
+      draft.report(
+        finding(
+          "duplicate-name",
+          spanOf(node.instance, port.range),
+          `${node.local} has a port \`${port.name.text}\` already.`,
+        ),
+      );
+      return false;
+    }
+    names.add(port.name.text);
     const ends = node.ends.filter((end) => end.port === port.name.text);
     const name = `${node.local}.${port.name.text}`;
     if (ends.length === 0) {

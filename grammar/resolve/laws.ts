@@ -66,6 +66,7 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
 
 /** What is not wired was reported; its law has no variables to speak of. */
 function isWired(node: DraftNode): boolean {
+  if (node.suspect) return false;
   const names = portNames(node);
   return names === null
     ? node.ends.length > 0
