@@ -79,7 +79,7 @@ describe("static networks of resistors", () => {
       expect({ linear, solved }).toEqual({ linear: true, solved: true });
   });
 
-  it("two equal T sections: v_out = u*R^2/(...) by nodal analysis", () => {
+  it("ladder of four resistors, by series and parallel connection", () => {
     const found = derived(`
       param R1 = 1 ohm
       param R2 = 2 ohm
