@@ -5,7 +5,7 @@ import { fixedSteps, type StoreSite, storeSites } from "./elements.ts";
 import { type Clash, Propagation } from "./propagation.ts";
 import { searchStrokes } from "./search.ts";
 import type { CausalGraph } from "./strokes.ts";
-import { tiedStore } from "./tied-stores.ts";
+import { tiedStores } from "./tied-stores.ts";
 import { granted, isChoice, reversed, type Tied, type Wish, wishes } from "./wishes.ts";
 
 /**
@@ -18,20 +18,18 @@ export function assignCausality(graph: FlatGraph): { causal: CausalGraph; findin
   const nodes = [...graph.nodes].sort(byName);
   const stores = storeSites(nodes);
   const tied = new Map<number, readonly number[]>();
-  for (;;) {
-    const assigned = assignSequentially(graph, nodes, stores, tied);
-    if (assigned.findings.length > 0 || tied.size >= MOST_TIED) return assigned;
-    const more = tiedStore(graph, assigned.causal.strokes, stores);
-    if (more === null) return assigned;
-    const { bond } = more.site.node.ports[more.site.port];
-    // A store that was known to be tied and integrates all the same is held by something else, and stays so.
-    if (tied.has(bond)) return assigned;
-    tied.set(bond, more.premises);
+  let assigned = assignSequentially(graph, nodes, stores, tied);
+  while (assigned.findings.length === 0) {
+    const more = tiedStores(graph, assigned.causal.strokes, stores).filter(({ bond }) => !tied.has(bond));
+    if (more.length === 0) break;
+    for (const { bond, premises } of more) tied.set(bond, premises);
+    const again = assignSequentially(graph, nodes, stores, tied);
+    // What was to be mended may be held by demanded strokes; then the first way stays.
+    if (again.findings.length > 0) break;
+    assigned = again;
   }
+  return assigned;
 }
-
-/** Each costs the whole assignment again; nobody ties this many by rings of junctions alone. */
-const MOST_TIED = 64;
 
 /** Each finding tells its whole chain; who has this many conflicts mends them in turns. */
 const MOST_CONFLICTS = 100;

@@ -2,40 +2,52 @@ import type { FlatGraph, FlatNode } from "../resolve/graph.ts";
 import { evaluate } from "../symbolic/evaluate.ts";
 import type { Symbol } from "../symbolic/expression.ts";
 import type { StoreSite } from "./elements.ts";
-import { leftNullSpace } from "./null-space.ts";
+import { leftNullSpace, reduceRows, SMALL } from "./row-reduction.ts";
 import type { Stroke } from "./strokes.ts";
+
+export interface TiedStore {
+  readonly bond: number;
+  /** The bonds of the elements that settle it. */
+  readonly premises: readonly number[];
+}
 
 /**
  * Strokes can fit round a ring of junctions whose equations still say nothing about the ring itself but that the
- * variables given to it sum to zero: capacitors in a delta, a capacitor across another. Then one of the stores that
- * give them depends on the others, though every stroke let it integrate. This finds it by the rank of the ring's
- * equations: the last by name of the stores in such a sum. A sum that a resistor takes part in settles that resistor
- * and ties no store.
+ * variables given to it sum to zero: capacitors in a delta, a capacitor across another. Then some of the stores that
+ * give them depend on the others, though every stroke let them integrate. This finds them by the rank of the ring's
+ * equations: the last by name in each such sum. A sum that a resistor takes part in settles that resistor and ties no
+ * store, so sums are first combined to be rid of those. The result is the same whatever the order of lines: what is
+ * tied is what is the last in some sum.
  */
-export function tiedStore(
+export function tiedStores(
   graph: FlatGraph,
   strokes: readonly (Stroke | null)[],
   sites: readonly StoreSite[],
-): { readonly site: StoreSite; readonly premises: readonly number[] } | null {
-  if (!hasRing(graph)) return null;
+): TiedStore[] {
+  if (!hasRing(graph)) return [];
   const rings = new Rings(graph, strokes);
-  if (rings.cyclic.length === 0 || rings.cyclic.length > LARGEST_RING) return null;
-  const stores = new Map(sites.map((site, order) => [site.node.ports[site.port].bond, { site, order }]));
-  for (const sum of rings.sums()) {
-    const tied = [];
-    let open = false;
-    for (const variable of sum) {
-      const bond = variable >> 1;
-      const store = stores.get(bond);
-      if (store !== undefined && strokes[bond] === store.site.integral) tied.push(store);
-      else if (!SOURCES.has(rings.giver(variable).kind)) open = true;
-    }
-    if (open || tied.length === 0) continue;
-    const last = tied.reduce((a, b) => (a.order > b.order ? a : b));
-    const own = last.site.node.ports[last.site.port].bond;
-    return { site: last.site, premises: sum.map((variable) => variable >> 1).filter((bond) => bond !== own) };
-  }
-  return null;
+  if (rings.cyclic.length === 0 || rings.cyclic.length > LARGEST_RING) return [];
+  const sums = rings.sums();
+
+  const orders = new Map<number, number>();
+  sites.forEach(({ node, port, integral }, order) => {
+    const { bond } = node.ports[port];
+    if (strokes[bond] === integral) orders.set(bond, order);
+  });
+  // Columns: what is settled by its sum, then stores from the last name to the first, then what is given anyway.
+  const place = (variable: number) => {
+    const order = orders.get(variable >> 1);
+    if (order !== undefined) return sites.length - order;
+    return SOURCES.has(rings.giver(variable).kind) ? sites.length + 1 : 0;
+  };
+  const columns = [...new Set(sums.flatMap((sum) => [...sum.keys()]))].sort((a, b) => place(a) - place(b));
+  const rows = sums.map((sum) => columns.map((variable) => sum.get(variable) ?? 0));
+  return reduceRows(rows).flatMap((pivot, i): TiedStore[] => {
+    const bond = columns[pivot] >> 1;
+    if (!orders.has(bond)) return [];
+    const others = columns.filter((_, j) => j !== pivot && Math.abs(rows[i][j]) > SMALL);
+    return [{ bond, premises: others.map((variable) => variable >> 1) }];
+  });
 }
 
 const SOURCES: ReadonlySet<string> = new Set(["Se", "Sf", "port"]);
@@ -44,7 +56,6 @@ const SOURCES: ReadonlySet<string> = new Set(["Se", "Sf", "port"]);
 const LARGEST_RING = 240;
 /** Paths from the ring's inputs back to the elements that give them; beyond this the search is left. */
 const MOST_PATHS = 20_000;
-const TINY = 1e-9;
 
 function isInner({ kind }: FlatNode): boolean {
   return kind === "0" || kind === "1" || kind === "TF" || kind === "GY";
@@ -161,8 +172,8 @@ class Rings {
     return [...left];
   }
 
-  /** For each way in which the ring's equations fall short of rank: the variables of elements that sum to zero. */
-  *sums(): Generator<number[]> {
+  /** For each way in which the ring's equations fall short of rank: the sum of elements' variables that is zero. */
+  sums(): Map<number, number>[] {
     const place = new Map(this.cyclic.map((variable, i) => [variable, i]));
     const inputs: Term[][] = this.cyclic.map(() => []);
     const matrix = this.cyclic.map((variable, i) => {
@@ -175,19 +186,16 @@ class Rings {
       }
       return row;
     });
-    for (const weights of leftNullSpace(matrix)) {
+    return leftNullSpace(matrix).flatMap((weights) => {
       const start = weights.flatMap((weight, i) =>
-        Math.abs(weight) < TINY
-          ? []
-          : inputs[i].map(({ variable, factor }) => ({ variable, factor: weight * factor })),
+        weight === 0 ? [] : inputs[i].map(({ variable, factor }) => ({ variable, factor: weight * factor })),
       );
-      const given = this.#givenBy(start);
-      if (given !== null && given.length > 0) yield given;
-    }
+      return this.#givenBy(start) ?? [];
+    });
   }
 
-  /** The elements' variables in a sum, back through junctions and two-ports; null where there are too many paths. */
-  #givenBy(start: readonly Term[]): number[] | null {
+  /** A sum in the elements' variables, back through junctions and two-ports; null where there are too many paths. */
+  #givenBy(start: readonly Term[]): Map<number, number> | null {
     const total = new Map<number, number>();
     const open = [...start];
     let steps = 0;
@@ -198,6 +206,6 @@ class Rings {
       if (terms === null) total.set(term.variable, (total.get(term.variable) ?? 0) + term.factor);
       else for (const { variable, factor } of terms) open.push({ variable, factor: term.factor * factor });
     }
-    return [...total].filter(([, factor]) => Math.abs(factor) > TINY).map(([variable]) => variable);
+    return total;
   }
 }

@@ -1,5 +1,5 @@
 import { expect, it } from "vitest";
-import { leftNullSpace } from "../../grammar/causality/null-space.ts";
+import { leftNullSpace } from "../../grammar/causality/row-reduction.ts";
 
 it("finds nothing where the rank is full, and all of it where it is not", () => {
   expect(
