@@ -7,11 +7,13 @@ import { stopSaying } from "./said.mjs";
 export async function withEnds(program) {
   /** @type {(() => unknown)[]} */
   const ends = [];
-  let stopping = false;
-  const stop = async () => {
-    if (stopping) return;
-    stopping = true;
-    for (const end of ends.reverse()) await end();
+  /** @type {Promise<void> | undefined} */
+  let stopped;
+  const stop = () => {
+    stopped ??= (async () => {
+      for (const end of ends.reverse()) await end();
+    })();
+    return stopped; // whoever asks waits for the same end
   };
   for (const signal of ["SIGINT", "SIGTERM", "SIGHUP"]) {
     process.on(signal, () => stop().then(() => process.exit(0), stopSaying));
