@@ -1,4 +1,5 @@
 import { Marked, type Tokens } from "marked";
+import { isFindingName } from "../../grammar/diagnostics/pages.ts";
 import { escapeHtml } from "./escape-html.ts";
 import { notationHtml } from "./highlight.server.ts";
 import { TABLES } from "./tables.server.ts";
@@ -24,7 +25,7 @@ const CAPTIONS: Readonly<Record<string, string>> = {
 
 /**
  * Our own Markdown as HTML: headings with anchors and one step lower, since the page has its own; notation
- * highlighted; tables ruled; what is wider than a page scrolls by itself. The text is ours and static.
+ * highlighted; names of findings lead to their pages; tables ruled; what is wider than a page scrolls by itself. The text is ours and static.
  */
 export function renderMarkdown(text: string): Rendered {
   const headings: Heading[] = [];
@@ -50,6 +51,10 @@ export function renderMarkdown(text: string): Rendered {
         const body = rows.map((row) => `<tr>${row.map(cell("td")).join("")}</tr>`).join("\n");
         const head = header.map(cell("th")).join("");
         return `<div class="wide" tabindex="0"><table class="ruled"><thead><tr>${head}</tr></thead><tbody>\n${body}\n</tbody></table></div>\n`;
+      },
+      codespan({ text: code }: Tokens.Codespan) {
+        const html = `<code>${escapeHtml(code)}</code>`;
+        return isFindingName(code) ? `<a href="/reference/findings/${code}">${html}</a>` : html;
       },
       html({ text: html }: Tokens.HTML | Tokens.Tag) {
         return escapeHtml(html);

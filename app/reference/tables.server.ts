@@ -16,7 +16,7 @@ export const TABLES: Readonly<Record<string, () => string>> = {
 };
 
 function inline(words: Iterable<string>): string {
-  return [...words].map((word) => `\`${word}\``).join(" ");
+  return [...words].map(code).join(" ");
 }
 
 function table(head: readonly string[], rows: readonly (readonly string[])[]): string {
@@ -26,24 +26,24 @@ function table(head: readonly string[], rows: readonly (readonly string[])[]): s
 
 function domains(): string {
   const rows = [...DOMAINS.values()].map(({ name, effort, flow, momentum, displacement, pseudo }) => [
-    `\`${name}\`${pseudo ? " (pseudo)" : ""}`,
-    ...[effort, flow, momentum, displacement].map(({ text }) => `\`${text}\``),
+    `${code(name)}${pseudo ? " (pseudo)" : ""}`,
+    ...[effort, flow, momentum, displacement].map(({ text }) => code(text)),
   ]);
   return table(["domain", "effort e", "flow f", "momentum p", "displacement q"], rows);
 }
 
 function units(): string {
-  const rows = [...UNITS].map(([name, { mantissa, exponent, dimension, prefixes: prefixed, offset }]) => [
-    `\`${name}\``,
-    `${factorText(mantissa, exponent)} ${unitText(dimension)}${offset === undefined ? "" : `, from ${offset} K`}`,
-    prefixed ? "yes" : "",
-  ]);
+  const rows = [...UNITS].map(([name, { mantissa, exponent, dimension, prefixes: prefixed, offset }]) => {
+    const factor = `${factorText(mantissa, exponent)} ${unitText(dimension)}`.replace(/ 1$/, "");
+    const zero = offset === undefined ? "" : `, counted from ${code(`${offset} K`)}`;
+    return [code(name), `${code(factor)}${zero}`, prefixed ? "yes" : ""];
+  });
   return table(["unit", "in SI", "prefixes"], rows);
 }
 
 /** Fifteen digits tell every factor of the table but the last place of a quotient. */
 function factorText(mantissa: number, exponent: number): string {
-  return String(Number((mantissa * 10 ** exponent).toPrecision(15))).replace(/e([+-]?\d+)$/, "e$1");
+  return String(Number((mantissa * 10 ** exponent).toPrecision(15)));
 }
 
 function prefixes(): string {
@@ -53,7 +53,7 @@ function prefixes(): string {
     .sort(([a], [b]) => b - a)
     .map(([power, written]) => [
       [...new Set(written.map((one) => one.normalize("NFKC")))].map(code).join(" or "),
-      `1e${power}`,
+      code(`1e${power}`),
     ]);
   return table(["prefix", "factor"], rows);
 }
@@ -70,10 +70,7 @@ function findings(): string {
     .map((severity) => {
       const rows = names
         .filter((name) => FINDINGS[name] === severity)
-        .map((name) => [
-          `[\`${name}\`](/reference/findings/${name})`,
-          (pageOf(name)?.what ?? "").replaceAll("|", "\\|"),
-        ]);
+        .map((name) => [code(name), (pageOf(name)?.what ?? "").replaceAll("|", "\\|")]);
       return `## ${TITLES[severity]}\n\n${table(["name", "what it says"], rows)}`;
     })
     .join("\n\n");
