@@ -1,6 +1,7 @@
 import type { Expr, Symbol } from "./expression.ts";
 import type { Pool } from "./pool.ts";
 import { postorder } from "./postorder.ts";
+import { withArgs } from "./substitute.ts";
 
 /** expr = Σ coefficients·unknown + constant, with neither holding an unknown. */
 export interface LinearForm {
@@ -42,7 +43,12 @@ function formOf(
     parts.push(part);
   }
   const holding = parts.filter(({ coefficients }) => coefficients.size > 0);
-  if (holding.length === 0) return { coefficients: NONE, constant: expr };
+  // Without the unknowns that cancelled further in.
+  const args = parts.map(({ constant }) => constant);
+  if (holding.length === 0) {
+    const free = args.every((arg, i) => arg === expr.args[i]);
+    return { coefficients: NONE, constant: free ? expr : withArgs(pool, expr, args) };
+  }
   switch (expr.op) {
     case "sum":
       return {
@@ -51,13 +57,13 @@ function formOf(
       };
     case "product": {
       if (holding.length > 1) return null;
-      const others = expr.args.filter((_, i) => parts[i] !== holding[0]);
+      const others = args.filter((_, i) => parts[i] !== holding[0]);
       return mapForm(holding[0], (each) => pool.product(each, ...others));
     }
     case "where": {
       const [condition, then, otherwise] = parts;
       if (condition.coefficients.size > 0) return null;
-      const choose = (a: Expr, b: Expr) => pool.where(expr.args[0], a, b);
+      const choose = (a: Expr, b: Expr) => pool.where(args[0], a, b);
       const coefficients = new Map<Symbol, Expr>();
       for (const symbol of new Set([...then.coefficients.keys(), ...otherwise.coefficients.keys()])) {
         const of = (form: LinearForm) => form.coefficients.get(symbol) ?? pool.zero;
