@@ -35,13 +35,18 @@ describe.each(["light", "dark"] as const)("in the %s setting", (colorScheme) => 
   });
   afterAll(() => page?.context().close());
 
-  test.each(["/", SET, `${SET}/history`, `${SET}/history?file=hoist.wright`, "/nothing-here"])(
-    "%s",
-    async (address) => {
-      await page.goto(address);
-      expect(await violations(page)).toEqual([]);
-    },
-  );
+  test.each([
+    "/",
+    SET,
+    `${SET}/history`,
+    `${SET}/history?file=hoist.wright`,
+    "/nothing-here",
+    "/reference",
+    "/reference/findings/stiff",
+  ])("%s", async (address) => {
+    await page.goto(address);
+    expect(await violations(page)).toEqual([]);
+  });
 
   test("a version and a file of it", async () => {
     await page.goto(`${SET}/history`);
@@ -84,7 +89,7 @@ describe.each(["light", "dark"] as const)("in the %s setting", (colorScheme) => 
 test("at 320 pixels no page scrolls sideways, and both pages of the book can be turned to", async () => {
   const page = await seat(browser, server.origin, "modeller", { viewport: { width: 320, height: 640 } });
   const sideways = () => page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
-  for (const address of ["/", SET, `${SET}/history`]) {
+  for (const address of ["/", SET, `${SET}/history`, "/reference", "/reference/findings/stroke-refused"]) {
     await page.goto(address);
     expect(await sideways(), address).toBeLessThanOrEqual(0);
   }
