@@ -28,6 +28,7 @@ describe("expressionText", () => {
     ["0.35*x", pool.product(n(0.35), x)],
     ["x/28", pool.product(pool.rational(1, 28), x)],
     ["1/3 + x", pool.sum(x, pool.rational(1, 3))],
+    ["1e21*x", pool.product(n(1e21), x)],
     ["2.5e-7*x", pool.product(n(2.5e-7), x)],
     ["sqrt(a + x)", pool.power(pool.sum(a, x), n(0.5))],
     ["a/sqrt(x)", pool.divide(a, pool.power(x, n(0.5)))],
