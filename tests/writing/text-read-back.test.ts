@@ -60,7 +60,7 @@ it("is read by the notation's own parser as the same value", () => {
     // Rounding may decide a comparison of what is all but equal: a fixed series, which has no such case.
     process.env.FULL === "1" ? { numRuns: 5000, seed: 1 } : { numRuns: 400, seed: 1 },
   );
-});
+}, 60_000);
 
 function valueOf(expr: Expression): number {
   switch (expr.kind) {
