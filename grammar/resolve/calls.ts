@@ -1,4 +1,3 @@
-import { nearest } from "../diagnostics/nearest.ts";
 import type { FunctionName } from "../symbolic/expression.ts";
 import { FUNCTION_NAMES } from "../syntax/words.ts";
 import { DIMENSIONLESS, isDimensionless, power } from "../units/dimension.ts";
@@ -23,9 +22,11 @@ export function translateCall(translator: Translator, tree: Call, scope: Scope):
     );
   }
   if (scope.file.missing === true || scope.file.missing.has(name)) return translator.unknown;
-  const known = [...FUNCTION_NAMES];
-  for (const [other, { item }] of scope.file.visible.values) if (item.kind !== "const") known.push(other);
-  const meant = nearest(name, known);
+  const meant = translator.draft.guess(name, () => {
+    const known = [...FUNCTION_NAMES];
+    for (const [other, { item }] of scope.file.visible.values) if (item.kind !== "const") known.push(other);
+    return known;
+  });
   const isValue = scope.instance?.values.has(name) === true || placed !== undefined;
   const message = isValue
     ? `\`${name}\` is a value, not a function; write \`${name}*( … )\` for a product.`

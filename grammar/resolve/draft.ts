@@ -1,4 +1,5 @@
 import type { Finding, Report } from "../diagnostics/finding.ts";
+import { nearest } from "../diagnostics/nearest.ts";
 import type { Range, Span } from "../source/span.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { Pool } from "../symbolic/pool.ts";
@@ -145,6 +146,8 @@ export interface PlacedStatement<T extends Start | Expect> {
 
 export type PlacedStart = PlacedStatement<Start>;
 
+const MOST_GUESSES = 100;
+
 export const NO_INDICES: Indices = new Map();
 
 /** One system while it is worked out: what the steps of `resolve` hand to each other. */
@@ -170,10 +173,21 @@ export class Draft {
   unread = false;
   /** What an unknown name at a place in the text was probably meant to be. */
   readonly meant = new Map<string, string | null>();
+  #guesses = 0;
   readonly #reported = new Set<string>();
 
   constructor(root: SourceFile) {
     this.root = root;
+  }
+
+  /** What was probably meant; after so many unknown names the time is better spent on what is known. */
+  guess(name: string, candidates: () => Iterable<string>): string | null {
+    return this.mayGuess() ? nearest(name, candidates()) : null;
+  }
+
+  mayGuess(): boolean {
+    this.#guesses += 1;
+    return this.#guesses <= MOST_GUESSES;
   }
 
   /** One finding of a name at a place: the instances of a sub and the turns of a `repeat` share their text. */

@@ -1,5 +1,4 @@
 import { finding } from "../diagnostics/finding.ts";
-import { nearest } from "../diagnostics/nearest.ts";
 import type {
   IndexedName,
   Repeat,
@@ -22,7 +21,7 @@ import {
 import { type SourceFile, spanIn } from "./files.ts";
 import type { NodeKind } from "./graph.ts";
 import { fullName, unknownName } from "./names.ts";
-import { MOST_BONDS, MOST_STATEMENTS } from "./size.ts";
+import { DEEPEST_REPEAT, MOST_BONDS, MOST_STATEMENTS } from "./size.ts";
 import { wholeScope } from "./structure.ts";
 import { isValue, templateOf, type ValueStatement } from "./template.ts";
 import { wholeNumber } from "./whole-numbers.ts";
@@ -146,7 +145,11 @@ class Expansion {
       );
       return;
     }
-    if (high < low || depth > 100) return;
+    if (high < low) return;
+    if (depth >= DEEPEST_REPEAT) {
+      this.#tooLarge(instance);
+      return;
+    }
     for (let i = low; i <= high; i += 1) {
       this.#statements += 1;
       if (this.#statements > MOST_STATEMENTS || draft.bonds.length > MOST_BONDS) {
@@ -322,7 +325,7 @@ class Expansion {
     const name = statement.system.text;
     if (file.missing === true || file.missing.has(name)) return;
     const span = spanIn(file, statement.system.range);
-    const elsewhere = this.#findSystem(name);
+    const elsewhere = this.#draft.mayGuess() ? this.#findSystem(name) : null;
     if (elsewhere !== null) {
       this.#draft.report(
         finding(
@@ -339,15 +342,10 @@ class Expansion {
       );
       return;
     }
-    const meant = nearest(name, file.visible.systems.keys());
+    const meant = this.#draft.guess(name, () => file.visible.systems.keys());
+    const message = `There is no system \`${name}\`.`;
     this.#draft.report(
-      unknownName(
-        instance,
-        statement.system.range,
-        `There is no system \`${name}\`.`,
-        name,
-        meant === null ? [] : [meant],
-      ),
+      unknownName(instance, statement.system.range, message, name, meant === null ? [] : [meant]),
     );
   }
 

@@ -189,7 +189,7 @@ class Inference {
         setDomain(group, fitting[0]);
         for (const other of elementsOf(group))
           if (other !== node && this.#openGroups(other).length === 0) this.#check(group, other);
-        work.push(...elementsOf(group));
+        for (const other of elementsOf(group)) work.push(other);
       }
     }
   }

@@ -79,7 +79,9 @@ function reportUnknown(
   let meant = draft.meant.get(place);
   if (meant === undefined) {
     const bases = new Set<string>();
-    for (const known of inside.nodes.keys()) bases.add(known.split("[", 1)[0]);
+    if (draft.mayGuess()) {
+      for (const known of inside.nodes.keys()) bases.add(known.split("[", 1)[0]);
+    }
     meant = bases.has(base) ? null : nearest(base, bases);
     draft.meant.set(place, meant);
     const span = name.indices.length === 0 ? name.name.range : name.range;

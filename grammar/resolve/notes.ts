@@ -47,11 +47,13 @@ function missingDescriptions(report: Report, system: System, file: SourceFile): 
 function unusedValues(report: Report, system: System, file: SourceFile): void {
   const { statements, uses } = templateOf(system);
   if (statements.some(({ kind }) => kind === "unreadable")) return;
-  const inTrials = trialUses(system, file);
+  let inTrials: Set<string> | null = null;
   for (const statement of statements) {
     if (!isValue(statement) || statement.kind === "output" || statement.kind === "track") continue;
     const name = statement.name.text;
-    if (uses.has(name) || inTrials.has(name)) continue;
+    if (uses.has(name)) continue;
+    inTrials ??= trialUses(system, file);
+    if (inTrials.has(name)) continue;
     report(finding("unused-name", spanIn(file, statement.name.range), `Nothing uses \`${name}\`.`));
   }
 }

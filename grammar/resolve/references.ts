@@ -1,4 +1,3 @@
-import { nearest } from "../diagnostics/nearest.ts";
 import type { IndexedName, Reference } from "../syntax/tree.ts";
 import { DIMENSIONLESS } from "../units/dimension.ts";
 import { parseUnit } from "../units/parse-unit.ts";
@@ -128,13 +127,12 @@ function unknownValue(translator: Translator, part: IndexedName, scope: Scope): 
       `\`${name}\` is a function; it is called with a value in brackets.`,
     );
   }
-  const known = [
+  const meant = translator.draft.guess(name, () => [
     ...(scope.bound?.keys() ?? []),
     ...(instance?.values.keys() ?? []),
     ...scope.indices.keys(),
     ...file.visible.values.keys(),
-  ];
-  const meant = nearest(name, known);
+  ]);
   const message = `There is no value \`${name}\`.${meant === null ? "" : ` Is \`${meant}\` meant?`}`;
   const span = spanIn(file, part.range);
   const fix = meant === null ? undefined : { title: `Write ${meant}`, edits: [{ span, text: meant }] };
@@ -162,11 +160,10 @@ function dotted(translator: Translator, path: readonly IndexedName[], from: Inst
   if (name === null || instance.unread.has(last.name.text)) return translator.unknown;
   const value = instance.values.get(name);
   if (value?.statement.kind === "output") return valueOf(translator, value, scope, last.range);
-  const outputs = [...instance.values.values()].filter(({ statement }) => statement.kind === "output");
-  const meant = nearest(
-    name,
-    outputs.map(({ local }) => local),
-  );
+  const meant = draft.guess(name, () => {
+    const outputs = [...instance.values.values()].filter(({ statement }) => statement.kind === "output");
+    return outputs.map(({ local }) => local);
+  });
   const system = instance.template.system.name.text;
   const message =
     value !== undefined

@@ -43,8 +43,10 @@ export function resolve(files: FileSet, path: string, parse: Parse): Resolved {
     .reverse()
     .map((system) => resolveSystem(system, file, findSystem, refused))
     .reverse();
-  findings.push(...checkDeclarations(file), ...unusedFunctions(file), ...checkTrials(file));
-  return { findings, systems };
+  return {
+    findings: [...findings, ...checkDeclarations(file), ...unusedFunctions(file), ...checkTrials(file)],
+    systems,
+  };
 }
 
 function resolveSystem(

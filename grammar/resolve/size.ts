@@ -2,13 +2,14 @@ import { finding } from "../diagnostics/finding.ts";
 import type { Statement, SubDeclaration, System } from "../syntax/tree.ts";
 import type { Draft } from "./draft.ts";
 import { type SourceFile, spanIn } from "./files.ts";
+import { eachReference } from "./tree-walk.ts";
 import { plainNumber, type WholeScope, wholeNumber } from "./whole-numbers.ts";
 
 export const MOST_BONDS = 200_000;
 /** Declarations and turns of repeats: what has no bond takes time too. */
 export const MOST_STATEMENTS = 1_000_000;
 export const DEEPEST_SUB = 100;
-const DEEPEST_REPEAT = 100;
+export const DEEPEST_REPEAT = 250;
 
 interface Size {
   readonly bonds: number;
@@ -92,8 +93,7 @@ export function fitsLimits(draft: Draft, system: System, file: SourceFile, refus
         const high = wholeNumber(statement.high, scope);
         if (low === null || high === null || high < low) continue;
         const turns = high - low + 1;
-        const uneven = statement.body.some((inner) => inner.kind === "repeat");
-        if (!uneven) {
+        if (!countsWith(statement.body, statement.index.text)) {
           const size = sizeOfBody(statement.body, part, home, indices, depth + 1);
           bonds += turns * size.bonds;
           statements += turns * (size.statements + 1);
@@ -139,6 +139,20 @@ export function fitsLimits(draft: Draft, system: System, file: SourceFile, refus
     );
   }
   return fits;
+}
+
+/** Whether some repeat within counts to this index, so that its turns differ. */
+function countsWith(body: readonly Statement[], index: string): boolean {
+  return body.some((inner) => {
+    if (inner.kind !== "repeat") return false;
+    let mentions = false;
+    for (const bound of [inner.low, inner.high]) {
+      eachReference(bound, ({ path }) => {
+        if (path[0].name.text === index) mentions = true;
+      });
+    }
+    return mentions || countsWith(inner.body, index);
+  });
 }
 
 function defaultOf(system: System, name: string): number | null {

@@ -49,7 +49,7 @@ function makeTemplate(system: System): Template {
   const open: Statement[] = [...system.body].reverse();
   for (let statement = open.pop(); statement !== undefined; statement = open.pop()) {
     statements.push(statement);
-    if (statement.kind === "repeat") open.push(...[...statement.body].reverse());
+    if (statement.kind === "repeat") for (const inner of [...statement.body].reverse()) open.push(inner);
   }
   const uses = new Set<string>();
   const calls = new Set<string>();

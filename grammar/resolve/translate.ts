@@ -17,7 +17,7 @@ type Binary = Extract<Expression, { kind: "binary" }>;
 
 const DEEPEST = 1000;
 /** Of one statement, with the bodies of the functions it calls. */
-const MOST_TERMS = 200_000;
+const MOST_TERMS = 100_000;
 
 /** Turns expressions as written into expressions in SI, and checks dimensions through every step. */
 export class Translator {
