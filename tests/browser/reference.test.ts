@@ -45,5 +45,8 @@ test("a finding leads to its page from the right page and from the text", async 
   const hover = page.locator(".monaco-hover").filter({ hasText: "More about unit-mismatch" });
   await hover.waitFor();
   expect(await hover.textContent()).toContain("Two quantities that must be of one unit are not");
+  const more = hover.getByText("More about unit-mismatch");
+  const [again] = await Promise.all([page.waitForEvent("popup"), more.click()]);
+  await again.getByRole("heading", { name: "unit-mismatch" }).waitFor();
   await page.context().close();
 });
