@@ -8,7 +8,9 @@ export function checkElements(draft: Draft): void {
     if (node.type === "port") continue;
     if (checkNode(draft, node)) continue;
     draft.broken = true;
-    if (node.declaration.kind === "element" && node.declaration.ports !== null) node.suspect = true;
+    // Laws speak of ports that are not there, which was said.
+    const named = node.declaration.kind === "element" && node.declaration.ports !== null;
+    if (named || node.type === "IC") node.suspect = true;
   }
 }
 

@@ -215,6 +215,32 @@ describe("values", () => {
     expect(graph.parameters[0].range).toEqual({ low: 1000, high: 3000 });
   });
 
+  test("a system that uses a part may start it otherwise than the part does", () => {
+    const graph = graphOf(
+      `system Buffer {
+        port rod takes translation
+        0 n
+        C spring e = q*(1 N/m)
+        rod -> n -> spring
+        start spring.q = 1 mm
+      }
+      system Cart {
+        1 a : translation
+        I m = 1 kg
+        sub d = Buffer()
+        sub undisturbed = Buffer()
+        a -> m, d.rod, undisturbed.rod
+        start d.spring.q = 5 mm
+        start m.f = 36 km/h
+      }`,
+    );
+    expect(graph.starts.map(({ target, value }) => [target.name, value])).toEqual([
+      ["d.spring.q", 0.005],
+      ["a->m", 10],
+      ["undisturbed.spring.q", 0.001],
+    ]);
+  });
+
   test("names of JavaScript's own objects are ordinary names", () => {
     const graph = graphOf(
       "system constructor {\n param __proto__ = 1 kg\n 1 toString : translation\n I __proto__\n toString -> __proto__\n output valueOf = toString.f\n}",
@@ -254,6 +280,13 @@ describe("limits", () => {
       `system S {\n 1 a : translation\n I m = 1 kg\n a -> m\n${lets} let x5000 = time/1 s\n output y = x0\n}`,
     );
     expect(expressionText(chain.outputs[0].value)).toContain("5000");
+  });
+
+  test("thousands of unknown names and of systems end soon", () => {
+    const names = Array.from({ length: 3000 }, (_, i) => ` R r${i} = 1 N*s/m\n a -> x${i}\n`).join("");
+    expect(resolved(`system S {\n 1 a : translation\n${names}}`).systems[0].graph).toBeNull();
+    const systems = Array.from({ length: 5000 }, (_, i) => `system S${i} {\n}\n`).join("");
+    expect(resolved(systems).systems).toHaveLength(5000);
   });
 
   test("functions that double the work at each call end in a finding", () => {
