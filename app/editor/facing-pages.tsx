@@ -95,8 +95,8 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
   const begin = (fresh: string): string | null => {
     if (!fresh.endsWith(".wright")) return "The name of a model file ends in .wright";
     if (workspace.texts.has(fresh)) return "The set has a file of this name";
-    step({ kind: "typed", path: fresh, text: "notation 1\n\n" });
-    void navigate(`${base}/edit/${fresh}`);
+    step({ kind: "typed", path: fresh, text: BLANK });
+    if (fresh !== path) void navigate(`${base}/edit/${fresh}`);
     return null;
   };
   const { light, term, show, linesOf } = lighting;
@@ -108,7 +108,8 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
   if (alive && saving.behind !== null) {
     return <TwoVersions behind={saving.behind} onSettled={saving.settle} onBack={saving.back} />;
   }
-  const text = workspace.texts.get(path);
+  // Without scripts nothing can be begun by a button: an empty file is there at once.
+  const text = workspace.texts.get(path) ?? (mayWrite && !alive ? BLANK : undefined);
   return (
     <LightingContext value={context}>
       <main className="book" data-turned={turned} id="main">
@@ -145,8 +146,12 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
           <DraftNote restored={workspace.restored} step={step} />
           {text === undefined ? (
             <p className="flex-1 p-4">
-              There is no file {path} in this version of the set. Choose one of the files above
-              {mayWrite ? ", or begin a new one." : "."}
+              There is no file {path} in this version of the set.{" "}
+              {mayWrite && (
+                <button type="button" className="word" onClick={() => begin(path)}>
+                  Begin it
+                </button>
+              )}
             </p>
           ) : (
             <Text
@@ -226,6 +231,8 @@ function useSaveKey(field: RefObject<HTMLInputElement | null>): void {
     return () => window.removeEventListener("keydown", onKey);
   }, [field]);
 }
+
+const BLANK = "notation 1\n\n";
 
 const NOTHING_TIED: readonly never[] = [];
 

@@ -1,4 +1,4 @@
-import { type FormEvent, lazy, type ReactNode, type Ref, Suspense, useState } from "react";
+import { lazy, type ReactNode, type Ref, Suspense, useRef, useState } from "react";
 import { Link } from "react-router";
 import type { TextPageHandle, TextPageProps } from "./text-page.client.tsx";
 
@@ -46,9 +46,11 @@ export function FileList({ base, paths, current, unsaved, onNew, children }: Fil
   );
 }
 
+/** Asks for a path. It stands inside the form that saves, so that it is no form of its own. */
 function NewFile({ onNew }: { onNew(path: string): string | null }) {
   const [asking, setAsking] = useState(false);
   const [problem, setProblem] = useState<string | null>(null);
+  const field = useRef<HTMLInputElement>(null);
   if (!asking) {
     return (
       <button type="button" className="word" onClick={() => setAsking(true)}>
@@ -56,40 +58,46 @@ function NewFile({ onNew }: { onNew(path: string): string | null }) {
       </button>
     );
   }
-  const create = (event: FormEvent<HTMLFormElement>) => {
-    event.preventDefault();
-    const path = String(new FormData(event.currentTarget).get("path")).trim();
-    const found = onNew(path);
-    setProblem(found);
-    if (found === null) setAsking(false);
+  const leave = () => {
+    setAsking(false);
+    setProblem(null);
+  };
+  const begin = () => {
+    const found = onNew(field.current?.value.trim() ?? "");
+    if (found === null) leave();
+    else setProblem(found);
   };
   return (
-    <form onSubmit={create} className="flex flex-wrap items-baseline gap-2">
+    <div className="flex flex-wrap items-baseline gap-2">
       <label className="sr-only" htmlFor="new-file">
         Path of the new file
       </label>
       <input
+        ref={field}
         id="new-file"
-        name="path"
         className="field font-mono text-small! w-52! min-h-7!"
         placeholder="parts/brake.wright"
-        required
         // biome-ignore lint/a11y/noAutofocus: the reader has just asked for this field
         autoFocus
         aria-invalid={problem !== null}
         aria-describedby="new-file-problem"
-        onKeyDown={(event) => event.key === "Escape" && setAsking(false)}
+        onKeyDown={(event) => {
+          if (event.key === "Escape") leave();
+          if (event.key !== "Enter") return;
+          event.preventDefault();
+          begin();
+        }}
       />
-      <button type="submit" className="word">
+      <button type="button" className="word" onClick={begin}>
         Begin
       </button>
-      <button type="button" className="word" onClick={() => setAsking(false)}>
+      <button type="button" className="word" onClick={leave}>
         Leave it
       </button>
       <span id="new-file-problem" className="text-mistake" role="status">
         {problem}
       </span>
-    </form>
+    </div>
   );
 }
 

@@ -29,8 +29,19 @@ export function tiedLines(graph: FlatGraph, tree: File, system: string, files: F
     if (here(value.span)) at(value.span).values.add(value.name);
   }
 
-  const shown = tree.items.find((item) => item.kind === "system" && item.name.text === system);
-  for (const sub of shown?.kind === "system" ? subsOf(shown.body) : []) {
+  const body = bodyOf(tree, system);
+  const named = new Set(graph.nodes.map(({ name }) => name));
+  const given = new Set([...graph.parameters, ...graph.inputs].map(({ name }) => name));
+  // Signals are substituted away: their lines are tied to what they are made of.
+  for (const { range } of only(body, ["let", "track"])) {
+    const tied = at({ start: range.start });
+    for (const [word] of source.text.slice(range.start, range.end).matchAll(/[\p{L}_][\p{L}\p{N}_]*/gu)) {
+      if (named.has(word)) tied.nodes.add(word);
+      if (given.has(word)) tied.values.add(word);
+    }
+  }
+
+  for (const sub of only(body, ["sub"])) {
     const inside = new RegExp(`^${sub.name.name.text}(\\[[^.]*\\])?\\.`, "u");
     const tied = at({ start: sub.range.start });
     for (const node of graph.nodes) if (inside.test(node.name)) tied.nodes.add(node.name);
@@ -52,9 +63,20 @@ export function tiedLines(graph: FlatGraph, tree: File, system: string, files: F
     }));
 }
 
-function subsOf(body: readonly Statement[]): (Statement & { kind: "sub" })[] {
+function bodyOf(tree: File, system: string): readonly Statement[] {
+  const shown = tree.items.find((item) => item.kind === "system" && item.name.text === system);
+  return shown?.kind === "system" ? shown.body : [];
+}
+
+/** Statements of some kinds, those within a `repeat` too. */
+function only<K extends Statement["kind"]>(
+  body: readonly Statement[],
+  kinds: readonly K[],
+): (Statement & { kind: K })[] {
+  const wanted = (statement: Statement): statement is Statement & { kind: K } =>
+    (kinds as readonly string[]).includes(statement.kind);
   return body.flatMap((statement) => {
-    if (statement.kind === "sub") return [statement];
-    return statement.kind === "repeat" ? subsOf(statement.body) : [];
+    if (wanted(statement)) return [statement];
+    return statement.kind === "repeat" ? only(statement.body, kinds) : [];
   });
 }
