@@ -2,6 +2,7 @@ import { applyPatch, createPatch, diffLines } from "diff";
 import { useEffect, useRef, useState } from "react";
 import { LocalTime } from "../components/local-time.tsx";
 import { ScrollRegion } from "../components/scroll-region.tsx";
+import "./two-versions.css";
 import type { Settled } from "./workspace.ts";
 
 /** A file that two people changed since `base`; null where there is no such file. */

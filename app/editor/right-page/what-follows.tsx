@@ -1,6 +1,7 @@
 import type { Ref } from "react";
 import type { CoreState } from "../use-core.ts";
 import type { FindingView, Variables } from "../view-model.ts";
+import "./right-page.css";
 import { DiagramPart } from "./diagram-part.tsx";
 import { Equations, Loops } from "./equations.tsx";
 import { Findings } from "./findings.tsx";
