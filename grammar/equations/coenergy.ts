@@ -4,6 +4,7 @@ import type { Expr, Symbol } from "../symbolic/expression.ts";
 import type { Pool } from "../symbolic/pool.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { turnRound } from "../symbolic/turn.ts";
+import type { Unit } from "../units/unit.ts";
 import { assignmentsOf } from "./assignments.ts";
 import type { RateEquation, State, StateModel } from "./model.ts";
 import { tidy } from "./tidy.ts";
@@ -23,6 +24,8 @@ export function originOf(model: StateModel): Origin | undefined {
 
 interface Change {
   readonly state: State;
+  readonly name: string;
+  readonly unit: Unit;
   /** The new variable as the law gives it from the old one, and the other way round. */
   readonly toNew: Expr;
   readonly toOld: Expr;
@@ -44,6 +47,10 @@ export function inCoEnergy(model: StateModel): StateModel {
   const put = substitution(pool, old);
   const slopes = changes.map((change) => (change === null ? pool.one : put(change.slope)));
 
+  const names = new Map(
+    changes.flatMap((change) => (change === null ? [] : [[change.state.name, change.name]])),
+  );
+  const newName = (name: string) => names.get(name) ?? name;
   // Only solved rates and loops leave quotients in which the change cancels something.
   const quotients = model.dependent.length + model.loops.length > 0;
   const shorter = (expr: Expr) => (quotients ? tidy(pool, expr) : expr);
@@ -55,13 +62,13 @@ export function inCoEnergy(model: StateModel): StateModel {
     }),
     dependent: model.dependent.map((store) => ({
       ...store,
-      of: store.of.map((name) => newName(model, name)),
+      of: store.of.map((name) => newName(name)),
       value: shorter(put(store.value)),
       rate: shorter(put(store.rate)),
     })),
     equations: model.equations.map(
       ({ state, rate, span }, i): RateEquation => ({
-        state: newName(model, state),
+        state: newName(state),
         rate: shorter(pool.product(slopes[i], put(rate))),
         span,
       }),
@@ -79,21 +86,17 @@ export function inCoEnergy(model: StateModel): StateModel {
   return view;
 }
 
-function newName(model: StateModel, name: string): string {
-  return model.states.find((state) => state.name === name)?.coEnergy?.name ?? name;
-}
-
 function changeOf(pool: Pool, state: State, valueOf: (symbol: Symbol) => number | undefined): Change | null {
-  if (state.coEnergy === null) return null;
-  const { name, value } = state.coEnergy;
+  const { coEnergy } = state;
+  if (coEnergy === null) return null;
+  const { name, value, unit } = coEnergy;
   const toOld = turnRound(pool, value, state.symbol, pool.symbol("state", name), valueOf);
   if (toOld === null) return null;
-  return { state, toNew: value, toOld, slope: derivative(pool, value, state.symbol) };
+  return { state, name, unit, toNew: value, toOld, slope: derivative(pool, value, state.symbol) };
 }
 
 function renamed(pool: Pool, change: Change, valueOf: (symbol: Symbol) => number | undefined): State {
-  const { state, toNew } = change;
-  const { name, unit } = state.coEnergy as NonNullable<State["coEnergy"]>;
+  const { state, name, unit, toNew } = change;
   const start = evaluate(toNew, (symbol) =>
     symbol === state.symbol ? state.start : (valueOf(symbol) ?? Number.NaN),
   );
