@@ -3,6 +3,7 @@ import type { Expr } from "../symbolic/expression.ts";
 /**
  * Names as the trade sets them: `R_a` → R_{a}, `rope.spring.q` → q_{\mathrm{rope.spring}}, `J1` → J_{1}. A name of
  * one letter is a quantity and slanted, a longer one is a word and upright (ISO 80000-1, 7.2.1 and 7.2.2, from memory).
+ * A Greek letter's name is that letter, as engineers without the key for it write it: `rho_o` → \rho_{o}.
  * Nothing but letters, digits and the few signs below reaches the LaTeX: a name cannot carry a command.
  */
 export function symbolLatex(symbol: Expr): string {
@@ -42,7 +43,7 @@ function split(name: string): { base: string; subscripts: string[] } {
 
 /** `R_a` → R, a; `J1` → J, 1; `m_b_2` → m, b, 2; a word stays whole, with its digits and underlines. */
 function splitQuantity(last: string): { base: string; below: string[] } {
-  const quantity = /^(\p{L}\p{M}*)(\d*)((?:_[^_]+)*)$/u.exec(last);
+  const quantity = QUANTITY.exec(last);
   if (quantity === null) return { base: last, below: [] };
   const [, base, digits, rest] = quantity;
   return { base, below: [digits, ...rest.split("_")].filter((part) => part !== "") };
@@ -53,6 +54,8 @@ function withSubscripts(base: string, subscripts: readonly string[]): string {
 }
 
 function letterLatex(text: string): string {
+  const spelled = SPELLED[text];
+  if (spelled !== undefined) return spelled;
   const [only, ...more] = [...text];
   if (more.length > 0 || only === undefined) return upright(text);
   return GREEK[only] ?? (/^[a-zA-Z0-9]$/.test(only) ? only : upright(only));
@@ -88,3 +91,15 @@ const GREEK: Readonly<Record<string, string>> = Object.assign(
   Object.create(null),
   Object.fromEntries(LETTERS.split(" ").map((entry) => [entry[0], `\\${entry.slice(1)} `])),
 );
+
+/** `epsilon` and `phi` as they are usually drawn; the other shapes of the two have no name of their own here. */
+const SPELLED: Readonly<Record<string, string>> = Object.assign(
+  Object.create(null),
+  Object.fromEntries(
+    LETTERS.split(" ")
+      .map((entry) => [entry.slice(1).replace(/^var/, ""), GREEK[entry[0]]] as const)
+      .reverse(),
+  ),
+);
+
+const QUANTITY = new RegExp(`^(${Object.keys(SPELLED).join("|")}|\\p{L}\\p{M}*)(\\d*)((?:_[^_]+)*)$`, "u");
