@@ -41,15 +41,13 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
     return ratio === null ? NONE : { laws: [ratio], modulated: translator.signal };
   }
   const laws: FlatLaw[] = [];
-  const settled = new Set<string>();
   for (const law of declaration.laws) {
     used.length = 0;
     const flat = isEnergy(law)
       ? energyLaw(translator, node, law, scope, used)
       : relation(translator, node, law, scope, used);
     if (flat === null) continue;
-    const key = flat.kind === "relation" ? String(flat.port) : "energy";
-    if (settled.has(key)) {
+    if (laws.some((other) => portOf(other) === portOf(flat))) {
       translator.refuse(
         "law-form",
         law.range,
@@ -57,11 +55,15 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
         `${node.type} ${node.local} has ${flat.kind === "relation" && node.ends.length > 1 ? "two laws for one port" : "more than one law"}; one is enough.`,
       );
     }
-    settled.add(key);
     laws.push(flat);
   }
   checkPorts(translator, node, laws, scope, declaration.laws.length);
   return { laws, modulated: checkStore(translator, node, scope) };
+}
+
+/** Which port a law settles; an energy settles all. */
+function portOf(law: FlatLaw): number {
+  return law.kind === "relation" ? law.port : -1;
 }
 
 /** What is not wired was reported; its law has no variables to speak of. */
