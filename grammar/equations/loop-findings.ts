@@ -16,13 +16,12 @@ function elementsOf(assignments: Assignments, members: readonly Assignment[]): F
 const SHOWN = 8;
 
 function bondFacts(assignments: Assignments, bonds: readonly number[]): Fact[] {
-  const { graph } = assignments.causal;
-  const facts = bonds.slice(0, SHOWN).map((index): Fact => {
-    const { id, span } = graph.bonds[index];
-    return { message: `the loop passes through \`${id}\``, span };
-  });
-  const rest = bonds.length - facts.length;
-  return rest > 0 ? [...facts, { message: `and through ${rest} more bonds` }] : facts;
+  const shown = bonds.slice(0, SHOWN).map((index) => assignments.causal.graph.bonds[index]);
+  if (shown.length === 0) return [];
+  const rest = bonds.length - shown.length;
+  const more = rest === 0 ? "" : rest === 1 ? ", and one bond more" : `, and ${rest} bonds more`;
+  const ids = shown.map(({ id }) => `\`${id}\``).join(", ");
+  return [{ message: `it runs through ${ids}${more}`, span: shown[0].span }];
 }
 
 export function loopFinding(
