@@ -12,6 +12,7 @@ export default defineConfig({
           name: "unit",
           include: ["tests/**/*.test.{ts,tsx}"],
           exclude: [...DATABASE, ...COMMAND_LINE, ...BROWSER],
+          setupFiles: "tests/support/property-seed.ts",
         },
       },
       {

@@ -66,8 +66,13 @@ export function build(pool: Pool, recipe: Recipe, flip = false): Expr {
   }
 }
 
-/** The value by plain arithmetic, without the pool's rules. */
+/** The value by plain arithmetic, step by step, without the pool's rules; not a number once a step has no value. */
 export function plainValue(recipe: Recipe, values: Record<string, number>): number {
+  const value = stepValue(recipe, values);
+  return Number.isFinite(value) ? value : Number.NaN;
+}
+
+function stepValue(recipe: Recipe, values: Record<string, number>): number {
   switch (recipe.op) {
     case "number":
       return recipe.value;
