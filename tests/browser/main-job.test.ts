@@ -1,5 +1,11 @@
+import { execFileSync } from "node:child_process";
+import { mkdtempSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, expect, test } from "vitest";
+import { exportSet } from "../../app/operations/export-set.server.ts";
+import { User } from "../../db/models/index.ts";
 import { openBrowser } from "../support/browser.ts";
 import { type RunningServer, startServer } from "../support/server.ts";
 import { changedEquation, equation, goBefore, signIn } from "./reader.ts";
@@ -62,4 +68,21 @@ test("sign in, open a model, change a sign, see the equation change, save, find 
   await expect.poll(() => text.textContent()).toMatch(/Se +weight +e = m_b\*g0/);
   expect(faults).toEqual([]);
   await page.close();
+  await expectSoundRepository("Turn the weight round");
 });
+
+/** What the browser saved is a git repository without a fault, seen by git itself. */
+async function expectSoundRepository(newest: string): Promise<void> {
+  const maren = await User.findOne({ where: { email: "maren@varnsund.example" }, rejectOnEmpty: true });
+  const folder = mkdtempSync(join(tmpdir(), "bondwright-"));
+  try {
+    await exportSet({ userId: maren.id }, { team: "varnsund", set: "boat-hoist" }, folder);
+    const git = (...args: string[]) =>
+      execFileSync("git", ["-C", folder, ...args], { encoding: "utf8", stdio: "pipe" });
+    expect(git("fsck", "--strict", "--full")).toBe("");
+    expect(git("log", "-1", "--format=%s %an", "main")).toBe(`${newest} Maren Tolvik\n`);
+    expect(git("cat-file", "blob", "main:hoist.wright")).toContain("e = -m_b*g0");
+  } finally {
+    rmSync(folder, { recursive: true });
+  }
+}
