@@ -1,0 +1,78 @@
+import type { StateModel } from "../equations/model.ts";
+import { symbolsOf } from "../symbolic/symbols.ts";
+import { type Equilibrium, equilibrium } from "./equilibrium.ts";
+import { evaluateModel } from "./evaluate-model.ts";
+import { type Linearised, lineariseAt, type Signal } from "./linearise.ts";
+import { type Modes, modesOf } from "./modes.ts";
+import { type Point, startPoint } from "./point.ts";
+import { movingStates } from "./recording-tracks.ts";
+import { slopesOf } from "./slopes.ts";
+
+/** Where a model is linearised when nothing else is asked: its equilibrium, or its start where there is none. */
+export interface OperatingPoint {
+  readonly point: Point;
+  readonly equilibrium: boolean;
+  /** Why there is no equilibrium. */
+  readonly reason: string | null;
+}
+
+/** Everything about a model that numbers say, each part worked out when it is first asked for. */
+export class Analysis {
+  readonly model: StateModel;
+  readonly #parameters: ReadonlyMap<string, number>;
+  #equilibrium: Equilibrium | null = null;
+  #linear: Linearised | null = null;
+  #modes: Modes | null = null;
+
+  constructor(model: StateModel, parameters: ReadonlyMap<string, number> = new Map()) {
+    this.model = model;
+    this.#parameters = parameters;
+  }
+
+  get equilibrium(): Equilibrium {
+    this.#equilibrium ??= equilibrium(this.model, { parameters: this.#parameters });
+    return this.#equilibrium;
+  }
+
+  get operatingPoint(): OperatingPoint {
+    const found = this.equilibrium;
+    if (found.kind === "found") return { point: found.point, equilibrium: true, reason: null };
+    const point = { ...startPoint(this.model), parameters: this.#parameters };
+    return { point, equilibrium: false, reason: found.reason };
+  }
+
+  get linear(): Linearised {
+    this.#linear ??= this.linearFor(this.model.outputs);
+    return this.#linear;
+  }
+
+  /** As `linear` for other observed quantities. */
+  linearFor(outputs: readonly Signal[]): Linearised {
+    const found = this.equilibrium;
+    const at =
+      found.kind === "found" ? found.evaluated : evaluateModel(this.model, this.operatingPoint.point);
+    return at.kind === "none" ? at : lineariseAt(this.model, at, outputs);
+  }
+
+  /** null where the model can't be linearised. */
+  get modes(): Modes | null {
+    const { linear } = this;
+    if (linear.kind === "none") return null;
+    this.#modes ??= modesOf(linear);
+    return this.#modes;
+  }
+
+  /** The slopes of the rates are the same wherever the states and inputs are: modes do not hang on the point. */
+  get everywhereLinear(): boolean {
+    const moving = new Set(movingStates(this.model).map((i) => this.model.states[i].symbol));
+    const { rates, residuals } = slopesOf(this.model);
+    return [...rates, ...residuals].every(({ value }) =>
+      [...symbolsOf(value)].every(
+        (symbol) =>
+          symbol.role === "parameter" ||
+          symbol.role === "constant" ||
+          (symbol.role === "state" && !moving.has(symbol)),
+      ),
+    );
+  }
+}
