@@ -1,4 +1,3 @@
-import type { Span } from "../../grammar/source/span.ts";
 import type { DiagramBond, DiagramModel, DiagramNode } from "../../grammar/writing/diagram-model.ts";
 import { word } from "../../grammar/writing/drawing-symbols.ts";
 import type { Part } from "./nearest.ts";
@@ -7,11 +6,11 @@ interface DiagramTableProps {
   readonly model: DiagramModel;
   readonly isLit: (part: Part) => boolean;
   readonly onPoint: (part: Part | null) => void;
-  readonly onOpen: (span: Span) => void;
+  readonly openPart: (part: Part) => void;
 }
 
 /** The same as the drawing, in words: a row for each element and one for each bond. */
-export function DiagramTable({ model, isLit, onPoint, onOpen }: DiagramTableProps) {
+export function DiagramTable({ model, isLit, onPoint, openPart }: DiagramTableProps) {
   const lights = (part: Part) => ({
     "data-lit": isLit(part),
     onPointerEnter: () => onPoint(part),
@@ -41,7 +40,11 @@ export function DiagramTable({ model, isLit, onPoint, onOpen }: DiagramTableProp
             <tr key={node.id} {...lights({ kind: "node", id: node.id })}>
               <td>{node.symbol}</td>
               <th scope="row">
-                <button type="button" className="word" onClick={() => onOpen(node.span)}>
+                <button
+                  type="button"
+                  className="word"
+                  onClick={() => openPart({ kind: "node", id: node.id })}
+                >
                   <code>{node.id}</code>
                 </button>
               </th>
@@ -69,7 +72,11 @@ export function DiagramTable({ model, isLit, onPoint, onOpen }: DiagramTableProp
           {model.bonds.map((bond) => (
             <tr key={bond.id} {...lights({ kind: "bond", id: bond.id })}>
               <th scope="row">
-                <button type="button" className="word" onClick={() => onOpen(bond.span)}>
+                <button
+                  type="button"
+                  className="word"
+                  onClick={() => openPart({ kind: "bond", id: bond.id })}
+                >
                   <code style={{ whiteSpace: "nowrap" }}>{bond.id}</code>
                 </button>
               </th>

@@ -50,13 +50,19 @@ export function modelView(
     ),
     equations:
       model.implicit === null
-        ? model.equations.map(({ state, rate }) => equation(graph, model, state, rate))
-        : implicitRows(graph, model),
+        ? model.equations.map(({ state, rate }, i) => ({
+            ...equation(graph, model, state, rate),
+            store: derived.equations[i].state,
+          }))
+        : implicitRows(graph, model).map((row, i) => ({ ...row, store: derived.states[i].name })),
     dependent: model.dependent.map(
       (store): DependentView => ({
         name: store.name,
         of: store.of,
-        equation: equation(graph, model, store.name, store.value, written(store.symbol)),
+        equation: {
+          ...equation(graph, model, store.name, store.value, written(store.symbol)),
+          store: store.name,
+        },
         unit: store.unit.text,
         place: placeOf(store.span),
         nodes: [graph.nodes[store.node].name],
@@ -118,6 +124,7 @@ function equation(
   const terms = tracedTerms(graph, model, right, model.implicit === null ? state : right);
   return {
     state,
+    store: null,
     left: formula(left.text, left.latex),
     leftLatex: left.latex,
     ...written(right),

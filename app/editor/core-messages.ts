@@ -1,3 +1,4 @@
+import type { Answers, Question } from "./core-questions.ts";
 import type { FileView, Variables } from "./view-model.ts";
 
 /** What the page asks of the core's worker. `number` grows with every request: an older answer is dropped. */
@@ -12,10 +13,16 @@ export type CoreRequest =
       /** Only the texts that changed since the last request; null takes a file out of the set. */
       readonly changed: readonly (readonly [path: string, text: string | null])[];
     }
-  | { readonly kind: "format"; readonly number: number; readonly path: string; readonly text: string };
+  | { readonly kind: "format"; readonly number: number; readonly path: string; readonly text: string }
+  | { readonly kind: "ask"; readonly number: number; readonly path: string; readonly question: Question };
 
 export type CoreAnswer =
   | { readonly kind: "view"; readonly number: number; readonly view: FileView; readonly milliseconds: number }
   | { readonly kind: "formatted"; readonly number: number; readonly text: string }
+  | {
+      readonly kind: "answer";
+      readonly number: number;
+      readonly answer: Answers[keyof Answers] | null;
+    }
   /** A fault of ours, not of the text: shown as such, and the next key stroke tries again. */
   | { readonly kind: "fault"; readonly number: number; readonly message: string };

@@ -1,5 +1,6 @@
 import coreWorkerUrl from "./core.worker.ts?worker&url";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
+import type { AnswerTo, Question } from "./core-questions.ts";
 import type { FileView, Variables } from "./view-model.ts";
 import { workerAddress } from "./worker-address.ts";
 
@@ -13,7 +14,7 @@ export class Core {
   readonly #worker: Worker;
   readonly #listener: CoreListener;
   readonly #sent = new Map<string, string>();
-  readonly #waiting = new Map<number, (text: string | null) => void>();
+  readonly #waiting = new Map<number, (answer: CoreAnswer | null) => void>();
   #number = 0;
   #newestCheck = 0;
 
@@ -44,18 +45,28 @@ export class Core {
   }
 
   /** The text laid out by the formatter; null where the core could not. */
-  format(path: string, text: string): Promise<string | null> {
-    const number = ++this.#number;
-    return new Promise((resolve) => {
-      this.#waiting.set(number, resolve);
-      this.#post({ kind: "format", number, path, text });
-    });
+  async format(path: string, text: string): Promise<string | null> {
+    const answer = await this.#request((number) => ({ kind: "format", number, path, text }));
+    return answer?.kind === "formatted" ? answer.text : null;
+  }
+
+  async ask<Q extends Question>(path: string, question: Q): Promise<AnswerTo<Q>> {
+    const answer = await this.#request((number) => ({ kind: "ask", number, path, question }));
+    return answer?.kind === "answer" ? (answer.answer as AnswerTo<Q>) : null;
   }
 
   close(): void {
     this.#worker.terminate();
     for (const resolve of this.#waiting.values()) resolve(null);
     this.#waiting.clear();
+  }
+
+  #request(of: (number: number) => CoreRequest): Promise<CoreAnswer | null> {
+    const number = ++this.#number;
+    return new Promise((resolve) => {
+      this.#waiting.set(number, resolve);
+      this.#post(of(number));
+    });
   }
 
   #post(request: CoreRequest): void {
@@ -66,7 +77,7 @@ export class Core {
     const waiting = this.#waiting.get(answer.number);
     if (waiting !== undefined) {
       this.#waiting.delete(answer.number);
-      waiting(answer.kind === "formatted" ? answer.text : null);
+      waiting(answer);
     } else if (answer.number === this.#newestCheck) {
       if (answer.kind === "view") this.#listener.view(answer.view, answer.milliseconds);
       else if (answer.kind === "fault") this.#listener.fault(answer.message);

@@ -1,6 +1,7 @@
-import { checkFile, type TreeCache } from "../../grammar/pipeline.ts";
+import { checkFile, type FileReport, type TreeCache } from "../../grammar/pipeline.ts";
 import { SourceText } from "../../grammar/source/text.ts";
 import { formatText } from "../../grammar/syntax/format.ts";
+import { answerTo } from "./build-audit.ts";
 import { viewOf } from "./build-view.ts";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
 
@@ -8,6 +9,8 @@ import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
 const files = new Map<string, SourceText>();
 const trees: TreeCache = new Map();
 let newest: (CoreRequest & { kind: "check" }) | null = null;
+/** What the last check found: questions are answered out of it. */
+let report: FileReport | null = null;
 
 self.onmessage = (event: MessageEvent<CoreRequest>) => {
   const request = event.data;
@@ -16,6 +19,14 @@ self.onmessage = (event: MessageEvent<CoreRequest>) => {
       kind: "formatted",
       number: request.number,
       text: formatText(new SourceText(request.path, request.text)),
+    }));
+    return;
+  }
+  if (request.kind === "ask") {
+    answer(request.number, () => ({
+      kind: "answer",
+      number: request.number,
+      answer: report?.path === request.path ? answerTo(request.question, report, files) : null,
     }));
     return;
   }
@@ -32,7 +43,7 @@ function checkNewest(): void {
   if (request === null) return;
   answer(request.number, () => {
     const began = performance.now();
-    const report = checkFile(files, request.path, { cache: trees });
+    report = checkFile(files, request.path, { cache: trees });
     const view = viewOf(report, files, trees, request);
     return { kind: "view", number: request.number, view, milliseconds: performance.now() - began };
   });

@@ -1,5 +1,6 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { Core } from "./core.client.ts";
+import type { AnswerTo, Question } from "./core-questions.ts";
 import type { FileView, SystemView, Variables } from "./view-model.ts";
 import type { Texts } from "./workspace.ts";
 
@@ -45,9 +46,14 @@ export function useCore(texts: Texts, path: string, wanted: string | null, varia
     (file: string, text: string) => core.current?.format(file, text) ?? Promise.resolve(null),
     [],
   );
+  const ask = useCallback(
+    <Q extends Question>(question: Q): Promise<AnswerTo<Q>> =>
+      core.current?.ask(path, question) ?? Promise.resolve(null),
+    [path],
+  );
   const current =
     state.view !== null && state.view.path === path ? state : { ...NOTHING, fault: state.fault };
-  return { ...current, format };
+  return { ...current, format, ask };
 }
 
 /** What the newest text gives, and where errors stopped it, what the last text without them gave. */
@@ -67,7 +73,14 @@ function shownSystem(
   // What the new text still gives is shown anew: only what errors stopped comes from before.
   return {
     system:
-      newest === null ? last : { ...newest, model: last.model, diagram: newest.diagram ?? last.diagram },
+      newest === null
+        ? last
+        : {
+            ...newest,
+            model: last.model,
+            diagram: newest.diagram ?? last.diagram,
+            tied: newest.diagram === null ? last.tied : newest.tied,
+          },
     stale: true,
   };
 }

@@ -57,6 +57,8 @@ export interface StateView extends Light {
 
 export interface EquationView extends Light {
   readonly state: string;
+  /** The store or track whose derivation can be asked for; null for an output. */
+  readonly store: string | null;
   readonly left: Formula;
   readonly leftLatex: string;
   readonly text: string;

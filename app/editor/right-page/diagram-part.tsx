@@ -1,6 +1,7 @@
-import { useContext } from "react";
+import { useContext, useState } from "react";
 import type { DiagramModel } from "../../../grammar/writing/diagram-model.ts";
 import { Diagram } from "../../diagram/diagram.tsx";
+import { BondAudit } from "./bond-audit.tsx";
 import { LightingContext } from "./lighting.ts";
 import { Section } from "./section.tsx";
 
@@ -11,6 +12,7 @@ interface DiagramPartProps {
 
 export function DiagramPart({ diagram, onOpen }: DiagramPartProps) {
   const { light, show } = useContext(LightingContext);
+  const [chosen, setChosen] = useState<string | null>(null);
   return (
     <Section title="Diagram">
       <Diagram
@@ -28,7 +30,12 @@ export function DiagramPart({ diagram, onOpen }: DiagramPartProps) {
           )
         }
         onOpen={onOpen}
+        chosen={chosen}
+        onChoose={setChosen}
       />
+      <div aria-live="polite">
+        {chosen !== null && <BondAudit bond={chosen} onClose={() => setChosen(null)} />}
+      </div>
     </Section>
   );
 }

@@ -1,5 +1,6 @@
 import { useContext, useState } from "react";
 import type { EquationView, LoopView, ModelView, TermView, Variables } from "../view-model.ts";
+import { Derivation } from "./derivation.tsx";
 import { Typeset } from "./formula.tsx";
 import { LightingContext, useLit, useLitEquation, useLitTerm } from "./lighting.ts";
 import { Section } from "./section.tsx";
@@ -97,6 +98,7 @@ export function Equation({ equation, unit }: { equation: EquationView; unit?: st
         ))}
         {unit !== undefined && <span className="unit">shown in {unit}</span>}
       </span>
+      {equation.store !== null && <Derivation equation={key} store={equation.store} />}
     </li>
   );
 }

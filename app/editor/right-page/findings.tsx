@@ -84,13 +84,14 @@ function Where({ path, place, onOpen }: WhereProps) {
 }
 
 /** The line that something stands on, with its file where that is another one; it goes there. */
-export function PlaceLink({ place }: { place: Place }) {
+export function PlaceLink({ place, spelled = false }: { place: Place; spelled?: boolean }) {
   const { path, open } = useContext(LightingContext);
   const { file, line } = place;
   const name = file === path ? `line ${line}` : `line ${line} of ${file}`;
   return (
     <button type="button" className="word" aria-label={`Go to ${name}`} onClick={() => open(place)}>
       {file !== path && <span className="font-mono text-note">{file.slice(file.lastIndexOf("/") + 1)} </span>}
+      {spelled && "line "}
       {line}
     </button>
   );

@@ -16,6 +16,7 @@ export interface Lighting {
 
 export interface TermKey {
   readonly equation: string;
+  /** −1: a step that leads to the equation, and none of its terms. */
   readonly index: number;
 }
 

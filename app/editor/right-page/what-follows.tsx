@@ -1,15 +1,16 @@
-import type { Ref } from "react";
-import type { CoreState } from "../use-core.ts";
+import { type Ref, useMemo } from "react";
+import type { CoreState, useCore } from "../use-core.ts";
 import type { FindingView, Variables } from "../view-model.ts";
 import "./right-page.css";
 import { DiagramPart } from "./diagram-part.tsx";
 import { Equations, Loops } from "./equations.tsx";
 import { Findings } from "./findings.tsx";
+import { QuestionsContext } from "./questions.ts";
 import { idOf } from "./section.tsx";
 import { DependentStores, Expectations, factsOf, Inputs, Outputs, Parameters, States } from "./tables.tsx";
 
 interface WhatFollowsProps {
-  readonly core: CoreState;
+  readonly core: ReturnType<typeof useCore>;
   readonly path: string;
   readonly mayFix: boolean;
   readonly ref: Ref<HTMLElement>;
@@ -23,7 +24,12 @@ interface WhatFollowsProps {
 /** The right page: all that follows from the text beside it. */
 export function WhatFollows(props: WhatFollowsProps) {
   const { core, path, ref } = props;
-  const { view, system, fault } = core;
+  const { view, system, fault, stale, ask } = core;
+  const graphed = view?.system?.diagram == null ? null : view.system.name;
+  const questions = useMemo(
+    () => ({ system: graphed, current: !stale, text: system, ask }),
+    [graphed, system, stale, ask],
+  );
   return (
     // biome-ignore lint/a11y/noNoninteractiveTabindex: a page that scrolls must be reachable by keyboard
     <section className="page right-page" aria-label="What follows" ref={ref} tabIndex={0}>
@@ -47,7 +53,11 @@ export function WhatFollows(props: WhatFollowsProps) {
             onFix={props.onFix}
             onOpen={props.onOpen}
           />
-          {system !== null && <Results {...props} system={system} />}
+          {system !== null && (
+            <QuestionsContext value={questions}>
+              <Results {...props} system={system} />
+            </QuestionsContext>
+          )}
         </>
       )}
     </section>
