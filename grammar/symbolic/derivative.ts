@@ -1,8 +1,9 @@
+import type { Curve } from "./curve.ts";
 import type { Expr, FunctionName, Symbol } from "./expression.ts";
 import type { Pool } from "./pool.ts";
 import { postorder } from "./postorder.ts";
 
-/** ∂expr/∂symbol, all other symbols held. At a corner (abs, sign, min, max, where) it is that of one side. */
+/** ∂expr/∂symbol, all other symbols held. At a corner (abs, sign, min, max, where, a curve's points) it is that of one side. */
 export function derivative(pool: Pool, expr: Expr, symbol: Symbol): Expr {
   return differentiation(pool, symbol)(expr);
 }
@@ -36,6 +37,9 @@ function derived(pool: Pool, expr: Expr, of: (expr: Expr) => Expr): Expr {
       return derivedPower(pool, expr, of);
     case "call":
       return derivedCall(pool, expr, of);
+    case "curve":
+      if (of(args[0]) === pool.zero) return pool.zero;
+      return pool.product(pool.curve(expr.curve as Curve, args[0], expr.value + 1), of(args[0]));
     case "where":
       return pool.where(args[0], of(args[1]), of(args[2]));
     default:

@@ -1,3 +1,4 @@
+import { type Curve, curveValue } from "./curve.ts";
 import type { Expr, FunctionName, Symbol } from "./expression.ts";
 import { postorder } from "./postorder.ts";
 
@@ -35,6 +36,8 @@ function valueFrom(expr: Expr, valueOf: (arg: Expr) => number, lookup: (symbol: 
       return args[1].value === 0.5 ? Math.sqrt(valueOf(args[0])) : valueOf(args[0]) ** valueOf(args[1]);
     case "call":
       return applyFunction(expr.name as FunctionName, args.map(valueOf));
+    case "curve":
+      return curveValue(expr.curve as Curve, expr.value, valueOf(args[0]));
     case "where":
       return valueOf(args[0]) !== 0 ? valueOf(args[1]) : valueOf(args[2]);
     case "compare":

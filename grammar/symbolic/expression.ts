@@ -1,3 +1,5 @@
+import type { Curve } from "./curve.ts";
+
 /**
  * Expression graphs. Every distinct expression exists once in its pool (hash-consing), so that equality is
  * identity, and work that is memoised by node is linear in the graph however large the text would be.
@@ -9,6 +11,7 @@ export type Operator =
   | "product"
   | "power"
   | "call"
+  | "curve"
   | "where"
   | "compare"
   | "and"
@@ -56,12 +59,14 @@ export interface Expr {
   readonly id: number;
   readonly op: Operator;
   readonly args: readonly Expr[];
-  /** Of a number. */
+  /** Of a number; of a curve: which derivative of it is meant, 0 for itself. */
   readonly value: number;
-  /** Of a symbol: its full name (`rope.k`, `spring.q`, `armature->motor`); of a call: the function; of a comparison: its operator. */
+  /** Of a symbol: its full name (`rope.k`, `spring.q`, `armature->motor`); of a call: the function; of a curve: its own; of a comparison: its operator. */
   readonly name: string;
   /** Of a symbol. */
   readonly role: SymbolRole | null;
+  /** Of a curve: its points; one object for equal data in a pool. */
+  readonly curve: Curve | null;
 }
 
 export type Symbol = Expr & { readonly op: "symbol"; readonly role: SymbolRole };

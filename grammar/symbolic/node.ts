@@ -1,3 +1,4 @@
+import { type Curve, isNonNegative } from "./curve.ts";
 import { type Expr, type Operator, SYMBOL_ROLES, type SymbolRole } from "./expression.ts";
 
 /** An expression as the pool keeps it: with what sorting, hashing and the rules about signs need to know at once. */
@@ -8,6 +9,7 @@ export class Node implements Expr {
   readonly value: number;
   readonly name: string;
   readonly role: SymbolRole | null;
+  readonly curve: Curve | null;
   /** The highest role of a symbol in it, as an index of SYMBOL_ROLES; -1 for a number. */
   readonly rank: number;
   /** Known to be ≥ 0 wherever it is defined, whatever its symbols are. */
@@ -27,6 +29,7 @@ export class Node implements Expr {
     role: SymbolRole | null,
     hash: number,
     next: Node | null,
+    curve: Curve | null = null,
   ) {
     this.id = id;
     this.op = op;
@@ -34,12 +37,13 @@ export class Node implements Expr {
     this.value = value;
     this.name = name;
     this.role = role;
+    this.curve = curve;
     this.hash = hash;
     this.next = next;
     let rank = role === null ? -1 : SYMBOL_ROLES.indexOf(role);
     for (let i = 0; i < args.length; i += 1) if (args[i].rank > rank) rank = args[i].rank;
     this.rank = rank;
-    this.nonNegative = nonNegative(op, args, value, name);
+    this.nonNegative = nonNegative(op, args, value, name, curve);
     this.sineSquared =
       op === "power"
         ? isSine(args[0]) && args[1].value === 2
@@ -51,7 +55,13 @@ function isSine(node: Node): boolean {
   return node.op === "call" && node.name === "sin";
 }
 
-function nonNegative(op: Operator, args: readonly Node[], value: number, name: string): boolean {
+function nonNegative(
+  op: Operator,
+  args: readonly Node[],
+  value: number,
+  name: string,
+  curve: Curve | null,
+): boolean {
   switch (op) {
     case "number":
       return value >= 0;
@@ -66,6 +76,8 @@ function nonNegative(op: Operator, args: readonly Node[], value: number, name: s
     }
     case "call":
       return name === "abs" || name === "exp" || name === "cosh";
+    case "curve":
+      return value === 0 && curve !== null && isNonNegative(curve);
     case "where":
       return args[1].nonNegative && args[2].nonNegative;
     case "symbol":

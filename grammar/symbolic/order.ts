@@ -1,3 +1,4 @@
+import { type Curve, compareCurves } from "./curve.ts";
 import type { Operator } from "./expression.ts";
 import { compareNames } from "./names.ts";
 import { baseOf, type Node } from "./node.ts";
@@ -14,11 +15,12 @@ const OPERATOR_RANK: Record<Operator, number> = {
   product: 3,
   sum: 4,
   call: 5,
-  where: 6,
-  compare: 7,
-  and: 8,
-  or: 9,
-  not: 10,
+  curve: 6,
+  where: 7,
+  compare: 8,
+  and: 9,
+  or: 10,
+  not: 11,
 };
 
 /** Factors of a product: by the highest role in them, then by base, then by exponent. */
@@ -45,6 +47,10 @@ export function compareFactors(first: Node, second: Node): number {
     if (a.op !== b.op) return OPERATOR_RANK[a.op] - OPERATOR_RANK[b.op];
     if (a.op === "number") return a.value - b.value;
     if (a.name !== b.name) return compareNames(a.name, b.name);
+    if (a.op === "curve") {
+      if (a.value !== b.value) return a.value - b.value;
+      if (a.curve !== b.curve) return compareCurves(a.curve as Curve, b.curve as Curve);
+    }
     if (a.args.length !== b.args.length) return a.args.length - b.args.length;
     let i = 0;
     while (a.args[i] === b.args[i]) i += 1;

@@ -1,5 +1,6 @@
 import { canonicalCall } from "./call.ts";
 import { canonicalCompare, canonicalConnective, canonicalNot } from "./condition.ts";
+import { type Curve, compareCurves, curveValue, degreeOf } from "./curve.ts";
 import * as exact from "./exact.ts";
 import type { Expr, FunctionName, Operator, Symbol, SymbolRole } from "./expression.ts";
 import { Node } from "./node.ts";
@@ -22,6 +23,9 @@ export class Pool {
   readonly zero: Node = this.intern("number", NO_ARGS, 0, "");
   readonly one: Node = this.intern("number", NO_ARGS, 1, "");
   readonly minusOne: Node = this.intern("number", NO_ARGS, -1, "");
+
+  /** By name: curves that were called, one object for equal data. */
+  readonly #curves = new Map<string, Curve[]>();
 
   /** How many distinct expressions there are: a measure of work done, for limits. */
   get size(): number {
@@ -80,6 +84,17 @@ export class Pool {
     return canonicalCall(this, fn, args as Node[]);
   }
 
+  /** The curve at x, or its derivative of this order. */
+  curve(curve: Curve, x: Expr, order = 0): Expr {
+    if (order > degreeOf(curve)) return this.zero;
+    if (x.op === "number") {
+      const value = curveValue(curve, order, x.value);
+      // As for functions: what is rounded stays, or sums would depend on the order in which they are added.
+      if (exact.fractionOf(value) !== null) return this.number(value);
+    }
+    return this.intern("curve", [x as Node], order, curve.name, this.#known(curve));
+  }
+
   where(condition: Expr, then: Expr, otherwise: Expr): Expr {
     if (condition.op === "number") return condition.value !== 0 ? then : otherwise;
     if (then === otherwise) return then;
@@ -104,18 +119,29 @@ export class Pool {
   }
 
   /** The one node of this structure. For the canonical constructors only: the arguments must be canonical. */
-  intern(op: Operator, args: readonly Node[], value: number, name: string): Node {
+  intern(op: Operator, args: readonly Node[], value: number, name: string, curve: Curve | null = null): Node {
     const hash = hashOf(op, args, value, name);
     const mask = this.#buckets.length - 1;
     for (let node = this.#buckets[hash & mask]; node !== null; node = node.next) {
-      if (node.hash === hash && same(node, op, args, value, name)) return node;
+      if (node.hash === hash && same(node, op, args, value, name, curve)) return node;
     }
     if (this.#count > this.#buckets.length) this.#grow();
     const at = hash & (this.#buckets.length - 1);
-    const node = new Node(this.#count, op, args, value, name, null, hash, this.#buckets[at]);
+    const node = new Node(this.#count, op, args, value, name, null, hash, this.#buckets[at], curve);
     this.#buckets[at] = node;
     this.#count += 1;
     return node;
+  }
+
+  #known(curve: Curve): Curve {
+    const ofName = this.#curves.get(curve.name);
+    if (ofName === undefined) {
+      this.#curves.set(curve.name, [curve]);
+      return curve;
+    }
+    const known = ofName.find((other) => compareCurves(other, curve) === 0);
+    if (known === undefined) ofName.push(curve);
+    return known ?? curve;
   }
 
   #grow(): void {
@@ -137,8 +163,16 @@ function nodes(args: Expr[] | [readonly Expr[]]): readonly Node[] {
   return (Array.isArray(args[0]) ? args[0] : args) as readonly Node[];
 }
 
-function same(node: Node, op: Operator, args: readonly Node[], value: number, name: string): boolean {
+function same(
+  node: Node,
+  op: Operator,
+  args: readonly Node[],
+  value: number,
+  name: string,
+  curve: Curve | null,
+): boolean {
   if (node.op !== op || node.name !== name || node.args.length !== args.length) return false;
+  if (node.curve !== curve) return false;
   for (let i = 0; i < args.length; i += 1) if (node.args[i] !== args[i]) return false;
   return Object.is(node.value, value);
 }

@@ -1,4 +1,5 @@
 import type { Memo } from "./by-id.ts";
+import type { Curve } from "./curve.ts";
 import type { Expr, FunctionName } from "./expression.ts";
 import type { Pool } from "./pool.ts";
 import { postorder } from "./postorder.ts";
@@ -52,6 +53,8 @@ export function withArgs(pool: Pool, expr: Expr, args: readonly Expr[]): Expr {
       return pool.power(args[0], args[1]);
     case "call":
       return pool.call(expr.name as FunctionName, ...args);
+    case "curve":
+      return pool.curve(expr.curve as Curve, args[0], expr.value);
     case "where":
       return pool.where(args[0], args[1], args[2]);
     case "compare":

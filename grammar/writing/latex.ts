@@ -1,5 +1,5 @@
 import type { Expr } from "../symbolic/expression.ts";
-import { symbolLatex } from "./latex-name.ts";
+import { nameLatex, symbolLatex } from "./latex-name.ts";
 import { type Factor, numberText, type Quotient, quotientOf, splitNumber, termsOf } from "./shape.ts";
 
 export interface LatexOptions {
@@ -105,6 +105,10 @@ function write(piece: Piece): Task[] {
       return quotient(quotientOf(expr), level, unsigned, piece.depth);
     case "call":
       return call(expr, inside);
+    case "curve": {
+      const name = `{${nameLatex(expr.name)}}${"'".repeat(expr.value)}`;
+      return [name, "\\left(", inside(expr.args[0], LEVEL.where), "\\right)"];
+    }
     case "where": {
       const [condition, then, otherwise] = expr.args;
       const head = ["\\begin{cases}", inside(then, LEVEL.or), "& \\text{if } ", inside(condition, LEVEL.or)];

@@ -64,6 +64,8 @@ function write({ expr, level, unsigned }: Piece): Task[] {
       return quotient(quotientOf(expr), level, unsigned);
     case "call":
       return [expr.name, "(", ...joined(expr.args, ", ", LEVEL.where), ")"];
+    case "curve":
+      return [`${expr.name}${"'".repeat(expr.value)}(`, piece(expr.args[0], LEVEL.where), ")"];
     case "where": {
       const [condition, then, otherwise] = expr.args;
       const parts = [
