@@ -2,7 +2,9 @@ import {
   type CSSProperties,
   type KeyboardEvent,
   type ReactNode,
+  type RefObject,
   useCallback,
+  useEffect,
   useId,
   useRef,
   useState,
@@ -18,10 +20,10 @@ import { useDrawing } from "./use-drawing.ts";
 import { useViewBox } from "./use-view-box.ts";
 import { moved, revealing, zoomed } from "./view-box.ts";
 
+/** What a drawing's margins take of the sheet's width. */
+const EDGES = 24;
+const STEP = 16;
 const NOTHING: Box = { x: 0, y: 0, width: 600, height: 200 };
-/** The least scale at which names can be read, and how wide a drawing may be to be kept at it. */
-const READABLE = 0.6;
-const WIDEST_OVER = 900;
 const WAYS: Readonly<Record<string, Way>> = {
   ArrowLeft: "left",
   ArrowRight: "right",
@@ -45,18 +47,22 @@ interface DrawingViewProps {
 
 /** The drawing with all that moves it: pointer, wheel, keys, and a button for each. */
 export function DrawingView({ model, isLit, onPoint, openPart, children }: DrawingViewProps) {
-  const { drawing, waiting, fault } = useDrawing(model);
   const svg = useRef<SVGSVGElement>(null);
+  const sheet = useRef<HTMLDivElement>(null);
+  const { drawing, waiting, fault } = useDrawing(model, useWidth(sheet));
   const help = useId();
   const all = drawing?.box ?? NOTHING;
-  const { view, whole, show, drag } = useViewBox(svg, all);
+  const { chosen, seen, show, drag } = useViewBox(svg, all);
+  const view = chosen ?? all;
   const [stop, setStop] = useState<Part | null>(null);
   const firstStop =
     stop !== null && drawing !== null && partBox(drawing, stop) !== null ? stop : firstPart(drawing);
 
-  const pan = (way: Way) =>
-    show(moved(view, all, (STEPS[way][0] * view.width) / 8, (STEPS[way][1] * view.height) / 8));
-  const zoom = (factor: number) => show(zoomed(view, all, factor));
+  const pan = (way: Way) => {
+    const from = seen();
+    show(moved(from, all, (STEPS[way][0] * from.width) / 8, (STEPS[way][1] * from.height) / 8));
+  };
+  const zoom = (factor: number) => show(zoomed(seen(), all, factor));
 
   const onFrameKey = (event: KeyboardEvent<SVGSVGElement>) => {
     if (event.ctrlKey || event.metaKey || event.altKey) return;
@@ -65,20 +71,21 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
     else if (event.key === "+" || event.key === "=") zoom(1.25);
     else if (event.key === "-") zoom(0.8);
     else if (event.key === "0") show(null);
+    else if (event.key === "1") show(all);
     else return;
     event.preventDefault();
   };
 
   // Kept in one place, so that a part is drawn anew only when it or its light changes.
-  const state = useRef({ drawing, view, whole, all, openPart, show });
-  state.current = { drawing, view, whole, all, openPart, show };
+  const state = useRef({ drawing, chosen, all, openPart, show });
+  state.current = { drawing, chosen, all, openPart, show };
   const onPartFocus = useCallback(
     (part: Part) => {
-      const { drawing, view, whole, all, show } = state.current;
+      const { drawing, chosen, all, show } = state.current;
       setStop(part);
       onPoint(part);
       const box = drawing === null ? null : partBox(drawing, part);
-      if (box !== null && !whole) show(revealing(view, all, box));
+      if (box !== null && chosen !== null) show(revealing(chosen, all, box));
     },
     [onPoint],
   );
@@ -115,18 +122,16 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
     });
 
   const marks = marksOf(model);
-  const least = Math.min(READABLE * all.width, WIDEST_OVER);
   return (
     <div className="diagram">
-      <div className="diagram-sheet" style={{ "--least-width": `${least}px` } as CSSProperties}>
+      <div ref={sheet} className="diagram-sheet" data-chosen={chosen !== null}>
         {/* biome-ignore lint/a11y/useSemanticElements: a fieldset cannot draw */}
         <svg
           ref={svg}
           viewBox={`${view.x} ${view.y} ${view.width} ${view.height}`}
           width={all.width}
           height={all.height}
-          // The whole drawing lets a finger scroll the page; what is zoomed is moved by it.
-          style={{ touchAction: whole ? "auto" : "none" }}
+          style={{ "--own-height": `${all.height}px` } as CSSProperties}
           // biome-ignore lint/a11y/noNoninteractiveTabindex: the arrow keys move what it shows
           tabIndex={0}
           role="group"
@@ -153,8 +158,11 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
         <button type="button" className="button" onClick={() => zoom(0.8)}>
           Farther
         </button>
-        <button type="button" className="button" disabled={whole} onClick={() => show(null)}>
+        <button type="button" className="button" onClick={() => show(all)}>
           Whole
+        </button>
+        <button type="button" className="button" disabled={chosen === null} onClick={() => show(null)}>
+          Reading size
         </button>
         {(Object.keys(STEPS) as Way[]).map((way) => (
           <button
@@ -179,13 +187,27 @@ export function DrawingView({ model, isLit, onPoint, openPart, children }: Drawi
       <details className="note no-print diagram-keys">
         <summary>Keys and pointer</summary>
         <p id={help}>
-          Drag or use the arrow keys to move, + and − or the wheel with Ctrl to zoom, 0 for the whole. Tab
-          goes on to the elements: there the arrow keys lead from one to the next, Enter opens its line,
-          Escape leads back.
+          Drag or use the arrow keys to move, + and − or the wheel with Ctrl to zoom, 0 for reading size, 1
+          for the whole. Tab goes on to the elements: there the arrow keys lead from one to the next, Enter
+          opens the line of an element and tells of a bond why its stroke stands, Escape leads back.
         </p>
       </details>
     </div>
   );
+}
+
+/** Of the sheet, in steps, so that the drawing is not folded anew for every pixel; null until it is known. */
+function useWidth(sheet: RefObject<HTMLDivElement | null>): number | null {
+  const [width, setWidth] = useState<number | null>(null);
+  useEffect(() => {
+    if (sheet.current === null) return;
+    const observer = new ResizeObserver(([{ contentRect }]) => {
+      if (contentRect.width > 0) setWidth(Math.floor((contentRect.width - EDGES) / STEP) * STEP);
+    });
+    observer.observe(sheet.current);
+    return () => observer.disconnect();
+  }, [sheet]);
+  return width;
 }
 
 function firstPart(drawing: Drawing | null): Part | null {

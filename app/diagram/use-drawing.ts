@@ -2,6 +2,7 @@ import { useEffect, useMemo, useRef, useState } from "react";
 import type { DiagramModel } from "../../grammar/writing/diagram-model.ts";
 import type { Drawing } from "../../grammar/writing/drawing.ts";
 import { arrange } from "../../grammar/writing/drawing-arrange.ts";
+import { foldLayout } from "../../grammar/writing/drawing-fold.ts";
 import {
   type LayoutAnswer,
   layoutKey,
@@ -18,21 +19,29 @@ export interface DrawingState {
   readonly fault: string | null;
 }
 
+/** Where a drawing was folded: the next one of the same system and width is folded there again. */
+interface Turns {
+  readonly system: string;
+  readonly width: number;
+  readonly bonds: readonly string[];
+}
+
 interface LaidOut {
   readonly key: string;
   readonly answer: LayoutAnswer;
 }
 
 /**
- * The drawing of a model. A change of strokes or marks is redrawn at once with the layout there is, one of laws or of
+ * The drawing of a model, folded to a width; none while that is not known. A change of strokes or marks is redrawn at once with the layout there is, one of laws or of
  * lines is not redrawn at all; a change of structure asks the worker, and answers that are overtaken are dropped.
  */
-export function useDrawing(model: DiagramModel): DrawingState {
+export function useDrawing(model: DiagramModel, width: number | null): DrawingState {
   const key = useMemo(() => layoutKey(model), [model]);
   const look = useMemo(() => lookKey(model), [model]);
   const [laidOut, setLaidOut] = useState<LaidOut | null>(null);
   const [fault, setFault] = useState<string | null>(null);
   const shown = useRef<Drawing | null>(null);
+  const turns = useRef<Turns | null>(null);
   const newest = useRef(model);
   newest.current = model;
 
@@ -53,14 +62,25 @@ export function useDrawing(model: DiagramModel): DrawingState {
   }, [key]);
 
   // biome-ignore lint/correctness/useExhaustiveDependencies: `look` stands for all of the model that is drawn
-  const drawing = useMemo(() => {
-    if (laidOut === null || laidOut.key !== key) return null;
-    return placeDrawing(newest.current, laidOut.answer, sameSystem(shown.current, newest.current));
-  }, [laidOut, key, look]);
+  const made = useMemo(() => {
+    if (laidOut === null || laidOut.key !== key || width === null) return null;
+    const { current: model } = newest;
+    const known = turns.current;
+    const kept = known?.system === model.system && known.width === width ? known.bonds : [];
+    const arrangement = arrange(model);
+    const folded = foldLayout(model, arrangement, laidOut.answer, width, new Set(kept));
+    return {
+      drawing: placeDrawing(model, folded.answer, sameSystem(shown.current, model), arrangement),
+      turns: { system: model.system, width, bonds: folded.turns },
+    };
+  }, [laidOut, key, look, width]);
 
   useEffect(() => {
-    if (drawing !== null) shown.current = drawing;
-  }, [drawing]);
+    if (made === null) return;
+    shown.current = made.drawing;
+    turns.current = made.turns;
+  }, [made]);
+  const drawing = made?.drawing ?? null;
   return {
     drawing: drawing ?? sameSystem(shown.current, model),
     waiting: drawing === null && fault === null,

@@ -1,11 +1,19 @@
-import { type PointerEvent as ReactPointerEvent, type RefObject, useEffect, useRef, useState } from "react";
+import {
+  type PointerEvent as ReactPointerEvent,
+  type RefObject,
+  useCallback,
+  useEffect,
+  useRef,
+  useState,
+} from "react";
 import type { Box, Point } from "../../grammar/writing/drawing.ts";
 import { moved, zoomed } from "./view-box.ts";
 
 export interface ViewBox {
-  readonly view: Box;
-  /** Everything is shown, and goes on to be when the drawing changes. */
-  readonly whole: boolean;
+  /** The part of the drawing that was chosen; null: at its own size, to be read and scrolled from the beginning. */
+  readonly chosen: Box | null;
+  /** What of the drawing is in sight, at this moment. */
+  seen(): Box;
   show(view: Box | null): void;
   readonly drag: {
     onPointerDown(event: ReactPointerEvent<SVGSVGElement>): void;
@@ -21,9 +29,12 @@ const DRAG_FROM = 4;
 /** Which part of the drawing is shown, moved by dragging and zoomed by the wheel with Ctrl held (as by a pinch). */
 export function useViewBox(svg: RefObject<SVGSVGElement | null>, whole: Box): ViewBox {
   const [chosen, show] = useState<Box | null>(null);
-  const view = chosen ?? whole;
-  const latest = useRef({ view, whole });
-  latest.current = { view, whole };
+  const latest = useRef({ chosen, whole });
+  latest.current = { chosen, whole };
+  const seen = useCallback(() => {
+    const { chosen, whole } = latest.current;
+    return chosen ?? inSight(svg.current, whole);
+  }, [svg]);
   const grip = useRef<{
     readonly pointer: number;
     readonly at: Point;
@@ -38,20 +49,20 @@ export function useViewBox(svg: RefObject<SVGSVGElement | null>, whole: Box): Vi
     const onWheel = (event: WheelEvent) => {
       if (!event.ctrlKey && !event.metaKey) return;
       event.preventDefault();
-      const { view, whole } = latest.current;
-      show(zoomed(view, whole, Math.exp(-event.deltaY / 300), inDrawing(element, event)));
+      show(zoomed(seen(), latest.current.whole, Math.exp(-event.deltaY / 300), inDrawing(element, event)));
     };
     element.addEventListener("wheel", onWheel, { passive: false });
     return () => element.removeEventListener("wheel", onWheel);
-  }, [svg]);
+  }, [svg, seen]);
 
   const drag: ViewBox["drag"] = {
     onPointerDown(event) {
-      if (event.button !== 0) return;
+      // At its own size the drawing is scrolled by a finger, as the page is.
+      if (event.button !== 0 || (event.pointerType === "touch" && chosen === null)) return;
       grip.current = {
         pointer: event.pointerId,
         at: { x: event.clientX, y: event.clientY },
-        view,
+        view: seen(),
         dragged: false,
       };
     },
@@ -79,7 +90,20 @@ export function useViewBox(svg: RefObject<SVGSVGElement | null>, whole: Box): Vi
       grip.current = null;
     },
   };
-  return { view, whole: chosen === null, show, drag };
+  return { chosen, seen, show, drag };
+}
+
+/** At its own size, a unit a pixel: what the sheet round the drawing does not hide. */
+function inSight(svg: SVGSVGElement | null, whole: Box): Box {
+  const sheet = svg?.parentElement;
+  if (svg === null || !sheet) return whole;
+  const [drawn, frame] = [svg.getBoundingClientRect(), sheet.getBoundingClientRect()];
+  return {
+    x: whole.x + frame.left - drawn.left,
+    y: whole.y + frame.top - drawn.top,
+    width: sheet.clientWidth,
+    height: sheet.clientHeight,
+  };
 }
 
 function inDrawing(svg: SVGSVGElement, at: { clientX: number; clientY: number }): Point {

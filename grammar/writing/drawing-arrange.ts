@@ -38,7 +38,7 @@ export interface Arrangement {
 /** Between bonds that leave a hub on one side. */
 export const LANE = 14;
 /** Of a domain's name, what does not fit between two blocks anyway. */
-const LABEL_ROOM = 24;
+const LABEL_ROOM = 32;
 
 export function arrange(model: DiagramModel): Arrangement {
   const spine = findSpine(model);

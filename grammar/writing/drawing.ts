@@ -58,12 +58,12 @@ export interface Text {
 
 export type Lettering = "symbol" | "name" | "domain" | "word";
 
-/** Sizes in user units; widths are estimates that hold for the fonts named in the SVG and for their stand-ins. */
+/** Sizes in user units, which are pixels at reading size: none is under 11. Widths are estimates that hold for the fonts named in the SVG and for their stand-ins. */
 export const LETTERING: Record<Lettering, { readonly size: number; readonly advance: number }> = {
   symbol: { size: 20, advance: 12.2 },
   name: { size: 12, advance: 7.25 },
-  domain: { size: 10, advance: 5.3 },
-  word: { size: 10, advance: 5.6 },
+  domain: { size: 11, advance: 5.8 },
+  word: { size: 11, advance: 6.2 },
 };
 
 export function textWidth(text: string, lettering: Lettering): number {

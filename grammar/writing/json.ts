@@ -110,7 +110,7 @@ export function checkDocument(checked: readonly CheckedFile[]): CheckDocument {
     ),
   );
   const count = (severity: Finding["severity"]) =>
-    findings.filter((found) => found.severity === severity).length;
+    findings.filter((found) => found.severity === severity && found.accepted === undefined).length;
   const systems = checked.flatMap(({ report, shown }) =>
     report.systems.map(({ system, model }) => ({
       name: system,
@@ -130,6 +130,7 @@ export function checkDocument(checked: readonly CheckedFile[]): CheckDocument {
       errors: count("error"),
       warnings: count("warning"),
       notes: count("note"),
+      accepted: findings.filter(({ accepted }) => accepted !== undefined).length,
       expectations: {
         passed: expectations.filter(({ passed }) => passed).length,
         failed: expectations.filter(({ judged, passed }) => judged && !passed).length,
@@ -160,7 +161,7 @@ export function findingDocument(
   files: FileSet,
   shown: Shown = (path) => path,
 ): FindingDocument {
-  const { name, severity, message, span, facts, fix } = found;
+  const { name, severity, message, span, facts, fix, fingerprint, accepted } = found;
   const at = (where: Span) => place(where, files, shown);
   return {
     name,
@@ -176,6 +177,8 @@ export function findingDocument(
       : {
           fix: { title: fix.title, edits: fix.edits.map((edit) => ({ ...at(edit.span), text: edit.text })) },
         }),
+    ...(fingerprint === undefined ? {} : { fingerprint }),
+    ...(accepted === undefined ? {} : { accepted }),
   };
 }
 
@@ -186,7 +189,7 @@ function place({ file, start, end }: Span, files: FileSet, shown: Shown) {
 }
 
 /** JSON has no word for what isn't finite. */
-function quantity(value: number): number | "inf" | "-inf" | "nan" {
+export function quantity(value: number): number | "inf" | "-inf" | "nan" {
   if (Number.isFinite(value)) return value;
   return Number.isNaN(value) ? "nan" : value > 0 ? "inf" : "-inf";
 }

@@ -6,13 +6,13 @@ import { FINDINGS, type FindingName } from "../diagnostics/finding.ts";
  * the tests hold every output against. Only types are imported from here at run time, so that the command line
  * starts without zod.
  */
-const Quantity = z.union([z.number(), z.enum(["inf", "-inf", "nan"])]).describe("An SI value");
+export const Quantity = z.union([z.number(), z.enum(["inf", "-inf", "nan"])]).describe("An SI value");
 
 const Unit = z.string().describe("The SI unit of the value beside it; 1 where it has none");
 
-const Name = z.string().min(1);
+export const Name = z.string().min(1);
 
-const ExpressionText = z
+export const ExpressionText = z
   .string()
   .describe("An expression in the notation's own syntax, in SI; x' is the rate of x");
 
@@ -22,9 +22,21 @@ const Position = z
 
 const Place = { file: z.string(), start: Position, end: Position.describe("The first position after it") };
 
+export const Fingerprint = z
+  .string()
+  .regex(/^[0-9a-f]{16}$/)
+  .describe("What the finding is known by though lines move");
+
+export const Day = z
+  .string()
+  .regex(/^\d{4}-\d{2}-\d{2}$/)
+  .describe("The last day on which it counts, in UTC");
+
+export const SeverityWord = z.enum(["error", "warning", "note"]);
+
 export const FindingDocument = z.strictObject({
   name: z.enum(Object.keys(FINDINGS) as [FindingName, ...FindingName[]]),
-  severity: z.enum(["error", "warning", "note"]),
+  severity: SeverityWord,
   message: z.string(),
   ...Place,
   facts: z.array(
@@ -38,6 +50,11 @@ export const FindingDocument = z.strictObject({
   fix: z
     .strictObject({ title: z.string(), edits: z.array(z.strictObject({ ...Place, text: z.string() })) })
     .optional(),
+  fingerprint: Fingerprint.optional(),
+  accepted: z
+    .strictObject({ owner: z.string(), reason: z.string(), until: Day })
+    .optional()
+    .describe("By whose leave it stands; it fails nothing"),
 });
 
 export const EquationsDocument = z.strictObject({
@@ -127,6 +144,7 @@ export const CheckDocument = z.strictObject({
     errors: z.int(),
     warnings: z.int(),
     notes: z.int(),
+    accepted: z.int().describe("Findings that stand by leave; not counted in the figures above"),
     expectations: z.strictObject({ passed: z.int(), failed: z.int(), unjudged: z.int() }),
   }),
 });
@@ -134,6 +152,3 @@ export const CheckDocument = z.strictObject({
 export type FindingDocument = z.infer<typeof FindingDocument>;
 export type EquationsDocument = z.infer<typeof EquationsDocument>;
 export type CheckDocument = z.infer<typeof CheckDocument>;
-
-/** By file name under `public/schemas`. */
-export const SCHEMAS = { equations: EquationsDocument, check: CheckDocument } as const;
