@@ -15,6 +15,11 @@ Paths after \`use\` count from the root of the model set: the nearest parent fol
 bondwright.json; without one the folder given, or the nearest folder above the file in which they
 lead to files.`;
 
+const POINT_HELP = `
+A point is a JSON object with states, inputs, inputRates, parameters (each an object of names and
+SI values) and time; what it leaves out is as the text has it.
+`;
+
 const color = () =>
   new Option("--color <when>", "colour the report").choices(["auto", "always", "never"]).default("auto");
 const stdinName = () =>
@@ -71,6 +76,37 @@ program
   .action(async (file, options) => {
     const { equations } = await import("./commands/equations.ts");
     process.exitCode = equations(file, options);
+  });
+
+program
+  .command("linear")
+  .description("linearise a system: operating point, modes, gains, transfer functions")
+  .argument("<file>", "a .wright file, or - for standard input")
+  .option("--system <name>", "this system of the file (default: the last)")
+  .option("--at <point.json>", "at this point instead of the equilibrium")
+  .option("--sensitivity", "tell how modes answer to parameters")
+  .addOption(new Option("--format <form>", "form of the report").choices(["text", "json"]).default("text"))
+  .addOption(color())
+  .addOption(stdinName())
+  .addHelpText("after", POINT_HELP + ROOT_HELP + EXIT_HELP)
+  .action(async (file, options) => {
+    const { linear } = await import("./commands/linear.ts");
+    process.exitCode = linear(file, options);
+  });
+
+program
+  .command("rates")
+  .description("work out rates, outputs and bond variables of a system at a point")
+  .argument("<file>", "a .wright file, or - for standard input")
+  .option("--system <name>", "this system of the file (default: the last)")
+  .option("--at <point.json>", "the point (default: the start values under the nominal inputs)")
+  .addOption(new Option("--format <form>", "form of the report").choices(["text", "json"]).default("text"))
+  .addOption(color())
+  .addOption(stdinName())
+  .addHelpText("after", POINT_HELP + ROOT_HELP + EXIT_HELP)
+  .action(async (file, options) => {
+    const { rates } = await import("./commands/rates.ts");
+    process.exitCode = rates(file, options);
   });
 
 program

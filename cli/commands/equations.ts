@@ -1,17 +1,17 @@
 import { inCoEnergy } from "../../grammar/equations/coenergy.ts";
 import { derivationOf } from "../../grammar/equations/derivation.ts";
 import type { StateModel } from "../../grammar/equations/model.ts";
-import { checkFile, type SystemReport, type TreeCache } from "../../grammar/pipeline.ts";
+import type { SystemReport } from "../../grammar/pipeline.ts";
 import type { Span } from "../../grammar/source/span.ts";
 import { type CheckedFile, equationsDocument } from "../../grammar/writing/json.ts";
 import { systemMarkdown } from "../../grammar/writing/markdown.ts";
 import { modelLatex } from "../../grammar/writing/system-latex.ts";
 import { columns, glossaryText, modelText, type TextSection } from "../../grammar/writing/system-text.ts";
 import { expressionText } from "../../grammar/writing/text.ts";
-import { type ModelFile, modelFiles } from "../model-files.ts";
-import { findingText } from "../output/findings.ts";
-import { type ColourChoice, inert, type Paint, paintFor, print, remark } from "../output/print.ts";
-import { WrongUse } from "../wrong-use.ts";
+import { oneSystem } from "../one-system.ts";
+import { type ColourChoice, inert, paintFor, print } from "../output/print.ts";
+import { remarkFindings } from "../output/remark-findings.ts";
+import { sectionsText } from "../output/sections.ts";
 
 export interface EquationsArguments {
   readonly format: "text" | "json" | "latex" | "markdown";
@@ -24,33 +24,12 @@ export interface EquationsArguments {
 
 /** Prints the equations of one system; findings go beside them, to standard error. 1 where an error refused it. */
 export function equations(file: string, options: EquationsArguments): number {
-  const [model, ...others] = modelFiles([file], options.stdinName);
-  if (others.length > 0) throw new WrongUse(`${file} is a folder; equations are derived for one file.`);
-  const from = checkedSystem(model, options.system);
-  const system = from.report.systems.at(0) ?? null;
+  const { from, system } = oneSystem(file, options);
   const text = reportText(from, system, options);
   if (text !== "") print(text);
   if (options.format === "text" || options.format === "latex") remarkFindings(from, system, options.color);
   const refused = system?.model == null || from.report.findings.some(({ severity }) => severity === "error");
   return refused ? 1 : 0;
-}
-
-/** The file with one of its systems, the last unless one is named, and with no findings of the others. */
-function checkedSystem({ files, path, shown }: ModelFile, name: string | undefined): CheckedFile {
-  const cache: TreeCache = new Map();
-  const whole = checkFile(files, path, { system: name, cache });
-  const chosen = whole.systems.at(-1)?.system;
-  if (chosen === undefined && name !== undefined) {
-    const all = checkFile(files, path, { cache }).systems.map(({ system }) => system);
-    throw new WrongUse(`${shown(path)} holds no system ${name}; it holds: ${all.join(", ") || "none"}.`);
-  }
-  if (chosen === undefined && whole.findings.length === 0)
-    throw new WrongUse(`${shown(path)} holds no system.`);
-  const report =
-    chosen === undefined || whole.systems.length === 1
-      ? whole
-      : checkFile(files, path, { system: chosen, cache });
-  return { report, files, shown };
 }
 
 function reportText(from: CheckedFile, system: SystemReport | null, options: EquationsArguments): string {
@@ -66,7 +45,7 @@ function reportText(from: CheckedFile, system: SystemReport | null, options: Equ
     ...(options.steps ? stepSections(from, system.model as StateModel) : []),
     ...glossaryText(model),
   ];
-  return textReport(system, sections, paintFor(options.color));
+  return sectionsText(system, sections, paintFor(options.color));
 }
 
 function latexText(system: SystemReport, model: StateModel): string {
@@ -74,14 +53,6 @@ function latexText(system: SystemReport, model: StateModel): string {
     [`% ${title}`, ...lines.map((line) => `\\[ ${line} \\]`)].join("\n"),
   );
   return [`% ${inert(system.system)}`, ...sections].join("\n");
-}
-
-function textReport({ system, graph }: SystemReport, sections: readonly TextSection[], paint: Paint): string {
-  const about = graph?.description ? `: ${inert(graph.description.split("\n")[0])}` : "";
-  const blocks = sections.map(({ title, lines }) =>
-    [paint("strong", title), ...lines.map((line) => `  ${inert(line)}`)].join("\n"),
-  );
-  return [`${paint("strong", inert(system))}${about}`, ...blocks].join("\n\n");
 }
 
 /** Each equation's way from the rate of its store to what is collected, with the line that each step stands on; in energy variables. */
@@ -99,13 +70,4 @@ function stepSections({ report, files, shown }: CheckedFile, model: StateModel):
       ]),
     ),
   }));
-}
-
-function remarkFindings(from: CheckedFile, system: SystemReport | null, color: ColourChoice): void {
-  const paint = paintFor(color, process.stderr);
-  const refused = system?.model == null;
-  for (const found of from.report.findings) {
-    if (refused ? found.severity === "error" : found.severity !== "note")
-      remark(findingText(found, from, paint));
-  }
 }

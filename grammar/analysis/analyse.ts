@@ -1,6 +1,6 @@
 import type { StateModel } from "../equations/model.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
-import { type Equilibrium, equilibrium } from "./equilibrium.ts";
+import { atRest, type Equilibrium, equilibrium } from "./equilibrium.ts";
 import { evaluateModel } from "./evaluate-model.ts";
 import { type Linearised, lineariseAt, type Signal } from "./linearise.ts";
 import { type Modes, modesOf } from "./modes.ts";
@@ -19,14 +19,25 @@ export interface OperatingPoint {
 /** Everything about a model that numbers say, each part worked out when it is first asked for. */
 export class Analysis {
   readonly model: StateModel;
+  readonly #given: Point | null;
   readonly #parameters: ReadonlyMap<string, number>;
   #equilibrium: Equilibrium | null = null;
   #linear: Linearised | null = null;
   #modes: Modes | null = null;
 
-  constructor(model: StateModel, parameters: ReadonlyMap<string, number> = new Map()) {
+  constructor(
+    model: StateModel,
+    parameters: ReadonlyMap<string, number> = new Map(),
+    given: Point | null = null,
+  ) {
     this.model = model;
-    this.#parameters = parameters;
+    this.#given = given;
+    this.#parameters = given?.parameters ?? parameters;
+  }
+
+  /** At a given point instead of the equilibrium. */
+  static at(model: StateModel, point: Point): Analysis {
+    return new Analysis(model, point.parameters, point);
   }
 
   get equilibrium(): Equilibrium {
@@ -35,6 +46,11 @@ export class Analysis {
   }
 
   get operatingPoint(): OperatingPoint {
+    if (this.#given !== null) {
+      const evaluated = evaluateModel(this.model, this.#given);
+      const resting = evaluated.kind === "values" && atRest(this.model, evaluated);
+      return { point: this.#given, equilibrium: resting, reason: null };
+    }
     const found = this.equilibrium;
     if (found.kind === "found") return { point: found.point, equilibrium: true, reason: null };
     const point = { ...startPoint(this.model), parameters: this.#parameters };
@@ -48,9 +64,9 @@ export class Analysis {
 
   /** As `linear` for other observed quantities. */
   linearFor(outputs: readonly Signal[]): Linearised {
-    const found = this.equilibrium;
+    const found = this.#given === null ? this.equilibrium : null;
     const at =
-      found.kind === "found" ? found.evaluated : evaluateModel(this.model, this.operatingPoint.point);
+      found?.kind === "found" ? found.evaluated : evaluateModel(this.model, this.operatingPoint.point);
     return at.kind === "none" ? at : lineariseAt(this.model, at, outputs);
   }
 

@@ -4,6 +4,7 @@ import { symbolsOf } from "../symbolic/symbols.ts";
 import { multiply as multiplied } from "../units/dimension.ts";
 import type { Dimension } from "../units/unit.ts";
 import { quantityText, unitOf } from "../units/unit-text.ts";
+import { balance } from "./balance.ts";
 import { norm, type Rows, solve } from "./dense.ts";
 import { type Evaluated, evaluateModel } from "./evaluate-model.ts";
 import { stateSlopesAt } from "./linearise.ts";
@@ -209,10 +210,10 @@ class Search {
     weights: readonly number[],
     scale: readonly number[],
   ): string | null {
-    const { states, equations } = this.#model;
+    const { states } = this.#model;
     const share = (i: number, value: number) => (weights[i] * value) / scale[i];
     const sizes = this.#moving.map((of, i) =>
-      Math.abs(share(i, magnitude(equations[of].rate, evaluated.valueOf))),
+      Math.abs(share(i, magnitude(rightSide(this.#model, of), evaluated.valueOf))),
     );
     const driven = rates.reduce((sum, rate, i) => sum + share(i, rate), 0);
     if (Math.abs(driven) <= 1e-9 * sizes.reduce((sum, part) => sum + part, 0)) return null;
@@ -242,6 +243,21 @@ const PER_SECOND: Dimension = [0, 0, -1, 0, 0, 0, 0];
 
 function greatest(values: readonly number[]): number {
   return values.reduce((best, value, i) => (Math.abs(value) > Math.abs(values[best]) ? i : best), 0);
+}
+
+/** Do all rates at a point count as zero, against what they are added up from? */
+export function atRest(model: StateModel, evaluated: Evaluated): boolean {
+  const moving = movingStates(model);
+  const slopes = stateSlopesAt(model, evaluated, moving);
+  const scale = slopes === null ? moving.map(() => 1) : balance(slopes).scale;
+  const sizes = moving.map((i, k) => magnitude(rightSide(model, i), evaluated.valueOf) / scale[k]);
+  const most = Math.max(0, ...sizes);
+  return moving.every((i, k) => Math.abs(evaluated.rates[i]) / scale[k] <= 1e-9 * most);
+}
+
+/** What a rate is made of: where rates are coupled, the side of M·ẋ = h that holds none. */
+function rightSide({ implicit, equations }: StateModel, i: number): Expr {
+  return implicit === null ? equations[i].rate : implicit.right[i];
 }
 
 /** The size of what is added up in an expression, whatever cancels: against it zero is told from rounding. */

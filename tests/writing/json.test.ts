@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { z } from "zod";
-import { SCHEMAS } from "../../grammar/writing/schemas.ts";
+import { SCHEMAS } from "../../grammar/writing/published-schemas.ts";
 
 describe("the published schemas", () => {
   it.each(Object.entries(SCHEMAS))(
