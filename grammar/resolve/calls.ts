@@ -1,6 +1,7 @@
 import type { FunctionName } from "../symbolic/expression.ts";
 import { FUNCTION_NAMES } from "../syntax/words.ts";
 import { DIMENSIONLESS, isDimensionless, power } from "../units/dimension.ts";
+import { translateCurve } from "./curves.ts";
 import { NO_INDICES } from "./draft.ts";
 import { spanIn } from "./files.ts";
 import { plainScope, type Scope } from "./scope.ts";
@@ -14,12 +15,7 @@ export function translateCall(translator: Translator, tree: Call, scope: Scope):
   const placed = scope.file.visible.values.get(name);
   if (placed?.item.kind === "function") return written(translator, tree, scope);
   if (placed?.item.kind === "curve") {
-    return translator.refuse(
-      "not-yet",
-      tree.range,
-      scope,
-      `Curves are read, but not yet worked out: \`${name}\`.`,
-    );
+    return translateCurve(translator, tree, { file: placed.file, item: placed.item }, scope);
   }
   if (scope.file.missing === true || scope.file.missing.has(name)) return translator.unknown;
   const meant = translator.draft.guess(name, () => {

@@ -1,11 +1,10 @@
 import type { Finding } from "../diagnostics/finding.ts";
-import { finding } from "../diagnostics/finding.ts";
-import { parseUnit } from "../units/parse-unit.ts";
+import { curveOf } from "./curves.ts";
 import { Draft, NO_INDICES } from "./draft.ts";
-import { type SourceFile, spanIn } from "./files.ts";
+import type { SourceFile } from "./files.ts";
 import { fileConst } from "./parameters.ts";
 import { plainScope } from "./scope.ts";
-import { Translator, unknownUnit } from "./translate.ts";
+import { Translator } from "./translate.ts";
 
 /**
  * Consts, functions and curves of a file, looked at for themselves: a function's names even where nothing calls
@@ -22,10 +21,7 @@ export function checkDeclarations(file: SourceFile): Finding[] {
       const bound = new Map(item.parameters.map(({ text }) => [text, translator.unknown]));
       translator.whole(item.body, { ...scope, bound, fixed: false });
     } else if (item.kind === "curve") {
-      for (const unit of [item.from, item.to]) {
-        if (parseUnit(unit.text) === null)
-          draft.report(finding("unknown-unit", spanIn(file, unit.range), unknownUnit(unit.text)));
-      }
+      curveOf(translator, { file, item });
     }
   }
   return draft.findings;

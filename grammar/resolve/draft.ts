@@ -4,6 +4,7 @@ import type { Range, Span } from "../source/span.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { Pool } from "../symbolic/pool.ts";
 import type {
+  CurveDeclaration,
   ElementDeclaration,
   Expect,
   Expression,
@@ -15,6 +16,7 @@ import type {
   Wiring,
 } from "../syntax/tree.ts";
 import type { Unit } from "../units/unit.ts";
+import type { CurveInUse } from "./curves.ts";
 import type { SourceFile } from "./files.ts";
 import { spanIn } from "./files.ts";
 import type { Domain, NodeKind } from "./graph.ts";
@@ -70,6 +72,8 @@ export interface DraftNode {
 /** One end of a bond at a node; `port` names a field's port as wired, or a two-port's once it is known. */
 export interface End {
   bond: DraftBond;
+  /** The system whose wiring names the node here; joining ports gives the end another bond, but not another line. */
+  readonly instance: Instance;
   readonly side: "from" | "to";
   port: string;
   readonly range: Range;
@@ -165,6 +169,8 @@ export class Draft {
   /** Parameters' numbers by their symbols, as they become known. */
   readonly numbers = new Map<Expr, number>();
   readonly consts = new Map<ValueDeclaration, FileConst | "open">();
+  /** Curves worked out so far; null for those at fault. */
+  readonly curves = new Map<CurveDeclaration, CurveInUse | null>();
   /** The structure can't be built; later steps would only guess. */
   broken = false;
   /** Some expression stands for nothing; where no finding of this system says why, one of its file does. */

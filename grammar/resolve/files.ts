@@ -1,5 +1,6 @@
 import { type Finding, finding, type Report } from "../diagnostics/finding.ts";
 import { nearest } from "../diagnostics/nearest.ts";
+import { pathFrom } from "../source/released.ts";
 import type { Range, Span } from "../source/span.ts";
 import type { FileSet, SourceText } from "../source/text.ts";
 import type {
@@ -15,6 +16,7 @@ import type {
 import { parseUnit } from "../units/parse-unit.ts";
 import { DOMAINS, declaredDomain } from "./domains.ts";
 import type { Domain } from "./graph.ts";
+import { missingFile } from "./missing-file.ts";
 
 export type Parse = (source: SourceText) => { readonly tree: File; readonly findings: readonly Finding[] };
 
@@ -35,6 +37,8 @@ export interface Names {
 export interface SourceFile {
   readonly path: string;
   readonly source: SourceText;
+  /** The set it stands in: where the data is that its curves name. */
+  readonly set: FileSet;
   readonly tree: File;
   readonly syntaxErrors: readonly Finding[];
   readonly declared: Names;
@@ -102,31 +106,9 @@ export class Library {
   }
 
   #used(file: SourceFile, use: Use): SourceFile | null {
-    const path = use.path.value;
-    const span = spanIn(file, use.path.range);
-    if (/^[^/]*@/.test(path)) {
-      this.#report(
-        finding("not-yet", span, `Parts of a released set are read, but not yet looked up: \`${path}\`.`),
-      );
-      return null;
-    }
-    const used = this.#read(path);
-    if (used === null) {
-      const meant = nearest(path, this.#set.keys());
-      this.#report(
-        finding(
-          "file-missing",
-          span,
-          `There is no file \`${path}\` in this set.${meant === null ? "" : ` Is \`${meant}\` meant?`}`,
-          {
-            fix:
-              meant === null
-                ? undefined
-                : { title: `Use ${meant}`, edits: [{ span, text: JSON.stringify(meant) }] },
-          },
-        ),
-      );
-    }
+    const used = this.#read(pathFrom(file.path, use.path.value));
+    if (used === null)
+      this.#report(missingFile(this.#set, file.path, use.path.value, spanIn(file, use.path.range)));
     return used;
   }
 
@@ -212,6 +194,7 @@ export class Library {
       file = {
         path,
         source,
+        set: this.#set,
         tree,
         syntaxErrors: findings.filter(({ severity }) => severity === "error"),
         declared: { systems: new Map(), values: new Map(), domains: new Map() },
