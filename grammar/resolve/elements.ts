@@ -58,7 +58,7 @@ function checkOnePort(draft: Draft, node: DraftNode): boolean {
     draft.report(
       finding(
         "wrong-port-count",
-        spanOf(second.bond.instance, second.range),
+        spanOf(second.instance, second.range),
         `${node.type} ${node.local} has one port, but ${node.ends.length} bonds; a junction joins what shares an effort or a flow.`,
         {
           facts: bondFacts(node.ends),
@@ -72,7 +72,7 @@ function checkOnePort(draft: Draft, node: DraftNode): boolean {
   draft.report(
     finding(
       "reversed-passive",
-      spanOf(end.bond.instance, end.range),
+      spanOf(end.instance, end.range),
       `${node.type} ${node.local} takes power, so its bond points at it; here the bond leaves it.`,
       { fix },
     ),
@@ -131,7 +131,7 @@ function checkField(draft: Draft, node: DraftNode): boolean {
       draft.report(
         finding(
           "wrong-port-count",
-          spanOf(ends[1].bond.instance, ends[1].range),
+          spanOf(ends[1].instance, ends[1].range),
           `The port \`${name}\` has ${ends.length} bonds; it takes one.`,
         ),
       );
@@ -141,7 +141,7 @@ function checkField(draft: Draft, node: DraftNode): boolean {
       draft.report(
         finding(
           "port-direction",
-          spanOf(end.bond.instance, end.range),
+          spanOf(end.instance, end.range),
           `The port \`${name}\` ${port.gives ? "gives power, so its bond leaves it" : "takes power, so its bond points at it"}; here the arrow points the other way.`,
           {
             facts: [{ message: "declared here", span: spanOf(node.instance, port.range) }],
@@ -157,6 +157,6 @@ function checkField(draft: Draft, node: DraftNode): boolean {
 function bondFacts(ends: readonly End[]) {
   return ends.slice(0, 6).map((end) => ({
     message: end.side === "to" ? "this bond points at it" : "this bond leaves it",
-    span: spanOf(end.bond.instance, end.range),
+    span: spanOf(end.instance, end.range),
   }));
 }

@@ -106,7 +106,7 @@ function checkSide(
     draft.report(
       finding(
         "wrong-port-count",
-        spanOf(ends[1].bond.instance, ends[1].range),
+        spanOf(ends[1].instance, ends[1].range),
         `The port ${name} has ${ends.length} bonds ${where}; a port has one on each side. A junction joins more.`,
       ),
     );
@@ -118,7 +118,7 @@ function checkSide(
   draft.report(
     finding(
       "port-direction",
-      spanOf(ends[0].bond.instance, ends[0].range),
+      spanOf(ends[0].instance, ends[0].range),
       `The port ${name} ${verb} power, so its bond ${where} ${wanted}; here the arrow points the other way.`,
       {
         facts: [

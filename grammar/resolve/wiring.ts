@@ -50,8 +50,8 @@ export function wire(draft: Draft, instance: Instance, wiring: Wiring, indices: 
           group: null,
         };
         draft.bonds.push(drawn);
-        from.node.ends.push({ bond: drawn, side: "from", port: from.port, range: from.range });
-        to.node.ends.push({ bond: drawn, side: "to", port: to.port, range: to.range });
+        from.node.ends.push({ bond: drawn, instance, side: "from", port: from.port, range: from.range });
+        to.node.ends.push({ bond: drawn, instance, side: "to", port: to.port, range: to.range });
       }
     }
   }

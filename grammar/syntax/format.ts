@@ -146,7 +146,9 @@ class Formatter {
   /** The remark or comment behind what ends at `#end`, as it was written, blanks and all. */
   #rest(): string {
     const from = this.#end;
-    const isRemark = /^[^\S\r\n]*--(?=[\s{}]|$)/.test(this.#text.slice(from, from + 80));
+    const remark = /[^\S\r\n]*--(?=[\s{}]|$)/y;
+    remark.lastIndex = from;
+    const isRemark = remark.test(this.#text);
     if (this.#trailingComment() === null && !isRemark) return "";
     let end = from;
     while (end < this.#text.length && this.#text[end] !== "\n" && this.#text[end] !== "\r") end += 1;
