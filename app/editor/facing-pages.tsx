@@ -12,7 +12,7 @@ import { useLocation, useNavigate } from "react-router";
 import { SourceText } from "../../grammar/source/text.ts";
 import { lineHash, lineOfHash, rememberLine } from "./address.ts";
 import { DraftNote } from "./draft-note.tsx";
-import { draftKey } from "./drafts.ts";
+import { draftShelf } from "./drafts.ts";
 import "./facing-pages.css";
 import { Fold } from "./fold.tsx";
 import { FileList, Text } from "./left-page.tsx";
@@ -63,7 +63,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
   );
   const unsaved = useMemo(() => unsavedOf(workspace), [workspace]);
   const saving = useSaving(workspace, unsaved, step, answer);
-  const kept = useDraft(draftKey(person, team, set), workspace, unsaved, step);
+  const draft = useDraft(draftShelf(person, team, set), workspace, unsaved, step);
   useEffect(() => step({ kind: "loaded", commit, files }), [commit, files]);
 
   const core = useCore(workspace.texts, path, search.get("system"), variablesOf(search));
@@ -143,7 +143,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
               </p>
             )}
           </FileList>
-          <DraftNote restored={workspace.restored} step={step} />
+          <DraftNote restored={workspace.restored} draft={draft} step={step} />
           {text === undefined ? (
             <p className="flex-1 p-4">
               There is no file {path} in this version of the set.{" "}
@@ -185,7 +185,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
             unsaved={unsaved.length}
             alive={alive}
             mayWrite={mayWrite}
-            kept={kept}
+            kept={draft.kept}
             saving={saving}
           />
         </form>

@@ -43,6 +43,11 @@ export function SaveForm({ ref, base, parent, path, unsaved, alive, mayWrite, ke
         autoComplete="off"
         value={saving.message}
         onChange={(event) => saving.setMessage(event.target.value)}
+        onKeyDown={(event) => {
+          if (event.key !== "Enter" || !(event.ctrlKey || event.metaKey)) return;
+          event.preventDefault();
+          event.currentTarget.form?.requestSubmit();
+        }}
         aria-invalid={invalid}
         aria-describedby="save-saying"
         required
@@ -65,15 +70,33 @@ export function SaveForm({ ref, base, parent, path, unsaved, alive, mayWrite, ke
               saved yet; saving again puts it on top of theirs.
             </span>
           )}
-          {saving.saying ??
-            (unsaved === 0 ? "All saved." : `● ${unsaved} file${unsaved === 1 ? "" : "s"} unsaved.`)}
+          <State base={base} unsaved={unsaved} saving={saving} />
           {!kept && " The browser keeps no draft of it: save before you close the tab."}
         </p>
         <p className="ml-auto">{history}</p>
         <p className="basis-full">
-          Ctrl+S goes to the message. Escape, then Tab, leaves the text; Ctrl+M makes Tab always leave it.
+          Ctrl+S goes to the message, Ctrl+Enter saves from there. Escape, then Tab, leaves the text; Ctrl+M
+          makes Tab always leave it.
         </p>
       </div>
     </div>
+  );
+}
+
+/** Saved or not, and as what: an unsaved text is told before what became of an earlier one. */
+function State({ base, unsaved, saving }: Pick<SaveFormProps, "base" | "unsaved" | "saving">) {
+  const { busy, outcome } = saving;
+  if (busy) return "Saving …";
+  if (unsaved > 0) return `● ${unsaved} file${unsaved === 1 ? "" : "s"} unsaved.`;
+  if (outcome === null) return "All saved.";
+  if (outcome.kind === "unchanged") return "The set holds this text already; there is nothing to save.";
+  return (
+    <>
+      <span className="text-met font-semibold">✓</span> Saved as version{" "}
+      <Link to={`${base}/commits/${outcome.oid}`} className="font-mono">
+        {outcome.oid.slice(0, 7)}
+      </Link>
+      .{outcome.merged && " Others had saved other files; theirs stand beside yours."}
+    </>
   );
 }

@@ -21,9 +21,14 @@ type Answer =
       readonly problems: readonly { readonly path: string; readonly message: string }[];
     };
 
+/** What became of the last save. */
+export type Outcome =
+  | { readonly kind: "saved"; readonly oid: string; readonly merged: boolean }
+  | { readonly kind: "unchanged" };
+
 export interface Saving {
   readonly busy: boolean;
-  readonly saying: string | null;
+  readonly outcome: Outcome | null;
   readonly problems: readonly { readonly path: string; readonly message: string }[];
   /** Set while someone else's newer version of the same files is to be dealt with. */
   readonly behind: Behind | null;
@@ -59,7 +64,7 @@ export function useSaving(
 
   return {
     busy: fetcher.state !== "idle",
-    saying: sayingOf(fetcher.state !== "idle", answer),
+    outcome: outcomeOf(answer),
     problems: answer?.kind === "refused" ? answer.problems : [],
     behind: answer?.kind === "behind" ? answer : null,
     message,
@@ -81,14 +86,9 @@ export function useSaving(
   };
 }
 
-function sayingOf(busy: boolean, answer: SaveAnswer | undefined): string | null {
-  if (busy) return "Saving …";
-  if (answer?.kind === "saved") {
-    const version = `Saved as version ${answer.commit.oid.slice(0, 7)}.`;
-    return answer.merged ? `${version} Others had saved other files; theirs stand beside yours.` : version;
-  }
-  if (answer?.kind === "unchanged") return "The set holds this text already; there is nothing to save.";
-  return null;
+function outcomeOf(answer: SaveAnswer | undefined): Outcome | null {
+  if (answer?.kind === "saved") return { kind: "saved", oid: answer.commit.oid, merged: answer.merged };
+  return answer?.kind === "unchanged" ? { kind: "unchanged" } : null;
 }
 
 /** Without scripts the form itself must name the version that the text is now to be saved on. */

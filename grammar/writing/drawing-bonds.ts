@@ -1,5 +1,5 @@
 import type { DiagramBond } from "./diagram-model.ts";
-import type { Path, Point, Shape, Text } from "./drawing.ts";
+import { type Path, type Point, type Shape, type Text, textWidth } from "./drawing.ts";
 
 const BARB = 11;
 const BARB_ANGLE = (32 * Math.PI) / 180;
@@ -67,7 +67,10 @@ function crossedOut(line: readonly Point[]): Path[] {
   );
 }
 
-/** Over the bond at the end where the domain changes; beside it where the longest piece is upright. */
+/**
+ * Over the bond at the end where the domain changes; over its longest piece where the one at that end is too short;
+ * beside it where the longest piece is upright.
+ */
 function domainLabel(text: string, line: readonly Point[], end: "from" | "to" | "both"): Text {
   const lettering = "domain";
   const { at, along } = middleOf(line);
@@ -81,9 +84,10 @@ function domainLabel(text: string, line: readonly Point[], end: "from" | "to" | 
       subscript: "",
     };
   }
-  if (end === "both")
-    return { kind: "text", lettering, at: { x: at.x, y: at.y - 5 }, anchor: "middle", text, subscript: "" };
   const [foot, next] = end === "from" ? [line[0], line[1]] : [line[line.length - 1], line[line.length - 2]];
+  const short = line.length > 2 && Math.abs(next.x - foot.x) < textWidth(text, lettering) + 8;
+  if (end === "both" || short)
+    return { kind: "text", lettering, at: { x: at.x, y: at.y - 5 }, anchor: "middle", text, subscript: "" };
   const right = next.x > foot.x;
   const start = { x: foot.x + (right ? 6 : -6), y: foot.y - 5 };
   return { kind: "text", lettering, at: start, anchor: right ? "start" : "end", text, subscript: "" };
