@@ -1,4 +1,5 @@
 import type { StateModel } from "../equations/model.ts";
+import type { Symbol } from "../symbolic/expression.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { atRest, type Equilibrium, equilibrium } from "./equilibrium.ts";
 import { evaluateModel } from "./evaluate-model.ts";
@@ -6,7 +7,7 @@ import { type Linearised, lineariseAt, type Signal } from "./linearise.ts";
 import { type Modes, modesOf } from "./modes.ts";
 import { type Point, startPoint } from "./point.ts";
 import { movingStates } from "./recording-tracks.ts";
-import { slopesOf } from "./slopes.ts";
+import { slopes, slopesOf } from "./slopes.ts";
 
 /** Where a model is linearised when nothing else is asked: its equilibrium, or its start where there is none. */
 export interface OperatingPoint {
@@ -78,17 +79,26 @@ export class Analysis {
     return this.#modes;
   }
 
-  /** The slopes of the rates are the same wherever the states and inputs are: modes do not hang on the point. */
-  get everywhereLinear(): boolean {
+  /** Why there is no equilibrium, once something has asked for one. */
+  get missedEquilibrium(): string | null {
+    return this.#equilibrium?.kind === "none" ? this.#equilibrium.reason : null;
+  }
+
+  /** Are the slopes of the rates and of some signals the same wherever the states and inputs are? */
+  sameSlopesEverywhere(signals: readonly Signal[]): boolean {
     const moving = new Set(movingStates(this.model).map((i) => this.model.states[i].symbol));
-    const { rates, residuals } = slopesOf(this.model);
-    return [...rates, ...residuals].every(({ value }) =>
-      [...symbolsOf(value)].every(
-        (symbol) =>
-          symbol.role === "parameter" ||
-          symbol.role === "constant" ||
-          (symbol.role === "state" && !moving.has(symbol)),
-      ),
+    const { columns, rates, residuals, ratesByUnknown, residualsByUnknown } = slopesOf(this.model);
+    const observed = slopes(
+      this.model.causal.graph.pool,
+      signals.map(({ value }) => value),
+      columns,
+    );
+    const fixed = (symbol: Symbol) =>
+      symbol.role === "parameter" ||
+      symbol.role === "constant" ||
+      (symbol.role === "state" && !moving.has(symbol));
+    return [...rates, ...residuals, ...ratesByUnknown, ...residualsByUnknown, ...observed].every(
+      ({ value }) => [...symbolsOf(value)].every(fixed),
     );
   }
 }

@@ -5,7 +5,7 @@ import {
   DEPENDENT,
   FAILED_REQUIREMENT,
   SYNTAX_ERROR,
-  UNJUDGED_REQUIREMENT,
+  UNMEASURABLE_REQUIREMENT,
   Workplace,
 } from "./run.ts";
 
@@ -14,7 +14,7 @@ const place = new Workplace()
   .write("conflict.wright", CONFLICT)
   .write("dependent.wright", DEPENDENT)
   .write("failed.wright", FAILED_REQUIREMENT)
-  .write("unjudged.wright", UNJUDGED_REQUIREMENT)
+  .write("unmeasurable.wright", UNMEASURABLE_REQUIREMENT)
   .write("syntax.wright", SYNTAX_ERROR)
   .write("untidy.wright", CLEAN.replace("param m =", "param  m="))
   .write("no-system.wright", "notation 1\n")
@@ -32,7 +32,7 @@ describe("exit codes", () => {
     [0, "check clean-folder"],
     [0, "check -", CLEAN],
     [0, "check dependent.wright"],
-    [0, "check unjudged.wright"],
+    [1, "check unmeasurable.wright"],
     [0, "check clean.wright --system Cart"],
     [0, "equations clean.wright"],
     [0, "equations dependent.wright"],
@@ -50,7 +50,7 @@ describe("exit codes", () => {
     [1, "check syntax.wright"],
     [1, "check -", CONFLICT],
     [1, "check dependent.wright --fail-on warning"],
-    [1, "check unjudged.wright --fail-on note"],
+    [1, "check unmeasurable.wright --fail-on note"],
     [1, "check conflict.wright --quiet --format json"],
     [1, "equations conflict.wright"],
     [1, "equations syntax.wright --format json"],

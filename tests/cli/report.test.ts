@@ -1,13 +1,13 @@
 import { afterAll, describe, expect, it } from "vitest";
 import { CheckDocument, EquationsDocument } from "../../grammar/writing/schemas.ts";
-import { CLEAN, CONFLICT, DEPENDENT, SYNTAX_ERROR, UNJUDGED_REQUIREMENT, Workplace } from "./run.ts";
+import { CLEAN, CONFLICT, DEPENDENT, SYNTAX_ERROR, UNMEASURABLE_REQUIREMENT, Workplace } from "./run.ts";
 
 const place = new Workplace()
   .write("clean.wright", CLEAN)
   .write("conflict.wright", CONFLICT)
   .write("dependent.wright", DEPENDENT)
   .write("syntax.wright", SYNTAX_ERROR)
-  .write("unjudged.wright", UNJUDGED_REQUIREMENT);
+  .write("unmeasurable.wright", UNMEASURABLE_REQUIREMENT);
 
 afterAll(() => place.remove());
 
@@ -24,10 +24,10 @@ describe("check, as text", () => {
     expect(out).toContain("1 file, 1 system: 1 error");
   });
 
-  it("never lists an unjudged requirement as met", () => {
-    const { out } = place.run(["check", "unjudged.wright"]);
-    expect(out).toContain("note  not-yet");
-    expect(out).toContain("0 of 1 requirement met, 1 not judged");
+  it("fails a requirement that nothing measures, and says why", () => {
+    const { out } = place.run(["check", "unmeasurable.wright"]);
+    expect(out).toContain("error  not-computable  There is no mode 2");
+    expect(out).toContain("0 of 1 requirement met, 1 failed");
   });
 
   it("prints nothing at all when quiet and clean", () => {
@@ -36,7 +36,7 @@ describe("check, as text", () => {
 });
 
 describe("check, as JSON", () => {
-  it.each(["clean", "conflict", "dependent", "syntax", "unjudged"])("%s holds to its schema", (name) => {
+  it.each(["clean", "conflict", "dependent", "syntax", "unmeasurable"])("%s holds to its schema", (name) => {
     const { out } = place.run(["check", "--format", "json", `${name}.wright`]);
     const document = CheckDocument.parse(JSON.parse(out));
     expect(document.files).toEqual([`${name}.wright`]);

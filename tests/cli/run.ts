@@ -25,11 +25,11 @@ export class Workplace {
 
   run(
     args: readonly string[],
-    options: { readonly stdin?: string; readonly env?: NodeJS.ProcessEnv } = {},
+    options: { readonly stdin?: string; readonly env?: NodeJS.ProcessEnv; readonly cwd?: string } = {},
   ): Outcome {
     const { NO_COLOR: _, ...env } = process.env;
     const done = spawnSync(process.execPath, [BUILT, ...args], {
-      cwd: this.folder,
+      cwd: path.join(this.folder, options.cwd ?? "."),
       encoding: "utf8",
       input: options.stdin ?? "",
       env: { ...env, ...options.env },
@@ -92,6 +92,6 @@ export const DEPENDENT = `${HEAD}system Gear {
 
 export const FAILED_REQUIREMENT = CLEAN.replace("order = 1", "order = 2");
 
-export const UNJUDGED_REQUIREMENT = CLEAN.replace("order = 1", "stable");
+export const UNMEASURABLE_REQUIREMENT = CLEAN.replace("order = 1", "frequency(2) > 1 Hz");
 
 export const SYNTAX_ERROR = CLEAN.replace("input F : N ", "input F : ");

@@ -26,10 +26,7 @@ it("the examples that are not run yet are these", () => {
   expect(later).toEqual([
     "run-stopped",
     "check-stopped",
-    "not-reciprocal",
-    "not-passive",
     "curve-left",
-    "no-equilibrium",
     "unstable-trial",
     "energy-not-closed",
     "stale-acceptance",
