@@ -1,4 +1,5 @@
 import type { Answers, Question } from "./core-questions.ts";
+import type { NameAnswer } from "./names/rename.ts";
 import type { FileView, Variables } from "./view-model.ts";
 
 /** What the page asks of the core's worker. `number` grows with every request: an older answer is dropped. */
@@ -14,11 +15,21 @@ export type CoreRequest =
       readonly changed: readonly (readonly [path: string, text: string | null])[];
     }
   | { readonly kind: "format"; readonly number: number; readonly path: string; readonly text: string }
+  | {
+      readonly kind: "names";
+      readonly number: number;
+      readonly path: string;
+      readonly text: string;
+      readonly offset: number;
+      /** The new name; null asks only where the name is written. */
+      readonly wanted: string | null;
+    }
   | { readonly kind: "ask"; readonly number: number; readonly path: string; readonly question: Question };
 
 export type CoreAnswer =
   | { readonly kind: "view"; readonly number: number; readonly view: FileView; readonly milliseconds: number }
   | { readonly kind: "formatted"; readonly number: number; readonly text: string }
+  | { readonly kind: "named"; readonly number: number; readonly answer: NameAnswer }
   | {
       readonly kind: "answer";
       readonly number: number;

@@ -1,6 +1,7 @@
 import coreWorkerUrl from "./core.worker.ts?worker&url";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
 import type { AnswerTo, Question } from "./core-questions.ts";
+import type { NameAnswer } from "./names/rename.ts";
 import type { FileView, Variables } from "./view-model.ts";
 import { workerAddress } from "./worker-address.ts";
 
@@ -48,6 +49,11 @@ export class Core {
   async format(path: string, text: string): Promise<string | null> {
     const answer = await this.#request((number) => ({ kind: "format", number, path, text }));
     return answer?.kind === "formatted" ? answer.text : null;
+  }
+
+  async names(path: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer> {
+    const answer = await this.#request((number) => ({ kind: "names", number, path, text, offset, wanted }));
+    return answer?.kind === "named" ? answer.answer : { refusal: "The core could not read this text." };
   }
 
   async ask<Q extends Question>(path: string, question: Q): Promise<AnswerTo<Q>> {

@@ -4,6 +4,7 @@ import { formatText } from "../../grammar/syntax/format.ts";
 import { answerTo } from "./build-audit.ts";
 import { viewOf } from "./build-view.ts";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
+import { namesAt } from "./names/rename.ts";
 
 /** The core beside the page: keeps the set's texts and trees, and works out only the newest request. */
 const files = new Map<string, SourceText>();
@@ -19,6 +20,14 @@ self.onmessage = (event: MessageEvent<CoreRequest>) => {
       kind: "formatted",
       number: request.number,
       text: formatText(new SourceText(request.path, request.text)),
+    }));
+    return;
+  }
+  if (request.kind === "names") {
+    answer(request.number, () => ({
+      kind: "named",
+      number: request.number,
+      answer: namesAt(files, trees, request),
     }));
     return;
   }

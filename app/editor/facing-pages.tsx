@@ -15,6 +15,7 @@ import { DraftNote } from "./draft-note.tsx";
 import { draftShelf } from "./drafts.ts";
 import "./facing-pages.css";
 import { Fold } from "./fold.tsx";
+import { holderAt } from "./holder.ts";
 import { FileList, Text } from "./left-page.tsx";
 import { LightingContext } from "./right-page/lighting.ts";
 import { WhatFollows } from "./right-page/what-follows.tsx";
@@ -75,14 +76,20 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
 
   useSaveKey(messageField);
 
-  const inAddress = (name: string, value: string | null) => {
+  const inAddress = (name: string, value: string | null, hash = window.location.hash) => {
     const wanted = new URLSearchParams(search);
     if (value === null) wanted.delete(name);
     else wanted.set(name, value);
-    void navigate(
-      { search: wanted.toString(), hash: window.location.hash },
-      { replace: true, preventScrollReset: true },
-    );
+    void navigate({ search: wanted.toString(), hash }, { replace: true, preventScrollReset: true });
+  };
+  // What follows is of the system one writes in; one chosen by name stays until the cursor enters another.
+  const entered = useRef<string | null>(null);
+  const followSystem = (line: number) => {
+    const holder = core.view === null ? null : holderAt(core.view, line);
+    const name = holder?.space === "system" ? holder.name : null;
+    if (name !== null && name !== entered.current && name !== core.system?.name)
+      inAddress("system", name, lineHash(line));
+    entered.current = name ?? entered.current;
   };
   const goTo = useCallback(
     ({ file, line, column }: { file: string; line: number; column: number }) => {
@@ -168,6 +175,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
               onText={(file, typed) => step({ kind: "typed", path: file, text: typed })}
               onCursor={(line) => {
                 lighting.setCursor(line);
+                followSystem(line);
                 rememberLine(line);
               }}
               onPoint={lighting.pointAtLine}
@@ -175,6 +183,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
               onSave={() => messageField.current?.focus()}
               onOpen={goTo}
               format={core.format}
+              names={core.names}
             />
           )}
           <SaveForm
@@ -194,6 +203,7 @@ export function FacingPages({ person, team, set, path, commit, files, mayWrite, 
           page={rightPage}
           tiedLines={lighting.tiedLines}
           litLines={lighting.litLines}
+          stale={core.stale}
           redraw={lighting.redrawFold}
         />
         <WhatFollows

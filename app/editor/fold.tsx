@@ -7,6 +7,8 @@ interface FoldProps {
   readonly page: RefObject<HTMLElement | null>;
   readonly tiedLines: readonly number[];
   readonly litLines: readonly number[];
+  /** The ties are those of the last text without errors. */
+  readonly stale: boolean;
   /** Called with the function that draws anew, for whoever notices that something moved. */
   readonly redraw: RefObject<() => void>;
 }
@@ -16,7 +18,7 @@ interface FoldProps {
  * at each equation and row; threads run across from the lit lines to what is lit. For the eye alone: the same ties
  * are told in words by the lines' numbers beside each row and equation.
  */
-export function Fold({ text, page, tiedLines, litLines, redraw }: FoldProps) {
+export function Fold({ text, page, tiedLines, litLines, stale, redraw }: FoldProps) {
   const canvas = useRef<SVGSVGElement>(null);
   useEffect(() => {
     let waiting = 0;
@@ -42,7 +44,9 @@ export function Fold({ text, page, tiedLines, litLines, redraw }: FoldProps) {
       window.removeEventListener("resize", draw);
     };
   });
-  return <svg ref={canvas} className="fold no-print" aria-hidden="true" focusable="false" />;
+  return (
+    <svg ref={canvas} className="fold no-print" data-stale={stale} aria-hidden="true" focusable="false" />
+  );
 }
 
 const SVG = "http://www.w3.org/2000/svg";

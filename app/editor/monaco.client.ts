@@ -19,6 +19,7 @@ import "monaco-editor/features/linesOperations/register";
 import "monaco-editor/features/multicursor/register";
 import "monaco-editor/features/quickCommand/register";
 import "monaco-editor/features/quickOutline/register";
+import "monaco-editor/features/rename/register";
 import "monaco-editor/features/smartSelect/register";
 // The feature of that name brings inline completions alone; the list of completions is this module.
 import "monaco-editor/editor/contrib/suggest/browser/suggestController.js";

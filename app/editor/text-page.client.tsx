@@ -35,6 +35,7 @@ export interface TextPageProps {
   onSave(): void;
   onOpen(place: { readonly file: string; readonly line: number; readonly column: number }): void;
   format: ServiceSource["format"];
+  names: ServiceSource["names"];
 }
 
 const COMMANDS = { format: "editor.action.formatDocument", outline: "editor.action.quickOutline" } as const;
@@ -69,7 +70,7 @@ export function TextPage(props: TextPageProps) {
 
   // biome-ignore lint/correctness/useExhaustiveDependencies: the same line of another file is another place
   useEffect(() => {
-    if (props.line === null) return;
+    if (props.line === null || editor.current?.getPosition()?.lineNumber === props.line) return;
     editor.current?.setPosition({ lineNumber: props.line, column: 1 });
     editor.current?.revealLineInCenter(props.line);
   }, [props.path, props.line]);
@@ -175,6 +176,7 @@ function openEditor(host: HTMLDivElement, current: { readonly current: TextPageP
     registerServices({
       view: () => current.current.view,
       format: (path, text) => current.current.format(path, text),
+      names: (...of) => current.current.names(...of),
     }),
     editor.onDidChangeModelContent(() => {
       const model = editor.getModel();

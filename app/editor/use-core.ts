@@ -1,6 +1,7 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { Core } from "./core.client.ts";
 import type { AnswerTo, Question } from "./core-questions.ts";
+import type { NameAnswer } from "./names/rename.ts";
 import type { FileView, SystemView, Variables } from "./view-model.ts";
 import type { Texts } from "./workspace.ts";
 
@@ -46,6 +47,12 @@ export function useCore(texts: Texts, path: string, wanted: string | null, varia
     (file: string, text: string) => core.current?.format(file, text) ?? Promise.resolve(null),
     [],
   );
+  const names = useCallback(
+    (file: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer> =>
+      core.current?.names(file, text, offset, wanted) ??
+      Promise.resolve({ refusal: "The core is not running." }),
+    [],
+  );
   const ask = useCallback(
     <Q extends Question>(question: Q): Promise<AnswerTo<Q>> =>
       core.current?.ask(path, question) ?? Promise.resolve(null),
@@ -53,7 +60,7 @@ export function useCore(texts: Texts, path: string, wanted: string | null, varia
   );
   const current =
     state.view !== null && state.view.path === path ? state : { ...NOTHING, fault: state.fault };
-  return { ...current, format, ask };
+  return { ...current, format, names, ask };
 }
 
 /** What the newest text gives, and where errors stopped it, what the last text without them gave. */

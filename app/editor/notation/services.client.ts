@@ -1,4 +1,6 @@
+import { holderAt } from "../holder.ts";
 import { monaco } from "../monaco.client.ts";
+import type { NameAnswer } from "../names/rename.ts";
 import type { FileView, OutlineEntry, Place } from "../view-model.ts";
 import { suggestionsAt } from "./completion.ts";
 import { NOTATION } from "./language-id.ts";
@@ -7,6 +9,7 @@ import { NOTATION } from "./language-id.ts";
 export interface ServiceSource {
   view(): FileView | null;
   format(path: string, text: string): Promise<string | null>;
+  names(path: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer>;
 }
 
 export function uriOf(path: string): monaco.Uri {
@@ -66,20 +69,12 @@ export function registerServices(source: ServiceSource): monaco.IDisposable {
       },
     }),
   ];
+  services.push(...nameServices(source));
   return {
     dispose() {
       for (const service of services) service.dispose();
     },
   };
-}
-
-/** The system or trial whose braces hold the line. */
-function withinAt(view: FileView, line: number): string | null {
-  const holder = view.outline.find(
-    ({ space, within, place, lastLine }) =>
-      within === null && (space === "system" || space === "trial") && place.line < line && line <= lastLine,
-  );
-  return holder?.name ?? null;
 }
 
 function completions(view: FileView | null, model: monaco.editor.ITextModel, position: monaco.Position) {
@@ -98,15 +93,17 @@ function completions(view: FileView | null, model: monaco.editor.ITextModel, pos
     variable: Kind.Field,
     domain: Kind.Enum,
   };
-  return suggestionsAt(before, view.outline, withinAt(view, position.lineNumber)).map((suggestion) => {
-    const start = suggestion.sort === "unit" ? position.column - unit.length : word.startColumn;
-    return {
-      label: { label: suggestion.label, description: suggestion.detail },
-      insertText: suggestion.insert,
-      kind: kinds[suggestion.sort],
-      range: new monaco.Range(position.lineNumber, start, position.lineNumber, position.column),
-    };
-  });
+  return suggestionsAt(before, view.outline, holderAt(view, position.lineNumber)?.name ?? null).map(
+    (suggestion) => {
+      const start = suggestion.sort === "unit" ? position.column - unit.length : word.startColumn;
+      return {
+        label: { label: suggestion.label, description: suggestion.detail },
+        insertText: suggestion.insert,
+        kind: kinds[suggestion.sort],
+        range: new monaco.Range(position.lineNumber, start, position.lineNumber, position.column),
+      };
+    },
+  );
 }
 
 function entryAt(
@@ -116,7 +113,7 @@ function entryAt(
 ): OutlineEntry | null {
   const word = model.getWordAtPosition(position);
   if (view === null || word === null) return null;
-  const within = withinAt(view, position.lineNumber);
+  const within = holderAt(view, position.lineNumber)?.name ?? null;
   const meant = view.outline.filter(
     ({ name, within: holder }) => name === word.word && (holder === within || holder === null),
   );
@@ -127,6 +124,50 @@ function entryAt(
     ({ place }) => place.line === position.lineNumber && place.column === word.startColumn,
   );
   return declared ?? meant.find(({ space }) => (space === "node") === node) ?? meant[0] ?? null;
+}
+
+/** Rename, and all places of a name: out of the tree of the very text that stands in the editor. */
+function nameServices(source: ServiceSource): monaco.IDisposable[] {
+  const ask = (model: monaco.editor.ITextModel, position: monaco.Position, wanted: string | null) =>
+    source.names(pathOf(model.uri), model.getValue(), model.getOffsetAt(position), wanted);
+  return [
+    monaco.languages.registerReferenceProvider(NOTATION, {
+      async provideReferences(model, position) {
+        const answer = await ask(model, position, null);
+        if ("refusal" in answer) return [];
+        return answer.places.map((place) => ({ uri: model.uri, range: rangeOf(place) }));
+      },
+    }),
+    monaco.languages.registerRenameProvider(NOTATION, {
+      async resolveRenameLocation(model, position) {
+        const answer = await ask(model, position, null);
+        const place =
+          "places" in answer
+            ? answer.places.find((one) => monaco.Range.containsPosition(rangeOf(one), position))
+            : undefined;
+        if ("refusal" in answer || place === undefined) {
+          const rejectReason = "refusal" in answer ? plain(answer.refusal) : "There is no name here.";
+          return { range: monaco.Range.fromPositions(position), text: "", rejectReason };
+        }
+        return { range: rangeOf(place), text: answer.name };
+      },
+      async provideRenameEdits(model, position, wanted) {
+        const answer = await ask(model, position, wanted);
+        if ("refusal" in answer) return { edits: [], rejectReason: plain(answer.refusal) };
+        return {
+          edits: answer.places.map((place) => ({
+            resource: model.uri,
+            versionId: model.getVersionId(),
+            textEdit: { range: rangeOf(place), text: wanted },
+          })),
+        };
+      },
+    }),
+  ];
+}
+
+function plain(sentence: string): string {
+  return sentence.replaceAll("`", "");
 }
 
 /** What a name was declared as. */
