@@ -84,6 +84,17 @@ export interface Finding {
   readonly span: Span;
   readonly facts: readonly Fact[];
   readonly fix?: Fix;
+  /** Where the finding is held against a set's settings: what it is known by, and by whose leave it stands. */
+  readonly fingerprint?: string;
+  readonly accepted?: Acceptance;
+}
+
+/** A finding that is known and may stay for a while. It is still shown, and fails nothing. */
+export interface Acceptance {
+  readonly owner: string;
+  readonly reason: string;
+  /** The last day on which it counts, `2027-03-31`, in UTC. */
+  readonly until: string;
 }
 
 export function finding(
