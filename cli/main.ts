@@ -1,6 +1,7 @@
 #!/usr/bin/env node
-import { Command, CommanderError, Option } from "commander";
+import { Argument, Command, CommanderError, Option } from "commander";
 import { version } from "../package.json";
+import { REPORT_FORMS } from "./output/forms.ts";
 import { WrongUse } from "./wrong-use.ts";
 
 /**
@@ -38,20 +39,27 @@ program
   .command("check")
   .description("say what is wrong with models, and whether they meet their requirements")
   .argument("[paths...]", "files, folders with all .wright files below, or - for standard input", ["."])
-  .addOption(new Option("--format <form>", "form of the report").choices(["text", "json"]).default("text"))
+  .addOption(new Option("--format <form>", "form of the report").choices(REPORT_FORMS).default("text"))
+  .addOption(
+    new Option("--output <form=file>", "write the report to a file too; may be given several times")
+      .argParser((given: string, before: string[]) => [...before, given])
+      .default([], "none"),
+  )
   .addOption(
     new Option("--fail-on <severity>", "least severity that fails")
       .choices(["error", "warning", "note"])
       .default("error"),
   )
   .option("--system <name>", "only this system")
+  .option("--trial <name>", "only this trial and its system")
   .option("--quiet", "print only what fails")
+  .option("--fingerprints", "print what a finding is known by in the set's settings")
   .addOption(color())
   .addOption(stdinName())
   .addHelpText("after", ROOT_HELP + EXIT_HELP)
   .action(async (paths, options) => {
     const { check } = await import("./commands/check.ts");
-    process.exitCode = check(paths, options);
+    process.exitCode = await check(paths, options);
   });
 
 program
@@ -130,6 +138,15 @@ program
   .action(async (name, options) => {
     const { explain } = await import("./commands/explain.ts");
     process.exitCode = explain(name, options);
+  });
+
+program
+  .command("completion")
+  .description("print what makes a shell complete this command line")
+  .addArgument(new Argument("<shell>").choices(["bash", "zsh", "fish"]))
+  .action(async (shell) => {
+    const { completion } = await import("./commands/completion.ts");
+    process.exitCode = completion(shell, program);
   });
 
 // A reader that has seen enough (`| head`) is no fault of the report.

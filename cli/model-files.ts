@@ -1,5 +1,6 @@
 import { existsSync, readdirSync, readFileSync, statSync } from "node:fs";
 import path from "node:path";
+import { SETTINGS_FILE } from "../grammar/diagnostics/settings.ts";
 import { compareNames } from "../grammar/resolve/graph.ts";
 import { SourceText } from "../grammar/source/text.ts";
 import { DiskFiles, decode, isFile, readText } from "./disk-files.ts";
@@ -16,8 +17,8 @@ export interface ModelFile {
   readonly onDisk: string | null;
 }
 
-/** The name of the file that marks the root of a model set. */
-const ROOT_MARK = "bondwright.json";
+/** The settings of a model set mark its root. */
+const ROOT_MARK = SETTINGS_FILE;
 
 /** The files that the arguments name: files as given, folders with all `.wright` files below, `-` standard input. */
 export function modelFiles(args: readonly string[], stdinName: string): ModelFile[] {
@@ -70,15 +71,30 @@ function standardInput(name: string, sets: Map<string, DiskFiles>): ModelFile {
   return model;
 }
 
-/** In natural order; hidden folders and installed packages hold no models of ours. */
+/** In natural order. */
 function wrightFiles(folder: string): string[] {
   const entries = readdirSync(folder, { withFileTypes: true }).sort((a, b) => compareNames(a.name, b.name));
   return entries.flatMap((entry) => {
     const file = path.join(folder, entry.name);
-    if (entry.isDirectory())
-      return entry.name.startsWith(".") || entry.name === "node_modules" ? [] : wrightFiles(file);
+    if (entry.isDirectory()) return isPassedOver(entry.name) ? [] : wrightFiles(file);
     return entry.name.endsWith(".wright") && isFile(file) ? [file] : [];
   });
+}
+
+/** All `.wright` files of the set with this root, from the root; a folder with a mark of its own is another set. */
+export function filesOfSet(root: string): string[] {
+  const inside = (folder: string): string[] =>
+    readdirSync(folder, { withFileTypes: true }).flatMap((entry) => {
+      const file = path.join(folder, entry.name);
+      if (!entry.isDirectory()) return entry.name.endsWith(".wright") && isFile(file) ? [file] : [];
+      return isPassedOver(entry.name) || existsSync(path.join(file, ROOT_MARK)) ? [] : inside(file);
+    });
+  return inside(root).map((file) => path.relative(root, file).split(path.sep).join("/"));
+}
+
+/** Hidden folders and installed packages hold no models of ours. */
+function isPassedOver(folder: string): boolean {
+  return folder.startsWith(".") || folder === "node_modules";
 }
 
 function rootOf(file: string, targets: readonly string[], given: string | null): string {

@@ -1,61 +1,62 @@
-import { atLeast, type Severity } from "../../grammar/diagnostics/finding.ts";
-import { checkFile, type TreeCache } from "../../grammar/pipeline.ts";
-import { type CheckedFile, checkDocument, findingsOf } from "../../grammar/writing/json.ts";
+import path from "node:path";
+import type { Severity } from "../../grammar/diagnostics/finding.ts";
+import type { TreeCache } from "../../grammar/pipeline.ts";
+import { asRun, type CheckRun, checkOne } from "../check-run.ts";
 import { modelFiles } from "../model-files.ts";
-import { findingText, summaryText } from "../output/findings.ts";
+import { REPORT_FORMS, type ReportForm } from "../output/forms.ts";
 import { type ColourChoice, paintFor, print } from "../output/print.ts";
+import { Progress } from "../output/progress.ts";
+import { reportText } from "../output/report.ts";
+import { writeWhole } from "../write-file.ts";
 import { WrongUse } from "../wrong-use.ts";
 
 export interface CheckArguments {
-  readonly format: "text" | "json";
+  readonly format: ReportForm;
+  /** `FORM=FILE`, as they were given. */
+  readonly output: readonly string[];
   readonly failOn: Severity;
   readonly system?: string;
+  readonly trial?: string;
   readonly quiet?: boolean;
+  readonly fingerprints?: boolean;
   readonly color: ColourChoice;
   readonly stdinName: string;
 }
 
 /** Checks files and prints what was found. Returns the exit code: 0 clean, 1 findings or failed requirements. */
-export function check(paths: readonly string[], options: CheckArguments): number {
-  const cache: TreeCache = new Map();
-  const checked = modelFiles(paths, options.stdinName).map(
-    ({ path, files, shown }): CheckedFile => ({
-      report: checkFile(files, path, { system: options.system, cache }),
-      files,
-      shown,
-    }),
-  );
-  if (options.system !== undefined && checked.every(({ report }) => report.systems.length === 0)) {
-    throw new WrongUse(`No file that was given holds a system ${options.system}.`);
-  }
-  const text =
-    options.format === "json"
-      ? JSON.stringify(checkDocument(checked), null, 2)
-      : textReport(checked, options);
+export async function check(paths: readonly string[], options: CheckArguments): Promise<number> {
+  const outputs = outputsOf(options.output);
+  const run = checkRun(paths, options);
+  // Before anything is printed: what can't be written is no check that somebody may rely on.
+  for (const { form, file } of outputs) writeWhole(file, await reportText(run, form, paintFor("never")));
+  const text = await reportText(run, options.format, paintFor(options.color));
   if (text !== "") print(text);
-  return passes(checked, options.failOn) ? 0 : 1;
+  return run.passed ? 0 : 1;
 }
 
-function passes(checked: readonly CheckedFile[], failOn: Severity): boolean {
-  const stopping = findingsOf(checked).some(({ found }) => atLeast(found.severity, failOn));
-  const failed = checked.some(({ report }) =>
-    report.systems.some(({ expectations }) => expectations.some(({ judged, passed }) => judged && !passed)),
-  );
-  return !stopping && !failed;
+function checkRun(paths: readonly string[], options: CheckArguments): CheckRun {
+  const startedAt = new Date();
+  const progress = new Progress();
+  const cache: TreeCache = new Map();
+  const models = modelFiles(paths, options.stdinName);
+  const checked = models.map((model, index) => {
+    progress.say(index, models.length, model.shown(model.path));
+    return checkOne(model, options, cache);
+  });
+  progress.end();
+  const { failOn, quiet = false, fingerprints = false } = options;
+  return asRun(checked, options, { failOn, startedAt, quiet, fingerprints });
 }
 
-function textReport(checked: readonly CheckedFile[], { quiet, failOn, color }: CheckArguments): string {
-  const paint = paintFor(color);
-  const shown = findingsOf(checked).filter(({ found }) => !quiet || atLeast(found.severity, failOn));
-  const blocks = shown.map(({ found, from }) => findingText(found, from, paint));
-  if (!quiet) blocks.push(summaryText(checked), ...moreText(shown));
-  return blocks.join("\n");
-}
-
-/** Where to read on about the gravest finding; notes speak for themselves. */
-function moreText(shown: ReturnType<typeof findingsOf>): string[] {
-  const [gravest] = (["error", "warning"] as const).flatMap((severity) =>
-    shown.filter(({ found }) => found.severity === severity),
-  );
-  return gravest === undefined ? [] : [`\`bondwright explain ${gravest.found.name}\` tells more.`];
+function outputsOf(given: readonly string[]): { form: ReportForm; file: string }[] {
+  const taken = new Set<string>();
+  return given.map((output) => {
+    const [, word, file] = /^([^=]*)=(.+)$/s.exec(output) ?? [];
+    const form = REPORT_FORMS.find((each) => each === word);
+    if (form === undefined || file === undefined)
+      throw new WrongUse(`--output ${output}: FORM=FILE is wanted, FORM one of ${REPORT_FORMS.join(", ")}.`);
+    if (taken.has(path.resolve(file))) throw new WrongUse(`--output ${file} is asked for twice.`);
+    taken.add(path.resolve(file));
+    return { form, file };
+  });
 }

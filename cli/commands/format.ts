@@ -1,20 +1,9 @@
-import {
-  chmodSync,
-  closeSync,
-  fsyncSync,
-  openSync,
-  realpathSync,
-  renameSync,
-  rmSync,
-  statSync,
-  writeFileSync,
-} from "node:fs";
-import path from "node:path";
 import { format as formatTree } from "../../grammar/syntax/format.ts";
 import { parse } from "../../grammar/syntax/parse.ts";
 import { modelFiles } from "../model-files.ts";
 import { findingText } from "../output/findings.ts";
 import { inert, paintFor, print, remark } from "../output/print.ts";
+import { writeWhole } from "../write-file.ts";
 import { WrongUse } from "../wrong-use.ts";
 
 export interface FormatArguments {
@@ -52,31 +41,9 @@ export function format(paths: readonly string[], options: FormatArguments): numb
       exitCode = 1;
     } else if (options.stdout || file.onDisk === null) process.stdout.write(text);
     else if (changed) {
-      replace(file.onDisk, text);
+      writeWhole(file.onDisk, text);
       print(`formatted ${name}`);
     }
   }
   return exitCode;
-}
-
-/** Writes beside the file and renames, so that nobody ever reads half of it; a link stays a link. */
-function replace(file: string, text: string): void {
-  const target = realpathSync(file);
-  const beside = path.join(path.dirname(target), `.${path.basename(target)}.${process.pid}.new`);
-  try {
-    const handle = openSync(beside, "wx");
-    try {
-      writeFileSync(handle, text);
-      fsyncSync(handle);
-    } finally {
-      closeSync(handle);
-    }
-    chmodSync(beside, statSync(target).mode);
-    renameSync(beside, target);
-  } catch (error) {
-    rmSync(beside, { force: true });
-    throw new WrongUse(
-      `${file} cannot be written: ${error instanceof Error ? error.message : String(error)}`,
-    );
-  }
 }

@@ -24,9 +24,26 @@ export function paintFor(choice: ColourChoice, stream: NodeJS.WriteStream = proc
 // biome-ignore lint/suspicious/noControlCharactersInRegex: control characters are what is looked for.
 const OBEYED = /[\u0000-\u0008\u000a-\u001f\u007f-\u009f\u2028\u2029\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
 
-/** Text of a model on one line: control and direction characters show as replacement characters, tabs as blanks. */
+/** What some build machines obey wherever it stands in a line: `##vso[`, `##[`, `##teamcity[` and their like. */
+const COMMAND = /##(?=[a-z]*\[)/gi;
+
+/**
+ * Text of a model on one line: control and direction characters show as replacement characters, tabs as blanks, and
+ * what begins a command for a build machine loses its second sign.
+ */
 export function inert(text: string): string {
-  return text.replace(OBEYED, "\ufffd").replaceAll("\t", " ");
+  return text.replace(OBEYED, "\ufffd").replaceAll("\t", " ").replace(COMMAND, "#\ufffd");
+}
+
+/** What JSON lets stand in a text though a terminal may obey it. */
+const OBEYED_IN_JSON = /[\u007f-\u009f\u2028\u2029\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
+
+/** JSON that means the same and holds nothing that a terminal or a build machine would obey. */
+export function inertJson(document: unknown): string {
+  const text = JSON.stringify(document, null, 2)
+    .replace(COMMAND, "#\\u0023")
+    .replace(OBEYED_IN_JSON, (sign) => `\\u${sign.charCodeAt(0).toString(16).padStart(4, "0")}`);
+  return `${text}\n`;
 }
 
 /** The report of a command, and the only thing that it may write to standard output. */
