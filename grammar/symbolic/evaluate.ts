@@ -80,5 +80,7 @@ export function holds(op: string, a: number, b: number): boolean {
 }
 
 export function applyFunction(fn: FunctionName, args: readonly number[]): number {
-  return fn === "ln" ? Math.log(args[0]) : Math[fn](args[0], args[1]);
+  // `min` and `max` take any number of values.
+  const call = (fn === "ln" ? Math.log : Math[fn]) as (...values: readonly number[]) => number;
+  return call(...args);
 }
