@@ -3,6 +3,8 @@ import type { CausalGraph } from "./causality/strokes.ts";
 import type { Finding } from "./diagnostics/finding.ts";
 import { deriveEquations } from "./equations/derive.ts";
 import type { StateModel } from "./equations/model.ts";
+import { passivityFindings } from "./equations/passivity.ts";
+import { reciprocityFindings } from "./equations/reciprocity.ts";
 import { judge } from "./expectations/judge.ts";
 import type { ExpectationResult } from "./expectations/result.ts";
 import type { FlatGraph } from "./resolve/graph.ts";
@@ -71,6 +73,7 @@ function derive(system: string, graph: FlatGraph | null, resolveFindings: readon
     const expectations = graph === null ? [] : judge(graph, null).results;
     return { system, graph, causal: null, model: null, findings: resolveFindings, expectations };
   }
+  const lawFindings = [...reciprocityFindings(graph), ...passivityFindings(graph)];
   const { causal, findings: causalFindings } = assignCausality(graph);
   const conflict = causalFindings.some(({ severity }) => severity === "error");
   const { model, findings: equationFindings } = conflict
@@ -82,7 +85,7 @@ function derive(system: string, graph: FlatGraph | null, resolveFindings: readon
     graph,
     causal,
     model,
-    findings: [...resolveFindings, ...causalFindings, ...equationFindings, ...judgedFindings],
+    findings: [...resolveFindings, ...lawFindings, ...causalFindings, ...equationFindings, ...judgedFindings],
     expectations: results,
   };
 }

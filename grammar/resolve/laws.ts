@@ -4,6 +4,7 @@ import { type DraftNode, spanOf } from "./draft.ts";
 import type { FlatLaw } from "./graph.ts";
 import { endOf, lawScope, type OwnVariable, ownVariable, type Variable } from "./law-scope.ts";
 import { linearLaw } from "./linear-law.ts";
+import { type MentionedVariable, mixedUse } from "./mixed-use.ts";
 import { finalBond, portNames } from "./port-variables.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
@@ -23,6 +24,8 @@ const JOINS: Readonly<Record<string, readonly Variable[]>> = {
   RS: ["e", "f"],
   C: ["e", "q"],
   I: ["f", "p"],
+  /** Of one port either e and q or f and p. */
+  IC: ["e", "f", "p", "q"],
 };
 
 /** The laws of an element in normal form; what is wrong with them is reported and left out. */
@@ -41,12 +44,16 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
     return ratio === null ? NONE : { laws: [ratio], modulated: translator.signal };
   }
   const laws: FlatLaw[] = [];
+  const mentioned: MentionedVariable[] = [];
   for (const law of declaration.laws) {
     used.length = 0;
     const flat = isEnergy(law)
       ? energyLaw(translator, node, law, scope, used)
       : relation(translator, node, law, scope, used);
     if (flat === null) continue;
+    mentioned.push(...used);
+    if (flat.kind === "relation")
+      mentioned.push({ port: portNames(node)?.[flat.port] ?? "", variable: flat.variable });
     if (laws.some((other) => portOf(other) === portOf(flat))) {
       translator.refuse(
         "law-form",
@@ -58,6 +65,8 @@ export function lawsOf(translator: Translator, node: DraftNode): Laws {
     laws.push(flat);
   }
   checkPorts(translator, node, laws, scope, declaration.laws.length);
+  const clash = node.type === "IC" ? mixedUse(mentioned) : null;
+  if (clash !== null) translator.refuse("law-form", declaration.range, scope, clash);
   return { laws, modulated: checkStore(translator, node, scope) };
 }
 
@@ -274,7 +283,7 @@ function formOf(node: DraftNode): string {
     case "I":
       return "an inertia relates `f` and `p`, as in `f = p/m`";
     case "IC":
-      return "an IC is written `energy = …` in the p and q of its ports";
+      return "an IC is written `energy = …` in the p and q of its ports, or with a law for each port that relates `e` and `q` or `f` and `p`";
     default:
       return "a resistor relates `e` and `f`, as in `e = R*f`";
   }
