@@ -1,5 +1,5 @@
 import type { Answers, Question } from "./core-questions.ts";
-import type { NameAnswer } from "./names/rename.ts";
+import type { NameAnswer, NameQuestion } from "./names/rename.ts";
 import type { FileView, Variables } from "./view-model.ts";
 
 /** What the page asks of the core's worker. `number` grows with every request: an older answer is dropped. */
@@ -15,15 +15,7 @@ export type CoreRequest =
       readonly changed: readonly (readonly [path: string, text: string | null])[];
     }
   | { readonly kind: "format"; readonly number: number; readonly path: string; readonly text: string }
-  | {
-      readonly kind: "names";
-      readonly number: number;
-      readonly path: string;
-      readonly text: string;
-      readonly offset: number;
-      /** The new name; null asks only where the name is written. */
-      readonly wanted: string | null;
-    }
+  | ({ readonly kind: "names"; readonly number: number } & NameQuestion)
   | { readonly kind: "ask"; readonly number: number; readonly path: string; readonly question: Question };
 
 export type CoreAnswer =

@@ -1,7 +1,7 @@
 import coreWorkerUrl from "./core.worker.ts?worker&url";
 import type { CoreAnswer, CoreRequest } from "./core-messages.ts";
 import type { AnswerTo, Question } from "./core-questions.ts";
-import type { NameAnswer } from "./names/rename.ts";
+import type { NameAnswer, NameQuestion } from "./names/rename.ts";
 import type { FileView, Variables } from "./view-model.ts";
 import { workerAddress } from "./worker-address.ts";
 
@@ -51,8 +51,8 @@ export class Core {
     return answer?.kind === "formatted" ? answer.text : null;
   }
 
-  async names(path: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer> {
-    const answer = await this.#request((number) => ({ kind: "names", number, path, text, offset, wanted }));
+  async names(question: NameQuestion): Promise<NameAnswer> {
+    const answer = await this.#request((number) => ({ kind: "names", number, ...question }));
     return answer?.kind === "named" ? answer.answer : { refusal: "The core could not read this text." };
   }
 

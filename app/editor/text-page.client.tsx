@@ -176,7 +176,7 @@ function openEditor(host: HTMLDivElement, current: { readonly current: TextPageP
     registerServices({
       view: () => current.current.view,
       format: (path, text) => current.current.format(path, text),
-      names: (...of) => current.current.names(...of),
+      names: (question) => current.current.names(question),
     }),
     editor.onDidChangeModelContent(() => {
       const model = editor.getModel();

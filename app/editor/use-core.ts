@@ -1,7 +1,7 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { Core } from "./core.client.ts";
 import type { AnswerTo, Question } from "./core-questions.ts";
-import type { NameAnswer } from "./names/rename.ts";
+import type { NameAnswer, NameQuestion } from "./names/rename.ts";
 import type { FileView, SystemView, Variables } from "./view-model.ts";
 import type { Texts } from "./workspace.ts";
 
@@ -48,9 +48,8 @@ export function useCore(texts: Texts, path: string, wanted: string | null, varia
     [],
   );
   const names = useCallback(
-    (file: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer> =>
-      core.current?.names(file, text, offset, wanted) ??
-      Promise.resolve({ refusal: "The core is not running." }),
+    (question: NameQuestion): Promise<NameAnswer> =>
+      core.current?.names(question) ?? Promise.resolve({ refusal: "The core is not running." }),
     [],
   );
   const ask = useCallback(

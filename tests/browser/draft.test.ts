@@ -61,3 +61,33 @@ test("a draft outlives the session, and is gone once it is saved", async () => {
   await page.locator(".view-line", { hasText: "effective drum radius" }).waitFor();
   await page.context().close();
 });
+
+test("two tabs on one file keep a draft each, tell of each other, and neither is lost", async () => {
+  const first = await seat(browser, server.origin);
+  await open(first, HOIST);
+  const second = await first.context().newPage();
+  await open(second, HOIST);
+  await goBefore(first, "boat with crew");
+  await first.keyboard.type("full ");
+  await first.getByText("1 file unsaved").waitFor();
+  await goBefore(second, "boat with crew");
+  await second.keyboard.type("empty ");
+  await second.getByText("1 file unsaved").waitFor();
+  await first.getByText(/Another tab/).waitFor();
+  await first.close();
+  await second.close();
+
+  const later = await second.context().newPage();
+  await open(later, HOIST);
+  await later.locator(".view-line", { hasText: "empty boat with crew" }).waitFor();
+  await later.getByText(/A different unsaved text/).waitFor();
+  await later.getByRole("button", { name: "Show it instead" }).click();
+  await later.locator(".view-line", { hasText: "full boat with crew" }).waitFor();
+  await later.getByRole("button", { name: "Throw it away" }).click();
+  await later.getByRole("button", { name: "Discard it" }).click();
+  await later.getByText("All saved.").waitFor();
+  await later.reload();
+  await later.getByText("All saved.").waitFor();
+  expect(await later.getByText(/unsaved text/i).count()).toBe(0);
+  await later.context().close();
+});

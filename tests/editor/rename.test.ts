@@ -47,7 +47,7 @@ function renamed(file: string, mark: string, wanted: string, hoist = HOIST): str
   ]);
   const text = files.get(file)?.text ?? "";
   const offset = text.indexOf(mark.replace("|", "")) + mark.indexOf("|");
-  const answer = namesAt(files, new Map(), { path: file, text, offset, wanted });
+  const answer = namesAt(files, new Map(), { path: file, text, offset, renaming: true, wanted });
   if ("refusal" in answer) return answer.refusal;
   const lines = text.split("\n");
   for (const { line, column, endColumn } of [...answer.places].sort((a, b) => b.column - a.column))

@@ -11,16 +11,25 @@ export type NameAnswer =
   | { readonly places: readonly Place[]; readonly name: string }
   | { readonly refusal: string };
 
+export interface NameQuestion {
+  readonly path: string;
+  /** As it stands in the editor, which may be newer than what was checked last. */
+  readonly text: string;
+  readonly offset: number;
+  readonly renaming: boolean;
+  readonly wanted: string | null;
+}
+
 const NAME = /^[\p{L}_][\p{L}\p{N}_]*$/u;
 
 /**
- * Where the name at `offset` is written, and, with `wanted`, whether it may be written so instead. A rename stays
- * within one file: where others use the name, or could be meant by it, it is refused.
+ * Where the name at `offset` is written; with `renaming`, only if all of it may be renamed, and with `wanted` to that.
+ * A rename stays within one file: where others use the name, or could be meant by it, it is refused.
  */
 export function namesAt(
   files: FileSet,
   trees: TreeCache,
-  { path, text, offset, wanted }: { path: string; text: string; offset: number; wanted: string | null },
+  { path, text, offset, renaming, wanted }: NameQuestion,
 ): NameAnswer {
   const known = files.get(path);
   const source = known?.text === text ? known : new SourceText(path, text);
@@ -30,7 +39,7 @@ export function namesAt(
       file.endsWith(".wright") ? [[file, trees.get(one) ?? parse(one)] as const] : [],
     ),
   );
-  if ((parsed.get(path)?.findings.length ?? 0) > 0 && wanted !== null)
+  if ((parsed.get(path)?.findings.length ?? 0) > 0 && renaming)
     return {
       refusal: "Mend the syntax of this file first: a name in a line that cannot be read would stay.",
     };
@@ -48,9 +57,10 @@ export function namesAt(
   const places = [...new Map(own.filter(means).map((one) => [one.range.start, one])).values()].map(
     ({ range }) => placeOf({ file: path, ...range }, set),
   );
-  if (wanted === null) return { places, name: asked.name };
+  if (!renaming) return { places, name: asked.name };
 
-  const refusal = refusedName(wanted, asked, own) ?? undeclared(asked, group, own.filter(means));
+  const badName = wanted === null ? null : refusedName(wanted, asked, own);
+  const refusal = badName ?? undeclared(asked, group, own.filter(means));
   if (refusal !== null) return { refusal };
   for (const file of readable.keys()) {
     if (file === path) continue;

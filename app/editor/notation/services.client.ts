@@ -1,15 +1,16 @@
 import { holderAt } from "../holder.ts";
 import { monaco } from "../monaco.client.ts";
-import type { NameAnswer } from "../names/rename.ts";
+import type { NameAnswer, NameQuestion } from "../names/rename.ts";
 import type { FileView, OutlineEntry, Place } from "../view-model.ts";
 import { suggestionsAt } from "./completion.ts";
 import { NOTATION } from "./language-id.ts";
+import { nameServices } from "./names.client.ts";
 
 /** What the services ask of the page that holds the editor. */
 export interface ServiceSource {
   view(): FileView | null;
   format(path: string, text: string): Promise<string | null>;
-  names(path: string, text: string, offset: number, wanted: string | null): Promise<NameAnswer>;
+  names(question: NameQuestion): Promise<NameAnswer>;
 }
 
 export function uriOf(path: string): monaco.Uri {
@@ -124,50 +125,6 @@ function entryAt(
     ({ place }) => place.line === position.lineNumber && place.column === word.startColumn,
   );
   return declared ?? meant.find(({ space }) => (space === "node") === node) ?? meant[0] ?? null;
-}
-
-/** Rename, and all places of a name: out of the tree of the very text that stands in the editor. */
-function nameServices(source: ServiceSource): monaco.IDisposable[] {
-  const ask = (model: monaco.editor.ITextModel, position: monaco.Position, wanted: string | null) =>
-    source.names(pathOf(model.uri), model.getValue(), model.getOffsetAt(position), wanted);
-  return [
-    monaco.languages.registerReferenceProvider(NOTATION, {
-      async provideReferences(model, position) {
-        const answer = await ask(model, position, null);
-        if ("refusal" in answer) return [];
-        return answer.places.map((place) => ({ uri: model.uri, range: rangeOf(place) }));
-      },
-    }),
-    monaco.languages.registerRenameProvider(NOTATION, {
-      async resolveRenameLocation(model, position) {
-        const answer = await ask(model, position, null);
-        const place =
-          "places" in answer
-            ? answer.places.find((one) => monaco.Range.containsPosition(rangeOf(one), position))
-            : undefined;
-        if ("refusal" in answer || place === undefined) {
-          const rejectReason = "refusal" in answer ? plain(answer.refusal) : "There is no name here.";
-          return { range: monaco.Range.fromPositions(position), text: "", rejectReason };
-        }
-        return { range: rangeOf(place), text: answer.name };
-      },
-      async provideRenameEdits(model, position, wanted) {
-        const answer = await ask(model, position, wanted);
-        if ("refusal" in answer) return { edits: [], rejectReason: plain(answer.refusal) };
-        return {
-          edits: answer.places.map((place) => ({
-            resource: model.uri,
-            versionId: model.getVersionId(),
-            textEdit: { range: rangeOf(place), text: wanted },
-          })),
-        };
-      },
-    }),
-  ];
-}
-
-function plain(sentence: string): string {
-  return sentence.replaceAll("`", "");
 }
 
 /** What a name was declared as. */
