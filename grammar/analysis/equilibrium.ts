@@ -1,9 +1,7 @@
 import type { StateModel } from "../equations/model.ts";
 import type { Expr } from "../symbolic/expression.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
-import { multiply as multiplied } from "../units/dimension.ts";
-import type { Dimension } from "../units/unit.ts";
-import { quantityText, unitOf } from "../units/unit-text.ts";
+import { quantityText } from "../units/unit-text.ts";
 import { balance } from "./balance.ts";
 import { norm, type Rows, solve } from "./dense.ts";
 import { type Evaluated, evaluateModel } from "./evaluate-model.ts";
@@ -11,6 +9,7 @@ import { stateSlopesAt } from "./linearise.ts";
 import { small } from "./newton.ts";
 import { conserved, newtonSteps } from "./newton-step.ts";
 import { type Point, startPoint } from "./point.ts";
+import { rateUnit } from "./rate-unit.ts";
 import { movingStates } from "./recording-tracks.ts";
 import { slopesOf } from "./slopes.ts";
 import { unknownsOf } from "./unknowns.ts";
@@ -219,7 +218,7 @@ class Search {
     if (Math.abs(driven) <= 1e-9 * sizes.reduce((sum, part) => sum + part, 0)) return null;
     const most = greatest(rates.map((rate, i) => share(i, rate)));
     const state = states[this.#moving[most]];
-    const unit = unitOf(multiplied(state.unit.dimension, PER_SECOND));
+    const unit = rateUnit(this.#model, state);
     return `Nothing brings the rate of \`${state.name}\` to zero: it stays ${quantityText(rates[most], unit)}.`;
   }
 
@@ -238,8 +237,6 @@ class Search {
     return `The equations conserve a total of \`${name}\`, and nothing rests at the one that the start values give.`;
   }
 }
-
-const PER_SECOND: Dimension = [0, 0, -1, 0, 0, 0, 0];
 
 function greatest(values: readonly number[]): number {
   return values.reduce((best, value, i) => (Math.abs(value) > Math.abs(values[best]) ? i : best), 0);

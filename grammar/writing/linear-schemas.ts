@@ -27,7 +27,7 @@ export const LinearDocument = z.strictObject({
   E: Matrix.optional().describe("Where inputs are differentiated: x' = A x + B u + E u'"),
   G: Matrix.optional().describe("Where inputs are differentiated: y = C x + D u + G u'"),
   symbolic: z
-    .record(z.enum(["A", "B", "C", "D", "E", "G"]), z.array(z.array(ExpressionText)))
+    .partialRecord(z.enum(["A", "B", "C", "D", "E", "G"]), z.array(z.array(ExpressionText)))
     .nullable()
     .describe("The same as expressions; null where loops or coupled rates are solved numerically"),
   eigenvalues: z

@@ -133,7 +133,7 @@ function transferRows(linear: LinearModel): string[][] {
       ];
     }),
   );
-  return [["", "gain", "zeros, 1/s", "poles, 1/s", "bandwidth, Hz"], ...rows];
+  return rows.length === 0 ? [] : [["", "gain", "zeros, 1/s", "poles, 1/s", "bandwidth, Hz"], ...rows];
 }
 
 function rootsText(roots: readonly Complex[]): string {
