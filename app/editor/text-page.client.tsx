@@ -1,7 +1,8 @@
 import { type Ref, useEffect, useImperativeHandle, useRef } from "react";
 import { monaco } from "./monaco.client.ts";
 import { NOTATION } from "./notation/language-id.ts";
-import { pathOf, rangeOf, registerServices, type ServiceSource, uriOf } from "./notation/services.client.ts";
+import { pathOf, rangeOf, uriOf } from "./notation/positions.client.ts";
+import { registerServices, type ServiceSource } from "./notation/services.client.ts";
 import type { FileView, FindingView, Place } from "./view-model.ts";
 
 export interface TextPageHandle {

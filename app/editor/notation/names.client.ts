@@ -1,7 +1,8 @@
 import { monaco } from "../monaco.client.ts";
 import type { NameQuestion } from "../names/rename.ts";
 import { NOTATION } from "./language-id.ts";
-import { pathOf, rangeOf, type ServiceSource } from "./services.client.ts";
+import { pathOf, rangeOf } from "./positions.client.ts";
+import type { ServiceSource } from "./services.client.ts";
 
 /** Rename, and all places of a name: out of the tree of the very text that stands in the editor. */
 export function nameServices(source: ServiceSource): monaco.IDisposable[] {

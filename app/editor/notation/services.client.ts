@@ -1,33 +1,17 @@
 import { holderAt } from "../holder.ts";
 import { monaco } from "../monaco.client.ts";
 import type { NameAnswer, NameQuestion } from "../names/rename.ts";
-import type { FileView, OutlineEntry, Place } from "../view-model.ts";
+import type { FileView, OutlineEntry } from "../view-model.ts";
 import { suggestionsAt } from "./completion.ts";
 import { NOTATION } from "./language-id.ts";
 import { nameServices } from "./names.client.ts";
+import { pathOf, rangeOf, uriOf } from "./positions.client.ts";
 
 /** What the services ask of the page that holds the editor. */
 export interface ServiceSource {
   view(): FileView | null;
   format(path: string, text: string): Promise<string | null>;
   names(question: NameQuestion): Promise<NameAnswer>;
-}
-
-export function uriOf(path: string): monaco.Uri {
-  return monaco.Uri.from({ scheme: "set", path: `/${path}` });
-}
-
-export function pathOf(uri: monaco.Uri): string {
-  return uri.path.slice(1);
-}
-
-export function rangeOf(place: Place): monaco.IRange {
-  return {
-    startLineNumber: place.line,
-    startColumn: place.column,
-    endLineNumber: place.endLine,
-    endColumn: place.endColumn,
-  };
 }
 
 type Provided<T> = T | null | undefined;

@@ -125,6 +125,11 @@ function Results(props: WhatFollowsProps & { system: NonNullable<CoreState["syst
     <>
       {system.diagram !== null && <DiagramPart diagram={system.diagram} onOpen={props.onOpenSpan} />}
       <Expectations expectations={system.expectations} />
+      {system.diagram === null && model === null && (
+        <p className="note border-t border-rule py-2">
+          The errors leave no graph of {system.name} to draw, and no equations to derive.
+        </p>
+      )}
       {core.stale && (
         <p className="stale-note" role="status">
           Equations, states and outputs are from the last text without errors.
