@@ -9,6 +9,7 @@ const READ_AT_MOST = 4 * 1024 * 1024;
 /** A model set on disk: a file is read when it is first asked for, by its path from the root, and none outside it. */
 export class DiskFiles extends Map<string, SourceText> {
   readonly root: string;
+  #asked: Set<string> | null = null;
 
   constructor(root: string) {
     super();
@@ -16,6 +17,7 @@ export class DiskFiles extends Map<string, SourceText> {
   }
 
   override get(name: string): SourceText | undefined {
+    this.#asked?.add(name);
     const known = super.get(name);
     if (known !== undefined || !isInside(name)) return known;
     const text = readText(path.join(this.root, name));
@@ -26,7 +28,28 @@ export class DiskFiles extends Map<string, SourceText> {
   }
 
   override has(name: string): boolean {
+    this.#asked?.add(name);
     return super.has(name) || (isInside(name) && isFile(path.join(this.root, name)));
+  }
+
+  /** What was read of a file so far. */
+  read(name: string): SourceText | undefined {
+    return super.get(name);
+  }
+
+  /** Does some work, and tells which files it asked for, by their paths on disk; those that are not there too. */
+  asked<T>(work: () => T): { readonly result: T; readonly asked: ReadonlySet<string> } {
+    const names = new Set<string>();
+    this.#asked = names;
+    try {
+      const result = work();
+      return {
+        result,
+        asked: new Set([...names].filter(isInside).map((name) => path.join(this.root, name))),
+      };
+    } finally {
+      this.#asked = null;
+    }
   }
 }
 

@@ -53,6 +53,7 @@ program
   .option("--system <name>", "only this system")
   .option("--trial <name>", "only this trial and its system")
   .option("--quiet", "print only what fails")
+  .option("--watch", "check again whenever a file changes, until interrupted")
   .option("--fingerprints", "print what a finding is known by in the set's settings")
   .addOption(color())
   .addOption(stdinName())

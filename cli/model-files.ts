@@ -71,6 +71,14 @@ function standardInput(name: string, sets: Map<string, DiskFiles>): ModelFile {
   return model;
 }
 
+/** The folder with all that are looked into below it. */
+export function foldersBelow(folder: string): string[] {
+  const inside = readdirSync(folder, { withFileTypes: true })
+    .filter((entry) => entry.isDirectory() && !isPassedOver(entry.name))
+    .flatMap(({ name }) => foldersBelow(path.join(folder, name)));
+  return [folder, ...inside];
+}
+
 /** In natural order. */
 function wrightFiles(folder: string): string[] {
   const entries = readdirSync(folder, { withFileTypes: true }).sort((a, b) => compareNames(a.name, b.name));

@@ -1,7 +1,7 @@
 import path from "node:path";
 import type { Severity } from "../../grammar/diagnostics/finding.ts";
 import type { TreeCache } from "../../grammar/pipeline.ts";
-import { asRun, type CheckRun, checkOne } from "../check-run.ts";
+import { asRun, type CheckedOnDisk, checkOne } from "../check-run.ts";
 import { modelFiles } from "../model-files.ts";
 import { REPORT_FORMS, type ReportForm } from "../output/forms.ts";
 import { type ColourChoice, paintFor, print } from "../output/print.ts";
@@ -19,22 +19,15 @@ export interface CheckArguments {
   readonly trial?: string;
   readonly quiet?: boolean;
   readonly fingerprints?: boolean;
+  readonly watch?: boolean;
   readonly color: ColourChoice;
   readonly stdinName: string;
 }
 
 /** Checks files and prints what was found. Returns the exit code: 0 clean, 1 findings or failed requirements. */
 export async function check(paths: readonly string[], options: CheckArguments): Promise<number> {
-  const outputs = outputsOf(options.output);
-  const run = checkRun(paths, options);
-  // Before anything is printed: what can't be written is no check that somebody may rely on.
-  for (const { form, file } of outputs) writeWhole(file, await reportText(run, form, paintFor("never")));
-  const text = await reportText(run, options.format, paintFor(options.color));
-  if (text !== "") print(text);
-  return run.passed ? 0 : 1;
-}
-
-function checkRun(paths: readonly string[], options: CheckArguments): CheckRun {
+  outputsOf(options.output);
+  if (options.watch) return (await import("./watch.ts")).watch(paths, options);
   const startedAt = new Date();
   const progress = new Progress();
   const cache: TreeCache = new Map();
@@ -44,8 +37,24 @@ function checkRun(paths: readonly string[], options: CheckArguments): CheckRun {
     return checkOne(model, options, cache);
   });
   progress.end();
+  return reportRun(checked, startedAt, options);
+}
+
+/** Writes and prints the reports that are asked for. */
+export async function reportRun(
+  checked: readonly CheckedOnDisk[],
+  startedAt: Date,
+  options: CheckArguments,
+): Promise<number> {
   const { failOn, quiet = false, fingerprints = false } = options;
-  return asRun(checked, options, { failOn, startedAt, quiet, fingerprints });
+  const run = asRun(checked, options, { failOn, startedAt, quiet, fingerprints });
+  // Before anything is printed: what can't be written is no check that somebody may rely on.
+  for (const { form, file } of outputsOf(options.output)) {
+    writeWhole(file, await reportText(run, form, paintFor("never")));
+  }
+  const text = await reportText(run, options.format, paintFor(options.color));
+  if (text !== "") print(text);
+  return run.passed ? 0 : 1;
 }
 
 function outputsOf(given: readonly string[]): { form: ReportForm; file: string }[] {

@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import path from "node:path";
 import { fileURLToPath } from "node:url";
 
-const BUILT = fileURLToPath(new URL("../../build/cli/bondwright.mjs", import.meta.url));
+export const BUILT = fileURLToPath(new URL("../../build/cli/bondwright.mjs", import.meta.url));
 
 export interface Outcome {
   readonly code: number | null;
