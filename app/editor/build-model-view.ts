@@ -55,6 +55,7 @@ export function modelView(
             store: derived.equations[i].state,
           }))
         : implicitRows(graph, model).map((row, i) => ({ ...row, store: derived.states[i].name })),
+    coupled: model.implicit !== null,
     dependent: model.dependent.map(
       (store): DependentView => ({
         name: store.name,
@@ -125,6 +126,7 @@ function equation(
   return {
     state,
     store: null,
+    leftTerms: null,
     left: formula(left.text, left.latex),
     leftLatex: left.latex,
     ...written(right),
@@ -163,20 +165,36 @@ function together(lights: readonly Light[]): Light {
   };
 }
 
-/** Where the rates stay coupled: one row of M(x)·ẋ = h(x, u, t) an equation. */
+/** Where the rates stay coupled: one row of M(x)·ẋ = h(x, u, t) an equation, its left side term by term. */
 function implicitRows(graph: FlatGraph, model: StateModel): EquationView[] {
   if (model.implicit === null) return [];
   const { mass, right } = model.implicit;
   return right.map((side, row) => {
     const left = mass[row].flatMap((factor, column) => {
-      if (factor.op === "number" && factor.value === 0) return [];
-      const rate = rateOf(model.states[column].name);
-      if (factor.op === "number" && factor.value === 1) return [rate];
-      const { text, latex } = written(factor);
-      return [{ text: `(${text})*${rate.text}`, latex: `\\left(${latex}\\right)\\,${rate.latex}` }];
+      const isZero = factor.op === "number" && factor.value === 0;
+      return isZero ? [] : [coupledTerm(factor, rateOf(model.states[column].name))];
     });
-    const sum = (of: (part: Written) => string) => left.map(of).join(" + ");
-    const both = { text: sum(({ text }) => text), latex: sum(({ latex }) => latex) };
-    return equation(graph, model, model.states[row].name, side, both);
+    const sum = (of: "text" | "latex") =>
+      left.map(({ sign, ...term }, i) => `${i === 0 && sign === "+" ? "" : `${sign} `}${term[of]}`).join(" ");
+    const both = { text: sum("text"), latex: sum("latex") };
+    return {
+      ...equation(graph, model, model.states[row].name, side, both),
+      leftTerms: left.map(({ sign, text, latex }) => ({ sign, formula: formula(text, latex) })),
+    };
   });
+}
+
+/** A factor times a rate, with its sign before it. */
+function coupledTerm(factor: Expr, rate: Written): Written & { readonly sign: "+" | "-" } {
+  if (factor.op === "number" && factor.value === 1) return { sign: "+", ...rate };
+  const terms = termsOf(factor);
+  const { text, latex } = written(factor);
+  if (terms.length > 1)
+    return { sign: "+", text: `(${text})*${rate.text}`, latex: `\\left(${latex}\\right)\\,${rate.latex}` };
+  const bare = (signed: string) => (terms[0].negative ? signed.replace(/^-\s*/, "") : signed);
+  return {
+    sign: terms[0].negative ? "-" : "+",
+    text: `${bare(text)}*${rate.text}`,
+    latex: `${bare(latex)}\\,${rate.latex}`,
+  };
 }

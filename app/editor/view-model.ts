@@ -35,6 +35,8 @@ export interface ModelView {
   readonly states: readonly StateView[];
   /** One a state; where the rates stay coupled, one a row of M(x)·ẋ = h(x, u, t). */
   readonly equations: readonly EquationView[];
+  /** The rates stand in M(x)·ẋ = h(x, u, t) and are solved for at each step. */
+  readonly coupled: boolean;
   readonly dependent: readonly DependentView[];
   readonly loops: readonly LoopView[];
   readonly outputs: readonly OutputView[];
@@ -61,16 +63,20 @@ export interface EquationView extends Light {
   readonly store: string | null;
   readonly left: Formula;
   readonly leftLatex: string;
+  /** The left side by its terms where the rates stay coupled; null where it is one rate or name. */
+  readonly leftTerms: readonly SignedFormula[] | null;
   readonly text: string;
   readonly latex: string;
   readonly terms: readonly TermView[];
 }
 
-export interface TermView extends Light {
+export interface SignedFormula {
   readonly sign: "+" | "-";
   /** Without its sign. */
   readonly formula: Formula;
 }
+
+export interface TermView extends SignedFormula, Light {}
 
 export interface DependentView extends Light {
   readonly name: string;

@@ -36,6 +36,11 @@ export function Equations({ model, onVariables }: EquationsProps) {
         <p className="note">No stores: the outputs below are functions of the inputs alone.</p>
       ) : (
         <ol className="equations">
+          {model.coupled && (
+            <li className="note pb-1">
+              The rates stay coupled, M(x)·ẋ = h(x, u, t): they are solved for at each step.
+            </li>
+          )}
           {shown.map((equation) => (
             <Equation key={equation.state} equation={equation} />
           ))}
@@ -83,9 +88,24 @@ export function Equation({ equation, unit }: { equation: EquationView; unit?: st
   const key = equation.left.text;
   const lit = useLitEquation(key, equation);
   return (
-    <li className="equation" data-tied="" data-lit={lit} data-text={`${key} = ${equation.text}`}>
+    <li
+      className="equation"
+      data-tied=""
+      data-lit={lit}
+      data-coupled={equation.leftTerms !== null}
+      data-text={`${key} = ${equation.text}`}
+    >
       <span className="left">
-        <Typeset formula={equation.left} />
+        {equation.leftTerms === null ? (
+          <Typeset formula={equation.left} />
+        ) : (
+          equation.leftTerms.map(({ sign, formula }, index) => (
+            <span key={formula.text} className="whitespace-nowrap">
+              {(index > 0 || sign === "-") && <span className="sign">{sign === "-" ? "−" : "+"}</span>}
+              <Typeset formula={formula} />
+            </span>
+          ))
+        )}
         <span className="sign" aria-hidden="true">
           =
         </span>
