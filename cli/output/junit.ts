@@ -36,7 +36,9 @@ function stoppingByFile(run: CheckRun): Map<CheckedOnDisk, Located[]> {
   for (const { found, from } of findingsOf(run.checked) as Located[]) {
     if (!stops(found, run) || found.name === "expectation-failed") continue;
     const owner = owners.get(from.shown(found.span.file)) ?? from;
-    grouped.set(owner, [...(grouped.get(owner) ?? []), { found, from }]);
+    const own = grouped.get(owner) ?? [];
+    grouped.set(owner, own);
+    own.push({ found, from });
   }
   return grouped;
 }
