@@ -29,7 +29,7 @@ function inUtc(at: string): string {
 
 const pad = (part: number) => String(part).padStart(2, "0");
 
-export function inReadersZone(at: string): string {
+function inReadersZone(at: string): string {
   const moment = new Date(at);
   const day = `${moment.getFullYear()}-${pad(moment.getMonth() + 1)}-${pad(moment.getDate())}`;
   return `${day} ${pad(moment.getHours())}:${pad(moment.getMinutes())}`;

@@ -1,6 +1,6 @@
 import type { Severity } from "../../grammar/diagnostics/finding.ts";
 
-export const SIGNS = { error: "✕", warning: "△", note: "○" } as const;
+const SIGNS = { error: "✕", warning: "△", note: "○" } as const;
 const INK = { error: "text-mistake", warning: "text-warning", note: "text-faded" } as const;
 
 /** How grave a finding is: said by word, sign and ink. */

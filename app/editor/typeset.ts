@@ -6,7 +6,7 @@ const typeset = new Map<string, string>();
 const KEPT = 5_000;
 
 /** HTML for the eye with MathML for those who listen. The LaTeX is our own writer's; nothing in it is trusted. */
-export function typesetLatex(latex: string): string {
+function typesetLatex(latex: string): string {
   const known = typeset.get(latex);
   if (known !== undefined) return known;
   if (typeset.size >= KEPT) typeset.clear();
