@@ -10,6 +10,8 @@ import type { Expr } from "../../grammar/symbolic/expression.ts";
 import { expressionLatex } from "../../grammar/writing/latex.ts";
 import { expressionText } from "../../grammar/writing/text.ts";
 import type { BondView, DerivationView, StepView, VariableView } from "./audit-view.ts";
+import type { BehaviourView } from "./behaviour-view.ts";
+import { behaviourView } from "./build-behaviour.ts";
 import type { Question } from "./core-questions.ts";
 import { placeOf } from "./place.ts";
 import { formula } from "./typeset.ts";
@@ -19,9 +21,10 @@ export function answerTo(
   question: Question,
   report: FileReport,
   files: FileSet,
-): DerivationView | BondView | null {
+): DerivationView | BondView | BehaviourView | null {
   const system = report.systems.find((one) => one.system === question.system);
   if (system?.graph == null) return null;
+  if (question.about === "behaviour") return system.model && behaviourView(system.model);
   return question.about === "derivation"
     ? system.model && derivationView(system.graph, system.model, question.store, files)
     : bondView(system.graph, system.causal, system.model, question.bond, files);

@@ -84,7 +84,7 @@ export function complexText({ re, im }: Complex, pair: boolean): string {
 }
 
 /** The greatest shares, till nine tenths are told. */
-function sharesText({ participation }: Mode, { states, moving }: LinearModel): string {
+export function sharesText({ participation }: Mode, { states, moving }: LinearModel): string {
   if (participation === null) return "modes coincide";
   const order = participation.map((share, i) => ({ share, name: states[moving[i]].name }));
   order.sort((a, b) => b.share - a.share);

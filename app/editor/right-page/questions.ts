@@ -18,8 +18,11 @@ export const QuestionsContext = createContext<Questions>({
   ask: () => Promise.resolve(null),
 });
 
-/** The core's answer; undefined until the first one has come. While a newer one is worked out the last one stays. */
-export function useAnswer<Q extends Question>(question: Q | null): AnswerTo<Q> | undefined {
+/**
+ * The core's answer; undefined until the first one has come. While a newer one is worked out the last one stays. What
+ * takes long to answer is asked only after the text has rested for `delay` milliseconds.
+ */
+export function useAnswer<Q extends Question>(question: Q | null, delay = 0): AnswerTo<Q> | undefined {
   const { ask, text } = useContext(QuestionsContext);
   const key = question === null ? null : JSON.stringify(question);
   const [known, setKnown] = useState<{ readonly key: string; readonly answer: AnswerTo<Q> } | null>(null);
@@ -27,11 +30,15 @@ export function useAnswer<Q extends Question>(question: Q | null): AnswerTo<Q> |
   useEffect(() => {
     if (question === null || key === null) return;
     let overtaken = false;
-    void ask(question).then((answer) => {
-      if (!overtaken) setKnown({ key, answer });
-    });
+    const asking = () =>
+      void ask(question).then((answer) => {
+        if (!overtaken) setKnown({ key, answer });
+      });
+    const waiting = delay === 0 ? undefined : setTimeout(asking, delay);
+    if (delay === 0) asking();
     return () => {
       overtaken = true;
+      clearTimeout(waiting);
     };
   }, [ask, key, text]);
   return known !== null && known.key === key ? known.answer : undefined;

@@ -2,6 +2,7 @@ import { type Ref, useMemo } from "react";
 import type { CoreState, useCore } from "../use-core.ts";
 import type { FindingView, Variables } from "../view-model.ts";
 import "./right-page.css";
+import { Behaviour } from "./behaviour.tsx";
 import { DiagramPart } from "./diagram-part.tsx";
 import { Equations, Loops } from "./equations.tsx";
 import { Findings } from "./findings.tsx";
@@ -81,7 +82,7 @@ function Title({
     "Findings",
     "Diagram",
     ...(system.expectations.length > 0 ? ["Expectations"] : []),
-    ...(system.model !== null ? ["Equations", "States", "Outputs"] : []),
+    ...(system.model !== null ? ["Equations", "States", "Outputs", "Behaviour"] : []),
     "Parameters",
   ];
   return (
@@ -142,6 +143,7 @@ function Results(props: WhatFollowsProps & { system: NonNullable<CoreState["syst
           <DependentStores stores={model.dependent} />
           <Loops loops={model.loops} />
           <Outputs outputs={model.outputs} />
+          <Behaviour system={system.name} />
         </div>
       )}
       <Inputs inputs={system.inputs} />
