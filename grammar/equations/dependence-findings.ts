@@ -4,9 +4,10 @@ import { compareNames } from "../symbolic/names.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import type { Dependence } from "./dependence.ts";
+import { settledBy } from "./dependence.ts";
 import { listed } from "./listed.ts";
 import type { AlgebraicLoop } from "./model.ts";
-import { followable, type SolvedRates } from "./rates.ts";
+import type { SolvedRates } from "./rates.ts";
 
 /** How far back along its causal path a dependence is followed for the facts of a finding. */
 const PATH_LIMIT = 60;
@@ -35,7 +36,7 @@ export function inputRateFinding(assignments: Assignments, store: Store, value: 
   const { span, name } = assignments.causal.graph.nodes[store.node];
   const message =
     `\`${name}\` is tied to the input${inputs.length > 1 ? "s" : ""} ${listed(inputs)} with nothing between, ` +
-    "so the equations need the rate of that input: a step of it asks for infinite power.";
+    `so the equations need the rate of ${inputs.length > 1 ? "these inputs: a step of one" : "that input: a step of it"} asks for infinite power.`;
   return finding("input-derivative", span, message, { facts: pathFacts(assignments, store) });
 }
 
@@ -48,15 +49,17 @@ export function refusedRates(
 ): Finding[] {
   const { nodes } = assignments.causal.graph;
   const findings: Finding[] = [];
-  const moving = new Set(loops.filter(followable).map(({ variables }) => variables[0].symbol.name));
   for (const { store, value } of dependence.followers) {
-    const unknown = named([...symbolsOf(value)], "unknown").filter((name) => !moving.has(name));
+    const unknown = named(
+      [...settledBy(value, loops)].filter((symbol) => solved.stuck.has(symbol)),
+      "unknown",
+    );
     if (unknown.length === 0) continue;
     const message =
-      `\`${store.name}\` follows from ${listed(unknown)}, which only a numerical solution gives; ` +
-      "its rate can't be written down yet.";
+      `\`${store.name}\` follows from ${listed(unknown)}, a loop that only a numerical solution gives and that is ` +
+      "too large for the rates of its unknowns to be written down; a small compliance or inertia in the loop breaks it.";
     findings.push(
-      finding("not-yet", nodes[store.node].span, message, { facts: pathFacts(assignments, store) }),
+      finding("not-computable", nodes[store.node].span, message, { facts: pathFacts(assignments, store) }),
     );
   }
   const forced = new Map(dependence.forced.map(({ store }) => [store.name, store]));
@@ -81,13 +84,18 @@ export function refusedRates(
       ),
     );
   }
-  for (const names of solved.nonlinear) {
-    const first = assignments.stores.find(({ name }) => names.includes(name));
-    const span = first === undefined ? assignments.causal.graph.span : nodes[first.node].span;
-    const message = `The rates of ${listed(names)} enter each other's equations in no linear way, which is not worked out yet.`;
-    findings.push(finding("not-yet", span, message));
-  }
   return findings;
+}
+
+export function implicitRateNotes(assignments: Assignments, solved: SolvedRates): Finding[] {
+  return solved.implicit.map(({ names, loop }) => {
+    const first = assignments.stores.find(({ name }) => names.includes(name));
+    const { nodes, span } = assignments.causal.graph;
+    const message =
+      `The ${names.length === 1 ? "rate" : "rates"} of ${listed(names)} can't be separated from the laws that hold ` +
+      `${names.length === 1 ? "it" : "them"}, so ${listed(loop.variables.map(({ name }) => name))} is found numerically.`;
+    return finding("implicit-equation", first === undefined ? span : nodes[first.node].span, message);
+  });
 }
 
 function named(symbols: readonly Symbol[], role: Symbol["role"]): string[] {

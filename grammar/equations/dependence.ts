@@ -1,9 +1,13 @@
 import type { Expr, Symbol } from "../symbolic/expression.ts";
+import { linearForms } from "../symbolic/linear.ts";
+import type { Pool } from "../symbolic/pool.ts";
+import { rationalForm } from "../symbolic/rational-form.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import type { Values } from "./paths.ts";
 import { RateFinder } from "./rates.ts";
+import { collected } from "./tidy.ts";
 
 export interface Tied {
   readonly store: Store;
@@ -22,7 +26,12 @@ export interface Dependence {
   readonly forced: readonly Tied[];
 }
 
-export function classifyStores(assignments: Assignments, values: Values): Dependence {
+export function classifyStores(
+  assignments: Assignments,
+  values: Values,
+  loops: readonly AlgebraicLoop[],
+): Dependence {
+  const { pool } = assignments.causal.graph;
   const independent: Store[] = [];
   const followers: Tied[] = [];
   const forced: Tied[] = [];
@@ -32,11 +41,40 @@ export function classifyStores(assignments: Assignments, values: Values): Depend
       independent.push(store);
       continue;
     }
-    const value = values.get(store.symbol);
-    if (value === undefined) continue;
-    (finder.holds(value) ? forced : followers).push({ store, value });
+    const followed = values.get(store.symbol);
+    if (followed === undefined) continue;
+    const value = withoutCancelled(pool, followed, finder);
+    const tied = finder.holds(value) || restsOnRates(value, loops);
+    (tied ? forced : followers).push({ store, value });
   }
   return { independent, followers, forced };
+}
+
+/**
+ * Round a ring of gain one, rates and inputs come back to where they started and cancel: what cancels must not look
+ * as if it settled the store.
+ */
+function withoutCancelled(pool: Pool, value: Expr, finder: RateFinder): Expr {
+  const rates = finder.in(value);
+  if (rates.size === 0) return collected(pool, value);
+  const form = linearForms(pool, rates)(value);
+  if (form === null) return value;
+  const terms = [form.constant];
+  for (const [rate, coefficient] of form.coefficients) {
+    if (rationalForm(pool, coefficient) !== pool.zero) terms.push(pool.product(coefficient, rate));
+  }
+  return terms.length === 1
+    ? collected(pool, form.constant)
+    : terms.length <= form.coefficients.size
+      ? pool.sum(terms)
+      : value;
+}
+
+/** Through what a loop leaves unknown, whose residual holds a rate. */
+function restsOnRates(value: Expr, loops: readonly AlgebraicLoop[]): boolean {
+  if (!loops.some(({ solved }) => !solved)) return false;
+  for (const { role } of settledBy(value, loops)) if (role === "rate") return true;
+  return false;
 }
 
 /** The symbols that settle a value, with those in the residuals of what loops leave unknown in it. */

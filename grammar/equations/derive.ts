@@ -8,7 +8,12 @@ import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { type Assignments, assignmentsOf } from "./assignments.ts";
 import { classifyStores, settledBy } from "./dependence.ts";
-import { dependenceFinding, inputRateFinding, refusedRates } from "./dependence-findings.ts";
+import {
+  dependenceFinding,
+  implicitRateNotes,
+  inputRateFinding,
+  refusedRates,
+} from "./dependence-findings.ts";
 import { implicitSystem } from "./implicit-system.ts";
 import type { DependentStore, ModelInput, RateEquation, StateModel } from "./model.ts";
 import { followPaths } from "./paths.ts";
@@ -31,13 +36,13 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   if (followed.refused) return { model: null, findings };
 
   const settle = substitution(pool, followed.values);
-  const dependence = classifyStores(assignments, followed.values);
+  const dependence = classifyStores(assignments, followed.values, followed.loops);
   const rows = stateRows(assignments, dependence, followed.values, settle);
   const tied = dependence.followers.length + dependence.forced.length > 0;
   const followers = dependence.followers.map(
     ({ store, value }): Follower => ({ name: store.name, rateSymbol: store.rateSymbol, value }),
   );
-  const solved = tied ? solveRates(pool, rows, followers, followed.loops) : NOTHING_TIED;
+  const solved = tied ? solveRates(pool, rows, followers, followed.loops, assignments.valueOf) : NOTHING_TIED;
   const refused = refusedRates(assignments, dependence, solved, followed.loops);
   findings.push(...refused);
   if (refused.length > 0) return { model: null, findings };
@@ -49,7 +54,7 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const paths = dependence.followers.map(({ store, value }) =>
     dependenceFinding(assignments, store, settledBy(value, followed.loops)),
   );
-  findings.push(...paths);
+  findings.push(...paths, ...implicitRateNotes(assignments, solved));
 
   const { starts, findings: startFindings } = startValues(assignments, dependence);
   findings.push(...startFindings);
@@ -81,7 +86,10 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
     inputs,
     equations,
     implicit: implicitSystem(pool, rows, solved),
-    loops: followed.loops.map((loop) => ({ ...loop, residuals: loop.residuals.map(finish) })),
+    loops: [
+      ...followed.loops.map((loop) => ({ ...loop, residuals: loop.residuals.map(finish) })),
+      ...solved.implicit.map(({ loop }) => loop),
+    ],
     outputs,
     efforts,
     flows,
@@ -90,7 +98,13 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
 }
 
 /** Without dependent stores no rate stands in another's equation. */
-const NOTHING_TIED: SolvedRates = { rates: new Map(), coupled: [], singular: [], nonlinear: [] };
+const NOTHING_TIED: SolvedRates = {
+  rates: new Map(),
+  coupled: [],
+  implicit: [],
+  singular: [],
+  stuck: new Set(),
+};
 
 /** Puts the solved rates in, and writes what they changed as one fraction where that is shorter. */
 function rateFree(pool: Pool, solved: SolvedRates): (expr: Expr) => Expr {

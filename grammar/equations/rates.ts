@@ -1,13 +1,14 @@
 import { ById } from "../symbolic/by-id.ts";
-import { differentiation } from "../symbolic/derivative.ts";
 import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { linearForms } from "../symbolic/linear.ts";
 import type { Pool } from "../symbolic/pool.ts";
 import { postorder } from "../symbolic/postorder.ts";
 import { solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
-import { symbolsOf } from "../symbolic/symbols.ts";
+import type { ValueOf } from "../symbolic/turn.ts";
 import { connectedGroups } from "./dependency.ts";
+import { followerRates } from "./follower-rates.ts";
+import { implicitRates, type RateVariable } from "./implicit-rates.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import { collected } from "./tidy.ts";
 
@@ -18,6 +19,8 @@ export interface RateRow {
   readonly rateSymbol: Symbol;
   readonly rate: Expr | null;
   readonly constraint: Expr | null;
+  /** What stands for the rate where no closed form gives it. */
+  readonly rateVariable: RateVariable;
 }
 
 /** A store that follows the states: value = g(x, u, t), with no rates in it. */
@@ -32,9 +35,12 @@ export interface SolvedRates {
   readonly rates: ReadonlyMap<Expr, Expr>;
   /** Groups of states whose rates stay coupled: row·rates = right. */
   readonly coupled: readonly CoupledRates[];
-  /** Names of states whose rates nothing settles, or that enter in no linear way. */
+  /** Rates that only a numerical solution gives, with the states that they belong to. */
+  readonly implicit: readonly { readonly names: readonly string[]; readonly loop: AlgebraicLoop }[];
+  /** Names of states whose rates nothing settles. */
   readonly singular: readonly string[][];
-  readonly nonlinear: readonly string[][];
+  /** Unknowns of loops whose own rates could not be written down. */
+  readonly stuck: ReadonlySet<Symbol>;
 }
 
 export interface CoupledRates {
@@ -52,19 +58,21 @@ export function solveRates(
   rows: readonly RateRow[],
   followers: readonly Follower[],
   loops: readonly AlgebraicLoop[],
+  valueOf: ValueOf,
 ): SolvedRates {
   const rates = new Map<Expr, Expr>();
   const coupled: CoupledRates[] = [];
   const singular: string[][] = [];
-  const nonlinear: string[][] = [];
+  const implicit: { names: readonly string[]; loop: AlgebraicLoop }[] = [];
   const followed = new Map(followers.map((follower) => [follower.rateSymbol, follower]));
   const finder = new RateFinder();
   const restful = (expr: Expr) => !finder.holds(expr);
-  const rateOfFollower = followerRates(pool, rows, loops);
+  const rateOf = new Map(rows.map((row) => [row.symbol, row.rateSymbol]));
+  const moving = followerRates(pool, rateOf, loops);
 
   const items: (RateRow | Follower)[] = [...rows, ...followers];
   const index = new Map(items.map((item, i) => [item.rateSymbol, i]));
-  const rights = items.map((item) => ("value" in item ? rateOfFollower(item.value) : item.rate));
+  const rights = items.map((item) => ("value" in item ? moving.of(item.value) : item.rate));
   const edges: number[][] = items.map(() => []);
   items.forEach((item, i) => {
     const expr = rights[i] ?? (item as RateRow).constraint;
@@ -88,7 +96,7 @@ export function solveRates(
     }
     solveGroup(group.sort((a, b) => a - b).map((i) => ({ item: items[i], right: rights[i] })));
   }
-  return { rates, coupled, singular, nonlinear };
+  return { rates, coupled, implicit, singular, stuck: moving.stuck };
 
   function solveGroup(group: readonly { item: RateRow | Follower; right: Expr | null }[]): void {
     const inside = new Map<Expr, Expr>();
@@ -107,7 +115,11 @@ export function solveRates(
     const formOf = linearForms(pool, new Set(unknowns));
     const forms = residuals.map(formOf);
     if (forms.some((form) => form === null)) {
-      nonlinear.push(names);
+      const variables = states.map(({ item }) => (item as RateRow).rateVariable);
+      const found = implicitRates(pool, unknowns, variables, residuals, valueOf);
+      for (const [rate, value] of found.rates) rates.set(rate, value);
+      if (found.loop !== null) implicit.push({ names, loop: found.loop });
+      finishDependent(dependent, inside);
       return;
     }
     const mass = forms.map((form) => unknowns.map((unknown) => form?.coefficients.get(unknown) ?? pool.zero));
@@ -121,57 +133,18 @@ export function solveRates(
     else if (solution.kind === "large") rates.set(unknowns[0], pool.divide(right[0], mass[0][0]));
     else
       for (const [i, unknown] of unknowns.entries()) rates.set(unknown, collected(pool, solution.values[i]));
-    // Put in after the states' rates are known.
+    finishDependent(dependent, inside);
+  }
+
+  /** After the states' rates are known. */
+  function finishDependent(
+    dependent: readonly { item: RateRow | Follower }[],
+    inside: ReadonlyMap<Expr, Expr>,
+  ): void {
     const finish = substitution(pool, rates, restful);
     for (const { item } of dependent)
       rates.set(item.rateSymbol, collected(pool, finish(inside.get(item.rateSymbol) as Expr)));
   }
-}
-
-/**
- * ġ as an expression in the rates of states and inputs. What a loop leaves unknown moves so that its residual stays
- * zero: ż = -(∂r/∂x·ẋ + …)/(∂r/∂z).
- */
-function followerRates(
-  pool: Pool,
-  rows: readonly RateRow[],
-  loops: readonly AlgebraicLoop[],
-): (value: Expr) => Expr {
-  const rateOf = new Map(rows.map((row) => [row.symbol, row.rateSymbol]));
-  const residualOf = new Map(
-    loops.filter(followable).map((loop) => [loop.variables[0].symbol, loop.residuals[0]]),
-  );
-  const slopes = new Map<Symbol, (expr: Expr) => Expr>();
-  const slope = (expr: Expr, symbol: Symbol): Expr => {
-    let of = slopes.get(symbol);
-    if (of === undefined) {
-      of = differentiation(pool, symbol);
-      slopes.set(symbol, of);
-    }
-    return of(expr);
-  };
-  const moved = (value: Expr, held: Symbol | null): Expr => {
-    const terms: Expr[] = [];
-    for (const symbol of symbolsOf(value)) {
-      const rate = symbol === held ? undefined : symbolRate(symbol);
-      if (rate !== undefined) terms.push(pool.product(slope(value, symbol), rate));
-    }
-    return pool.sum(terms);
-  };
-  const symbolRate = (symbol: Symbol): Expr | undefined => {
-    if (symbol.role === "state") return rateOf.get(symbol);
-    if (symbol.role === "input") return pool.symbol("inputRate", symbol.name);
-    if (symbol.role === "time") return pool.one;
-    const residual = residualOf.get(symbol);
-    if (residual === undefined) return undefined;
-    return pool.negate(pool.divide(moved(residual, symbol), slope(residual, symbol)));
-  };
-  return (value) => moved(value, null);
-}
-
-/** A loop with one unknown, whose rate can be written down. */
-export function followable({ variables, solved }: AlgebraicLoop): boolean {
-  return !solved && variables.length === 1;
 }
 
 /** Looks for rate symbols, remembering what holds none: an expression without rates is known to be so at once. */

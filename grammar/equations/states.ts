@@ -1,9 +1,10 @@
 import { compareNames, type FlatTrack } from "../resolve/graph.ts";
 import type { Expr } from "../symbolic/expression.ts";
-import type { Pool } from "../symbolic/pool.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import { coEnergyOf } from "./coenergy-value.ts";
 import { type Dependence, settledBy, type Tied } from "./dependence.ts";
+import type { RateVariable } from "./implicit-rates.ts";
+import { variableName } from "./loops.ts";
 import type { AlgebraicLoop, DependentStore, State } from "./model.ts";
 import type { Values } from "./paths.ts";
 import type { RateRow } from "./rates.ts";
@@ -26,7 +27,7 @@ export function stateRows(
   const rows: StateRow[] = dependence.independent.map((store) => {
     const carried = values.get(store.rateVariable) ?? pool.zero;
     const rate = store.sign === 1 ? carried : pool.negate(carried);
-    return rowOf(pool, {
+    return rowOf(assignments, {
       name: store.name,
       symbol: store.symbol,
       rate,
@@ -37,21 +38,37 @@ export function stateRows(
   });
   for (const { store, value } of dependence.forced) {
     const { name, symbol } = store;
-    rows.push(rowOf(pool, { name, symbol, rate: null, constraint: value, store, track: null }));
+    rows.push(rowOf(assignments, { name, symbol, rate: null, constraint: value, store, track: null }));
   }
   for (const track of graph.tracks) {
     const { name, symbol, rate } = track;
-    rows.push(rowOf(pool, { name, symbol, rate: settle(rate), constraint: null, store: null, track }));
+    rows.push(rowOf(assignments, { name, symbol, rate: settle(rate), constraint: null, store: null, track }));
   }
   return rows.sort((a, b) => compareNames(a.name, b.name));
 }
 
-function rowOf(pool: Pool, row: Omit<StateRow, "rateSymbol">): StateRow {
+function rowOf(assignments: Assignments, row: Omit<StateRow, "rateSymbol" | "rateVariable">): StateRow {
+  const { pool } = assignments.causal.graph;
   return {
     ...row,
     get rateSymbol() {
       return pool.symbol("rate", row.name);
     },
+    // Only a rate without closed form asks for it.
+    get rateVariable() {
+      return rateVariableOf(assignments, row.store, row.name);
+    },
+  };
+}
+
+function rateVariableOf(assignments: Assignments, store: Store | null, name: string): RateVariable {
+  const { pool } = assignments.causal.graph;
+  const own = store === null ? name : variableName(assignments, store.rateVariable);
+  return {
+    name: own,
+    symbol: pool.symbol("unknown", own),
+    sign: store?.sign ?? 1,
+    bond: store?.bond ?? null,
   };
 }
 
