@@ -8,7 +8,8 @@ export interface DerivationView {
 }
 
 export interface StepView extends Light {
-  readonly rule: DerivationStep["rule"];
+  /** `implicit`: what a loop leaves unknown, and a solver finds at each step. */
+  readonly rule: DerivationStep["rule"] | "implicit";
   readonly equation: Formula;
   readonly place: Place;
 }

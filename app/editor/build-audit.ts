@@ -38,8 +38,8 @@ function derivationView(
 ): DerivationView | null {
   const steps = derivationOf(model, store).map(
     ({ rule, left, right, bonds, span }): StepView => ({
-      rule,
-      equation: equals(left, right),
+      rule: left === right ? "implicit" : rule,
+      equation: left === right ? shown(left) : equals(left, right),
       place: placeOf(span, files),
       nodes: nodesAt(graph, span),
       bonds: bonds.map((bond) => graph.bonds[bond].id),
@@ -89,6 +89,10 @@ function bondView(
       values: [],
     })),
   };
+}
+
+function shown(expr: Expr) {
+  return formula(expressionText(expr), expressionLatex(expr));
 }
 
 function equals(left: Expr, right: Expr) {

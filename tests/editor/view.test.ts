@@ -1,4 +1,5 @@
 import { expect, test } from "vitest";
+import { answerTo } from "../../app/editor/build-audit.ts";
 import { viewOf } from "../../app/editor/build-view.ts";
 import { lightOfLine, litLines, shares } from "../../app/editor/light.ts";
 import { suggestionsAt } from "../../app/editor/notation/completion.ts";
@@ -109,4 +110,24 @@ test.each([
 ])("after `%s` one is offered `%s`", (before, label) => {
   const labels = suggestionsAt(before, viewed(CART).outline, "Cart").map((suggestion) => suggestion.label);
   expect(labels).toContain(label);
+});
+
+test("questions are answered out of the newest report: steps end in the equation, a bond names what sets it", () => {
+  const files = fileSet([
+    ["cart.wright", CART],
+    ["spring.wright", SPRING],
+  ]);
+  const report = checkFile(files, "cart.wright");
+  const derivation = answerTo({ about: "derivation", system: "Cart", store: "mass.p" }, report, files);
+  const steps = derivation !== null && "steps" in derivation ? derivation.steps : [];
+  expect(steps[0].equation.text).toBe("mass.p' = body->mass.e");
+  expect(steps.at(-1)).toMatchObject({ rule: "collected", nodes: ["mass"] });
+  expect(steps.find(({ bonds }) => bonds.includes("push->body"))?.place.line).toBe(lineOf("1  body"));
+
+  const bond = structuredClone(
+    answerTo({ about: "bond", system: "Cart", bond: "body->drag" }, report, files),
+  );
+  expect(bond).toMatchObject({ effortBy: "drag", flowBy: "body", domain: "translation" });
+  expect(bond).toMatchObject({ effort: { equation: { text: "body->drag.e = d*mass.p/m" }, unit: "N" } });
+  expect(answerTo({ about: "bond", system: "Cart", bond: "gone" }, report, files)).toBeNull();
 });

@@ -14,6 +14,7 @@ const RULES: Record<StepView["rule"], string> = {
   gyrator: "gyrator",
   substitution: "put in",
   collected: "collected",
+  implicit: "found by the loop's solver",
 };
 
 /**
