@@ -1,5 +1,5 @@
 import type { StateModel } from "../equations/model.ts";
-import type { Expr } from "../symbolic/expression.ts";
+import type { Expr, SymbolRole } from "../symbolic/expression.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { quantityText } from "../units/unit-text.ts";
 import { balance } from "./balance.ts";
@@ -82,14 +82,12 @@ class Search {
     const first = this.#placeWithSlopes(begin);
     if (first === null)
       return { kind: "none", reason: "The rates have no finite value at the start values." };
-    const found = this.#newton(first.place) ?? this.#inTime(first.place);
-    if (found === null) {
-      return {
-        kind: "none",
-        reason: "The search from the start values came to no point at which all rates are zero.",
-      };
-    }
-    return this.#verdict(found, begin);
+    const direct = this.#newton(first.place);
+    const verdict = direct === null ? LOST : this.#verdict(direct, begin);
+    // At a start where slopes vanish, as those of a square law at rest, Newton's method stays where it is.
+    // Where slopes never change it has said all there is to say.
+    if (verdict.kind === "found" || linearInStates(this.#model)) return verdict;
+    return this.#inTime(first.place, begin) ?? verdict;
   }
 
   #pointOf(x: readonly number[]): Point {
@@ -161,31 +159,29 @@ class Search {
   }
 
   /** Pseudo-transient continuation (Kelley and Keyes 1998; from memory): implicit Euler steps that grow as rates fall. */
-  #inTime(from: Place): Place | null {
+  #inTime(from: Place, begin: readonly number[]): Equilibrium | null {
     let place = from;
-    let stride = 0;
-    for (let step = 1; step <= 400; step += 1) {
-      const slopes = this.#slopes(place);
-      if (slopes === null) return null;
-      if (stride === 0) stride = 1e-2 / (Math.max(...slopes.map((row, i) => Math.abs(row[i]))) || 1);
+    let slopes = this.#slopes(place);
+    let stride = 1e-2 / (slopes === null ? 1 : Math.max(...slopes.map((row, i) => Math.abs(row[i]))) || 1);
+    for (let step = 1; step <= 240 && slopes !== null; step += 1) {
       const lhs = slopes.map((row, i) => row.map((value, j) => (i === j ? 1 / stride - value : -value)));
       const solved = solve(
         lhs,
         place.rates.map((rate) => [rate]),
       );
-      const change = solved?.x.map(([value]) => value);
-      const next = change === undefined ? null : this.#place(place.x.map((value, i) => value + change[i]));
-      if (next === null) {
+      const next = solved === null ? null : this.#place(place.x.map((value, i) => value + solved.x[i][0]));
+      const nextSlopes = next === null ? null : this.#slopes(next);
+      if (next === null || nextSlopes === null) {
         stride /= 10;
         if (stride < 1e-30) return null;
         continue;
       }
-      place = next;
+      [place, slopes] = [next, nextSlopes];
       stride *= 2;
-      if (step % 20 === 0) {
-        const found = this.#newton(place);
-        if (found !== null) return found;
-      }
+      if (step % 12 !== 0) continue;
+      const found = this.#newton(place);
+      const verdict = found === null ? null : this.#verdict(found, begin);
+      if (verdict?.kind === "found") return verdict;
     }
     return null;
   }
@@ -236,6 +232,19 @@ class Search {
     const name = this.#model.states[this.#moving[greatest(weights)]].name;
     return `The equations conserve a total of \`${name}\`, and nothing rests at the one that the start values give.`;
   }
+}
+
+const LOST: Equilibrium = {
+  kind: "none",
+  reason: "The search from the start values came to no point at which all rates are zero.",
+};
+
+function linearInStates(model: StateModel): boolean {
+  const { rates, residuals, ratesByUnknown, residualsByUnknown } = slopesOf(model);
+  const fixed = new Set<SymbolRole | null>(["parameter", "constant", "input"]);
+  return [...rates, ...residuals, ...ratesByUnknown, ...residualsByUnknown].every(({ value }) =>
+    [...symbolsOf(value)].every(({ role }) => fixed.has(role)),
+  );
 }
 
 function greatest(values: readonly number[]): number {

@@ -193,6 +193,24 @@ describe("equilibrium", () => {
     expect(coasting.kind === "found" && coasting.point.states).toEqual([4]);
   });
 
+  it("is found from a start at which slopes vanish, or across a gap: a mass falls onto a stop", () => {
+    const model = derive(
+      `
+      param k = 1 MN/m
+      1 mass : translation
+      I body f = p/(2 kg)
+      Se weight e = -(2 kg)*g0
+      R air e = 1 N*s^2/m^2*f*abs(f)
+      C stop e = -k*max(-q - 0.1 m, 0 m)
+      mass -> body, air, stop
+      weight -> mass`.replace("1 N*s^2/m^2*f", "1 N*s^2/m^2 * f"),
+    );
+    const found = equilibrium(model);
+    if (found.kind === "none") throw new Error(found.reason);
+    const q = found.point.states[model.states.findIndex(({ name }) => name === "stop.q")];
+    expect(q).toBeCloseTo(-0.1 - (2 * 9.80665) / 1e6, 10);
+  });
+
   it("leaves a track that only records where it is", () => {
     const model = derive(`
       input T : N*m = 2 N*m
