@@ -24,7 +24,6 @@ import {
   Slip,
   Strange,
   Where,
-  wordType,
 } from "./tokens.ts";
 import type { Comment } from "./tree.ts";
 import { ELEMENT_WORDS, STATEMENT_WORDS } from "./words.ts";
@@ -100,8 +99,7 @@ class LineMaker {
 
   #take(token: IToken): void {
     const type = token.tokenType;
-    if (type === Name) retag(token);
-    else if (type === Open || type === OpenIndex) {
+    if (type === Open || type === OpenIndex) {
       this.#open.push(token);
       if (this.#open.length > LIMITS.depth) this.#tooDeep ??= token;
     } else if (type === Close || type === CloseIndex) this.#open.pop();
@@ -204,31 +202,19 @@ class LineMaker {
     if (first.tokenType === NumberText) {
       return (
         (first.image === "0" || first.image === "1") &&
-        isPlainName(second) &&
+        second.tokenType === Name &&
         parseUnit(second.image) === null
       );
     }
-    if (first.tokenType !== Name) return false;
+    if (!belongs(first.tokenType, Name)) return false;
     if (this.#open.length > 0 && belongs(second.tokenType, AnyArrow)) return true;
     const head = STATEMENT_WORDS.has(first.image) || ELEMENT_WORDS.has(first.image);
-    return head && (isPlainName(second) || (first.image === "use" && second.image.startsWith('"')));
+    return head && (second.tokenType === Name || (first.image === "use" && second.image.startsWith('"')));
   }
 }
 
 const GOES_ON: ReadonlySet<TokenType> = new Set([Comma, DotDot, OneWay, Where, Else, Not]);
 const SILENT: ReadonlySet<TokenType> = new Set([LineEnd, CommentToken, Remark]);
-
-function isPlainName(token: IToken): boolean {
-  return token.tokenType === Name && wordType(token.image) === undefined;
-}
-
-/** A word that is more than a name gets the type that says so. */
-function retag(token: IToken): void {
-  const type = wordType(token.image);
-  if (type === undefined) return;
-  token.tokenType = type;
-  token.tokenTypeIdx = type.tokenTypeIdx as number;
-}
 
 function join(before: string | null, text: string): string | null {
   if (text === "") return before;

@@ -3,7 +3,7 @@ import type { SourceText } from "../source/text.ts";
 import { LIMITS } from "./limits.ts";
 import { toLines } from "./lines.ts";
 import { OutlineReader } from "./outline.ts";
-import { notationLexer } from "./tokens.ts";
+import { scan } from "./scan.ts";
 import type { File } from "./tree.ts";
 
 export interface Parsed {
@@ -29,8 +29,7 @@ export function parse(source: SourceText): Parsed {
   }
 
   const findings: Finding[] = [];
-  const { tokens } = notationLexer().tokenize(text);
-  const { lines, comments, homeless } = toLines(text, tokens);
+  const { lines, comments, homeless } = toLines(text, scan(text));
   const { items, edition, balanced } = new OutlineReader(source, findings).read(lines);
 
   if (edition === null && text.trim() !== "") {

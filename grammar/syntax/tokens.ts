@@ -1,84 +1,49 @@
-import { type CustomPatternMatcherFunc, createToken, Lexer, type TokenType } from "chevrotain";
+import { createToken, Lexer, type TokenType } from "chevrotain";
 import { CLAUSE_WORDS, OPERATOR_WORDS } from "./words.ts";
 
-/** A letter of any script, for the lexer's table of first characters, which sorts by blocks of code units. */
-const BEYOND_ASCII = [
-  ...Array.from({ length: 128 }, (_, i) => 128 + i),
-  ...Array.from({ length: 640 }, (_, i) => 256 + i * 102),
-];
-const ASCII_LETTERS = [..."abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ_"];
-
-const NAME = /[\p{L}_][\p{L}\p{M}\p{Nd}_]*/uy;
-const STRANGE = /[^\p{L}\p{N}_\s!-~]+|[$&;?@\\!`|'~\]}{[]|[^\s]/uy;
-
-/** Chevrotain drops the `u` flag of a pattern, so patterns that need it are matched by hand. */
-function sticky(pattern: RegExp): CustomPatternMatcherFunc {
-  return (text, offset) => {
-    pattern.lastIndex = offset;
-    return pattern.exec(text);
-  };
-}
+/** What the scanner makes and the grammar is written in. Categories say what may stand for what. */
+const token = (name: string, more: { label?: string; categories?: TokenType | TokenType[] } = {}) =>
+  createToken({ name, pattern: Lexer.NA, ...more });
 
 /** Operators that join two operands of an expression. */
-export const Binary = createToken({ name: "Binary", pattern: Lexer.NA });
-export const Prefix = createToken({ name: "Prefix", pattern: Lexer.NA });
+export const Binary = token("Binary");
+export const Prefix = token("Prefix");
 /** What a unit is made of: `N*m*s/rad`, `m^-2`, `1/s`, `%`. */
-export const UnitPart = createToken({ name: "UnitPart", pattern: Lexer.NA });
-export const UnitHead = createToken({ name: "UnitHead", pattern: Lexer.NA, categories: UnitPart });
-export const AnyArrow = createToken({ name: "AnyArrow", pattern: Lexer.NA });
+export const UnitPart = token("UnitPart");
+export const UnitHead = token("UnitHead", { categories: UnitPart });
+export const AnyArrow = token("AnyArrow");
 
-const blank = createToken({
-  name: "Blank",
-  pattern: sticky(/[^\S\r\n]+/y),
-  start_chars_hint: [..." \t\v\f", ...BEYOND_ASCII],
-  line_breaks: false,
-  group: Lexer.SKIPPED,
-});
-export const LineEnd = createToken({ name: "LineEnd", pattern: /\r?\n|\r/, line_breaks: true });
-export const Comment = createToken({ name: "Comment", pattern: /#[^\r\n]*/ });
+export const LineEnd = token("LineEnd");
+export const Comment = token("Comment");
 /** `-- text`, with a blank on both sides; that one stands before it is seen when lines are made. */
-export const Remark = createToken({ name: "Remark", pattern: /--(?=[\s{}]|$)[^\r\n]*/ });
+export const Remark = token("Remark");
 /** Signs of other languages, or of none here; a message says what to write instead. */
-export const Slip = createToken({
-  name: "Slip",
-  pattern: /--+>?|==+|!=|<>|&&|\|\||\*\*|:=|=>|\/\/|\+\+|<<|>>|\+=|-=/,
-});
-export const Text = createToken({ name: "Text", pattern: /"[^"\r\n]*"/, label: "a text in quotes" });
+export const Slip = token("Slip");
+export const Text = token("Text", { label: "a text in quotes" });
+/** What has no meaning in the notation. */
+export const Strange = token("Strange");
 
-export const DemandFrom = createToken({
-  name: "DemandFrom",
-  pattern: "|->",
-  label: "`|->`",
-  categories: AnyArrow,
-});
-export const DemandTo = createToken({
-  name: "DemandTo",
-  pattern: "->|",
-  label: "`->|`",
-  categories: AnyArrow,
-});
-export const Arrow = createToken({ name: "Arrow", pattern: "->", label: "`->`", categories: AnyArrow });
-export const OneWay = createToken({ name: "OneWay", pattern: "<-", label: "`<-`" });
-
-const operator = (name: string, pattern: string | RegExp, ...more: TokenType[]) =>
-  createToken({ name, pattern, label: `\`${pattern}\``, categories: [Binary, ...more] });
-export const LessEqual = operator("LessEqual", "<=");
-export const GreaterEqual = operator("GreaterEqual", ">=");
-export const Less = operator("Less", "<");
-export const Greater = operator("Greater", ">");
-export const Equals = operator("Equals", "=");
-export const Plus = operator("Plus", "+", Prefix);
-export const Minus = operator("Minus", "-", Prefix, UnitPart);
-export const Star = operator("Star", "*", UnitPart);
-export const Slash = operator("Slash", "/", UnitPart);
-export const Caret = operator("Caret", "^", UnitPart);
-export const And = createToken({ name: "And", pattern: Lexer.NA, label: "`and`", categories: Binary });
-export const Or = createToken({ name: "Or", pattern: Lexer.NA, label: "`or`", categories: Binary });
-export const Not = createToken({ name: "Not", pattern: Lexer.NA, label: "`not`", categories: Prefix });
-export const Where = createToken({ name: "Where", pattern: Lexer.NA, label: "`where`" });
-export const Else = createToken({ name: "Else", pattern: Lexer.NA, label: "`else`" });
-
-const sign = (name: string, pattern: string) => createToken({ name, pattern, label: `\`${pattern}\`` });
+const signs: [text: string, type: TokenType][] = [];
+/** A sign that is always the same; of two that begin alike the longer one stands first. */
+const sign = (name: string, text: string, ...categories: TokenType[]) => {
+  const type = token(name, { label: `\`${text}\``, categories });
+  signs.push([text, type]);
+  return type;
+};
+export const DemandFrom = sign("DemandFrom", "|->", AnyArrow);
+export const DemandTo = sign("DemandTo", "->|", AnyArrow);
+export const Arrow = sign("Arrow", "->", AnyArrow);
+export const OneWay = sign("OneWay", "<-");
+export const LessEqual = sign("LessEqual", "<=", Binary);
+export const GreaterEqual = sign("GreaterEqual", ">=", Binary);
+export const Less = sign("Less", "<", Binary);
+export const Greater = sign("Greater", ">", Binary);
+export const Equals = sign("Equals", "=", Binary);
+export const Plus = sign("Plus", "+", Binary, Prefix);
+export const Minus = sign("Minus", "-", Binary, Prefix, UnitPart);
+export const Star = sign("Star", "*", Binary, UnitPart);
+export const Slash = sign("Slash", "/", Binary, UnitPart);
+export const Caret = sign("Caret", "^", Binary, UnitPart);
 export const DotDot = sign("DotDot", "..");
 export const Dot = sign("Dot", ".");
 export const Comma = sign("Comma", ",");
@@ -89,120 +54,47 @@ export const OpenIndex = sign("OpenIndex", "[");
 export const CloseIndex = sign("CloseIndex", "]");
 export const OpenBlock = sign("OpenBlock", "{");
 export const CloseBlock = sign("CloseBlock", "}");
+export const Percent = sign("Percent", "%", UnitHead);
+export const SIGNS: readonly (readonly [text: string, type: TokenType])[] = signs;
 
-export const NumberText = createToken({
-  name: "NumberText",
-  pattern: /\d+(?:\.\d+)?(?:[eE][+-]?\d+)?/,
-  label: "a number",
-  categories: UnitPart,
-});
-export const Percent = createToken({ name: "Percent", pattern: "%", label: "`%`", categories: UnitHead });
-export const Name = createToken({
-  name: "Name",
-  pattern: sticky(NAME),
-  start_chars_hint: [...ASCII_LETTERS, ...BEYOND_ASCII],
-  line_breaks: false,
-  label: "a name",
-  categories: UnitHead,
-});
-export const Strange = createToken({
-  name: "Strange",
-  pattern: sticky(STRANGE),
-  start_chars_hint: [
-    ..."!\"#$%&'()*+,-./:;<=>?@[\\]^`{|}~",
-    ...BEYOND_ASCII,
-    ...Array.from({ length: 32 }, (_, i) => i),
-    127,
-  ],
-  line_breaks: false,
-});
+export const NumberText = token("NumberText", { label: "a number", categories: UnitPart });
+export const Name = token("Name", { label: "a name", categories: UnitHead });
+export const And = token("And", { label: "`and`", categories: Binary });
+export const Or = token("Or", { label: "`or`", categories: Binary });
+export const Not = token("Not", { label: "`not`", categories: Prefix });
+export const Where = token("Where", { label: "`where`" });
+export const Else = token("Else", { label: "`else`" });
+const OPERATORS: Record<(typeof OPERATOR_WORDS)[number], TokenType> = {
+  and: And,
+  or: Or,
+  not: Not,
+  where: Where,
+  else: Else,
+};
 
-const clause = (word: string) =>
-  createToken({ name: `word ${word}`, pattern: Lexer.NA, label: `\`${word}\``, categories: Name });
-
-/** Words inside a statement, by their text: each is also a `Name`, so that it stays free elsewhere. */
-export const CLAUSES: ReadonlyMap<string, TokenType> = new Map(
-  CLAUSE_WORDS.map((word) => [word, clause(word)]),
+/** Words inside a statement: each is also a `Name`, so that it stays free elsewhere. */
+const CLAUSES: ReadonlyMap<string, TokenType> = new Map(
+  CLAUSE_WORDS.map((word) => [word, token(`word ${word}`, { label: `\`${word}\``, categories: Name })]),
 );
 
 export function clauseToken(word: (typeof CLAUSE_WORDS)[number]): TokenType {
   return CLAUSES.get(word) as TokenType;
 }
 
-const OPERATORS: ReadonlyMap<string, TokenType> = new Map(
-  OPERATOR_WORDS.map((word) => [word, { and: And, or: Or, not: Not, where: Where, else: Else }[word]]),
-);
-
-/** The token type of a word that is more than a name, by its text. */
-export function wordType(text: string): TokenType | undefined {
-  return CLAUSES.get(text) ?? OPERATORS.get(text);
-}
+/** Words that are more than a name, by their text. */
+export const WORDS: ReadonlyMap<string, TokenType> = new Map([
+  ...CLAUSES,
+  ...OPERATOR_WORDS.map((word) => [word, OPERATORS[word]] as const),
+]);
 
 /** Is `type` that type, or one of its kind? */
 export function belongs(type: TokenType, category: TokenType): boolean {
   return type === category || type.CATEGORIES?.includes(category) === true;
 }
 
-const LEXED = [
-  blank,
-  LineEnd,
-  Name,
-  NumberText,
-  Comment,
-  Remark,
-  Slip,
-  DemandFrom,
-  DemandTo,
-  Arrow,
-  OneWay,
-  LessEqual,
-  GreaterEqual,
-  Less,
-  Greater,
-  Equals,
-  Plus,
-  Minus,
-  Star,
-  Slash,
-  Caret,
-  DotDot,
-  Dot,
-  Comma,
-  Colon,
-  Open,
-  Close,
-  OpenIndex,
-  CloseIndex,
-  OpenBlock,
-  CloseBlock,
-  Percent,
-  Text,
-  Strange,
-];
-
 export const VOCABULARY = [
-  ...LEXED,
-  Binary,
-  Prefix,
-  UnitPart,
-  UnitHead,
-  AnyArrow,
-  And,
-  Or,
-  Not,
-  Where,
-  Else,
-  ...CLAUSES.values(),
+  ...[Binary, Prefix, UnitPart, UnitHead, AnyArrow],
+  ...[LineEnd, Comment, Remark, Slip, Text, Strange, NumberText, Name],
+  ...signs.map(([, type]) => type),
+  ...WORDS.values(),
 ];
-
-let lexer: Lexer | null = null;
-
-/** Built on first use: reading a word of help must not wait for it. */
-export function notationLexer(): Lexer {
-  lexer ??= new Lexer(VOCABULARY, {
-    positionTracking: "onlyOffset",
-    skipValidations: true,
-    ensureOptimizations: true,
-  });
-  return lexer;
-}
