@@ -98,12 +98,25 @@ function combine(operator: string, left: Measured, right: Measured): Measured {
 
 function callOf(name: string, args: readonly Measured[]): Measured {
   if (!NUMBERS.has(name)) return none(`\`${name}\` is not a measure of a system.`);
-  const values: number[] = [];
+  const found: (Measured & { kind: "value" })[] = [];
   for (const arg of args) {
     if (arg.kind !== "value") return arg;
-    if (!isDimensionless(arg.dimension))
-      return none(`\`${name}\` takes numbers without a unit in a condition.`);
-    values.push(arg.value);
+    found.push(arg);
   }
-  return value(applyFunction(name as FunctionName, values));
+  const worth = applyFunction(
+    name as FunctionName,
+    found.map((one) => one.value),
+  );
+  const [first, ...rest] = found;
+  if (LIKE_ITS_ARGUMENTS.has(name)) {
+    if (rest.some(({ dimension }) => !equal(dimension, first.dimension)))
+      return none("The condition compares quantities of different units.");
+    return value(worth, first.dimension, first.unit);
+  }
+  if (name === "sqrt") return value(worth, power(first.dimension, 0.5));
+  if (name !== "sign" && found.some(({ dimension }) => !isDimensionless(dimension)))
+    return none(`\`${name}\` takes numbers without a unit in a condition.`);
+  return value(worth);
 }
+
+const LIKE_ITS_ARGUMENTS: ReadonlySet<string> = new Set(["abs", "min", "max"]);

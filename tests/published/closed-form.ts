@@ -73,6 +73,7 @@ const FUNCTIONS: Record<string, (...args: number[]) => number> = {
   cos: Math.cos,
   tanh: Math.tanh,
   exp: Math.exp,
+  ln: Math.log,
   sqrt: Math.sqrt,
   abs: Math.abs,
 };
