@@ -258,7 +258,7 @@ export class ExpressionParser extends EmbeddedActionsParser {
     const after = this.LA(2);
     if (next.startOffset !== ends(previous)) return false;
     if (isJoint(next.tokenType)) return after.startOffset === ends(next) && isWord(after);
-    if (next.tokenType === Caret) return after.startOffset === ends(next) && after.tokenType !== Open;
+    if (next.tokenType === Caret) return after.startOffset === ends(next) && mayBePower(after);
     if (next.tokenType === Minus) return previous.tokenType === Caret;
     if (next.tokenType === NumberText) return previous.tokenType === Caret || previous.tokenType === Minus;
     return isWord(next) && (isJoint(previous.tokenType) || previous.tokenType === Caret);
@@ -307,6 +307,11 @@ function ends(token: IToken): number {
 
 function isJoint(type: TokenType): boolean {
   return type === Star || type === Slash;
+}
+
+/** What may stand behind `^` in a unit; that the power is a whole number is the resolver's question. */
+function mayBePower(token: IToken): boolean {
+  return token.tokenType === NumberText || token.tokenType === Minus || isWord(token);
 }
 
 /** Names, words of clauses and `%`. */
