@@ -6,7 +6,9 @@ import type { StateModel } from "./equations/model.ts";
 import { passivityFindings } from "./equations/passivity.ts";
 import { reciprocityFindings } from "./equations/reciprocity.ts";
 import { judge } from "./expectations/judge.ts";
+import { judgeTrial, type TrialReport } from "./expectations/judge-trial.ts";
 import type { ExpectationResult } from "./expectations/result.ts";
+import type { FlatTrial } from "./resolve/flat-trial.ts";
 import type { FlatGraph } from "./resolve/graph.ts";
 import { resolve } from "./resolve/resolve.ts";
 import type { FileSet, SourceText } from "./source/text.ts";
@@ -22,6 +24,8 @@ export interface FileReport {
   readonly path: string;
   readonly tree: File;
   readonly systems: readonly SystemReport[];
+  /** In the order of the text; run only where that was asked for. */
+  readonly trials: readonly TrialReport[];
   /** All findings with a span in the file, of every stage, in the order of the text. */
   readonly findings: readonly Finding[];
 }
@@ -42,6 +46,10 @@ export interface CheckOptions {
   /** Only this system; all of the file otherwise. */
   readonly system?: string;
   readonly cache?: TreeCache;
+  /** Run the trials: all of the systems asked for, or the one of this name. Key strokes do without. */
+  readonly trials?: boolean | string;
+  /** Told now and then how far the trials are; false cancels them. */
+  progress?(share: number): boolean;
 }
 
 export function checkFile(files: FileSet, path: string, options: CheckOptions = {}): FileReport {
@@ -62,8 +70,28 @@ export function checkFile(files: FileSet, path: string, options: CheckOptions = 
     .filter(({ name }) => options.system === undefined || name === options.system)
     .map(({ name, graph, findings }) => derive(name, graph, findings));
 
-  const findings = [...syntaxFindings, ...resolved.findings, ...systems.flatMap((system) => system.findings)];
-  return { path, tree, systems, findings: inTextOrder(findings, path) };
+  const asked = resolved.trials.filter(({ name, system }) => {
+    if (options.system !== undefined && system !== options.system) return false;
+    return options.trials === true || options.trials === name;
+  });
+  const trials = asked.map((trial, i) => {
+    const progress = (share: number) => options.progress?.((i + share) / asked.length) ?? true;
+    return judgeTrial(trial, modelOf(trial, systems), progress);
+  });
+  const findings = [
+    ...syntaxFindings,
+    ...resolved.findings,
+    ...systems.flatMap((system) => system.findings),
+    ...trials.flatMap((trial) => trial.findings),
+  ];
+  return { path, tree, systems, trials, findings: inTextOrder(findings, path) };
+}
+
+/** The model a trial runs: that of its system here, or derived for it where the system comes from another file. */
+function modelOf({ graph, system }: FlatTrial, systems: readonly SystemReport[]): StateModel | null {
+  if (graph === null) return null;
+  const own = systems.find((one) => one.graph === graph);
+  return own === undefined ? derive(system, graph, []).model : own.model;
 }
 
 function derive(system: string, graph: FlatGraph | null, resolveFindings: readonly Finding[]): SystemReport {

@@ -24,7 +24,7 @@ export function format(paths: readonly string[], options: FormatArguments): numb
     const errors = findings.filter(({ severity }) => severity === "error");
     if (errors.length > 0) {
       const from = {
-        report: { path: file.path, tree, systems: [], findings },
+        report: { path: file.path, tree, systems: [], trials: [], findings },
         files: file.files,
         shown: file.shown,
       };

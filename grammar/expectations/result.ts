@@ -12,5 +12,7 @@ export interface ExpectationResult {
   /** As shown: `4`, `52.3 kN`; null where nothing could be measured. */
   readonly measured: string | null;
   readonly wanted: string;
+  /** How far it is from failing, as shown; below zero where it fails. Of what has no margin it is left out. */
+  readonly margin?: string | null;
   readonly message: string | null;
 }

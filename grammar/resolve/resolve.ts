@@ -7,6 +7,7 @@ import { Draft } from "./draft.ts";
 import { checkElements } from "./elements.ts";
 import { expand, type FindSystem } from "./expand.ts";
 import { Library, type Parse, type SourceFile } from "./files.ts";
+import type { FlatTrial } from "./flat-trial.ts";
 import type { FlatGraph } from "./graph.ts";
 import { inferDomains, reportUnknownDomains } from "./infer-domains.ts";
 import { joinPorts } from "./join-ports.ts";
@@ -14,12 +15,13 @@ import { systemNotes, unusedFunctions } from "./notes.ts";
 import { numberBonds } from "./number-bonds.ts";
 import { fitsLimits } from "./size.ts";
 import { Translator } from "./translate.ts";
-import { checkTrials } from "./trials.ts";
+import { type RunnableSystem, resolveTrials } from "./trials.ts";
 
 export interface Resolved {
   /** Of the file itself: its `use` lines, functions, trials. */
   readonly findings: readonly Finding[];
   readonly systems: readonly ResolvedSystem[];
+  readonly trials: readonly FlatTrial[];
 }
 
 export interface ResolvedSystem {
@@ -41,11 +43,24 @@ export function resolve(files: FileSet, path: string, parse: Parse): Resolved {
   const systems = file.tree.items
     .filter((item) => item.kind === "system")
     .reverse()
-    .map((system) => resolveSystem(system, file, findSystem, refused))
+    .map((system) => ({ system, ...resolveSystem(system, file, findSystem, refused) }))
     .reverse();
+  const runnable = new Map<System, RunnableSystem>(systems.map((one) => [one.system, one]));
+  const { trials, findings: trialFindings } = resolveTrials(file, (name) => {
+    const placed = file.visible.systems.get(name);
+    if (placed === undefined) return null;
+    let known = runnable.get(placed.item);
+    // A system of another file has its findings there.
+    if (known === undefined) {
+      known = resolveSystem(placed.item, placed.file, findSystem, refused);
+      runnable.set(placed.item, known);
+    }
+    return known;
+  });
   return {
-    findings: [...findings, ...checkDeclarations(file), ...unusedFunctions(file), ...checkTrials(file)],
-    systems,
+    findings: [...findings, ...checkDeclarations(file), ...unusedFunctions(file), ...trialFindings],
+    systems: systems.map(({ name, graph, findings: found }) => ({ name, graph, findings: found })),
+    trials,
   };
 }
 
@@ -54,10 +69,11 @@ function resolveSystem(
   file: SourceFile,
   findSystem: FindSystem,
   refused: Set<System>,
-): ResolvedSystem {
+): ResolvedSystem & RunnableSystem {
   const draft = new Draft(file);
   const name = system.name.text;
-  if (!fitsLimits(draft, system, file, refused)) return { name, graph: null, findings: draft.findings };
+  if (!fitsLimits(draft, system, file, refused))
+    return { name, graph: null, findings: draft.findings, translator: null };
   expand(draft, system, file, findSystem);
   joinPorts(draft);
   checkElements(draft);
@@ -69,7 +85,7 @@ function resolveSystem(
   const graph = assemble(translator);
   reportUnknownDomains(draft, groups);
   systemNotes(draft, system, file);
-  return { name, graph, findings: draft.findings };
+  return { name, graph, findings: draft.findings, translator };
 }
 
 /** Looks through the text of the other files of the set, which are not parsed for a suggestion's sake. */

@@ -1,10 +1,13 @@
 import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Reference } from "../syntax/tree.ts";
+import type { Unit } from "../units/unit.ts";
 import { type Draft, type Instance, type PlacedStart, spanOf } from "./draft.ts";
 import type { FlatStart } from "./graph.ts";
 import { fixedNumber } from "./numbers.ts";
 import { translateReference } from "./references.ts";
-import { plainScope } from "./scope.ts";
+import { plainScope, type Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
+import type { Measure } from "./typed.ts";
 
 /** Initial values by the symbol they set. A system that uses a part may start it otherwise than the part does. */
 export function flatStarts(translator: Translator): FlatStart[] {
@@ -48,6 +51,17 @@ function targetOf(translator: Translator, placed: PlacedStart, startable: Readon
     translator.refuse("syntax", statement.range, scope, message);
     return null;
   }
+  const found = startTarget(translator, target, scope, startable);
+  return found === null ? null : { ...found, value, scope, range: target.range };
+}
+
+/** What a start names: the state of a store or track, or a store's effort or flow; null where it is refused. */
+export function startTarget(
+  translator: Translator,
+  target: Reference,
+  scope: Scope,
+  startable: ReadonlySet<Expr> = startableVariables(translator.draft),
+): { symbol: Symbol; measure: Measure; shown: Unit | null } | null {
   const { expr, measure, shown } = translateReference(translator, target, { ...scope, fixed: false });
   if (measure === "unknown") return null;
   const symbol = expr as Symbol;
@@ -57,7 +71,7 @@ function targetOf(translator: Translator, placed: PlacedStart, startable: Readon
     translator.refuse("unknown-variable", target.range, scope, message);
     return null;
   }
-  return { symbol, measure, shown, value, scope, range: target.range };
+  return { symbol, measure, shown };
 }
 
 /** Efforts and flows of stores, which are solved back through the law. */

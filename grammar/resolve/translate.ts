@@ -31,6 +31,8 @@ export class Translator {
   readonly calls: { readonly name: string; readonly at: Range; readonly file: SourceFile }[] = [];
   /** Values that are being worked out, outermost first: a circle shows when one of them is met again. */
   readonly open: Value[] = [];
+  /** Forms that only the statement at hand knows, such as the measures of a trial; null for what it leaves alone. */
+  special: ((tree: Expression, scope: Scope) => Typed | null) | null = null;
   readonly #unknown: Typed;
   #depth = 0;
   #work = 0;
@@ -128,6 +130,8 @@ export class Translator {
   }
 
   #translate(tree: Expression, scope: Scope): Typed {
+    const special = this.special?.(tree, scope) ?? null;
+    if (special !== null) return special;
     const { pool } = this.draft;
     switch (tree.kind) {
       case "number":

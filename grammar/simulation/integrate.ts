@@ -103,7 +103,7 @@ class Integration {
       if (this.#h < least) return NO_STEP;
       const left = end - this.#t;
       // Not a crumb of a step at the end.
-      const h = this.#h >= left ? left : this.#h > left / 2 ? left / 2 : this.#h;
+      const h = this.#h >= left ? left : Math.min(this.#h, left / 2);
       const error = this.#tried(h);
       if (!(error <= 1)) {
         this.#counters.rejected += 1;

@@ -19,6 +19,7 @@ export interface RunInputs {
   readonly drives: ReadonlyMap<string, Expr>;
   /** SI, of parameters that differ from the text. */
   readonly parameters: ReadonlyMap<string, number>;
+  readonly constants?: ReadonlyMap<Symbol, number>;
   /** What is watched beside the rates, in terms of states, inputs, time and what loops leave unknown. */
   readonly watched: readonly Expr[];
 }
@@ -71,12 +72,8 @@ export class RunSystem implements Problem {
     this.holds = new Float64Array(switches.length);
     this.slants = new Float64Array(switches.length);
     this.#unknowns = new Float64Array(m);
-    this.#valueOf = evaluator(
-      (
-        (known) => (symbol: Symbol) =>
-          known(symbol) ?? Number.NaN
-      )(parametersAt(model.causal.graph, inputs.parameters)),
-    );
+    const known = parametersAt(model.causal.graph, inputs.parameters);
+    this.#valueOf = evaluator((symbol) => known(symbol) ?? inputs.constants?.get(symbol) ?? Number.NaN);
     const code = (exprs: readonly Expr[]): Coded => this.#code(exprs, variables);
     this.#rates = code(frozen);
     this.#watched = code(watched);

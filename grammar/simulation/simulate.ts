@@ -1,5 +1,5 @@
 import type { StateModel } from "../equations/model.ts";
-import type { Expr } from "../symbolic/expression.ts";
+import type { Expr, Symbol } from "../symbolic/expression.ts";
 import { auditedExprs, EnergyAudit, type EnergyReport } from "./energy-audit.ts";
 import { energyBook } from "./energy-book.ts";
 import { integrate } from "./integrate.ts";
@@ -13,6 +13,8 @@ export interface RunPlan {
   readonly drives: ReadonlyMap<string, Expr>;
   /** SI, of parameters that differ from the text. */
   readonly parameters: ReadonlyMap<string, number>;
+  /** Other symbols with one value throughout. */
+  readonly constants?: ReadonlyMap<Symbol, number>;
   /** SI, in the order of the model's states. */
   readonly start: readonly number[];
   /** s. */
@@ -52,7 +54,7 @@ export function simulate(model: StateModel, plan: RunPlan): RunResult {
   const book = energyBook(model);
   const watchedByAudit = "missing" in book ? [] : auditedExprs(book);
   const watched = [...plan.signals, ...watchedByAudit];
-  const system = new RunSystem(model, { drives: plan.drives, parameters: plan.parameters, watched });
+  const system = new RunSystem(model, { ...plan, watched });
   const audit = "missing" in book ? null : new EnergyAudit(book, (expr) => system.fixedValue(expr));
   const recorder = new Recorder(system, plan, audit);
   const start = Float64Array.from(plan.start);
