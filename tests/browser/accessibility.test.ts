@@ -3,7 +3,7 @@ import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
 import { openBrowser } from "../support/browser.ts";
 import { type RunningServer, startServer } from "../support/server.ts";
-import { goBefore, HOIST, open, seat } from "./reader.ts";
+import { goBefore, HOIST, open, save, seat } from "./reader.ts";
 
 let server: RunningServer;
 let browser: Browser;
@@ -66,11 +66,35 @@ describe.each(["light", "dark"] as const)("in the %s setting", (colorScheme) => 
     await page.locator("li.equation").first().waitFor();
     expect(await violations(page)).toEqual([]);
     await page.locator(".term").first().focus();
+    await page.getByText("How it comes about").first().click();
+    await page.locator(".step").first().waitFor();
+    await page.locator('[data-part="bond"]').first().focus();
+    await page.keyboard.press("Enter");
+    await page.getByText("Why the stroke stands").waitFor();
     expect(await violations(page)).toEqual([]);
     await goBefore(page, "weight   e");
     await page.keyboard.type("?");
     await page.getByText("from the last text without errors").waitFor();
     expect(await violations(page)).toEqual([]);
+  });
+
+  test("two versions of a file that two people changed", async () => {
+    const rope = `${SET}/edit/parts/rope.wright`;
+    const other = await seat(browser, server.origin, "release_keeper");
+    await open(page, rope);
+    await open(other, rope);
+    for (const [writer, word] of [
+      [other, "static "],
+      [page, "measured "],
+    ] as const) {
+      await goBefore(writer, "-- damping");
+      await writer.keyboard.type(word + colorScheme);
+      await writer.getByText("1 file unsaved").waitFor();
+      await save(writer, `Say which stiffness: ${word}`);
+    }
+    await page.getByRole("heading", { name: /before you$/ }).waitFor();
+    expect(await violations(page)).toEqual([]);
+    await other.context().close();
   });
 
   test("sign-in, before and after a wrong password", async () => {

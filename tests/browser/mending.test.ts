@@ -48,11 +48,11 @@ test("F2 renames a value wherever it is meant, and says why it will not rename w
   await open(page, "/sets/varnsund/boat-hoist/edit/parts/rope.wright");
   await goBefore(page, "k*q");
   await page.keyboard.press("F2");
-  await page.getByText(/k is used in hoist\.wright too/).waitFor();
+  await page.locator(".message", { hasText: "k is used in hoist.wright too" }).waitFor();
   expect(await page.locator(".rename-box input:visible").count()).toBe(0);
 
   await goBefore(page, "-- upper end");
   await page.keyboard.press("F2");
-  await page.getByText(/Only nodes and values/).waitFor();
+  await page.locator(".message", { hasText: "Only nodes and values" }).waitFor();
   await page.context().close();
 });
