@@ -13,10 +13,12 @@ export async function watch(paths: readonly string[], options: CheckArguments): 
   if (paths.includes("-")) throw new WrongUse("Standard input cannot be watched.");
   const rechecker = new Rechecker(paths, options);
   let exitCode: number | null = null;
-  for await (const changed of changes(() => rechecker.folders())) {
+  for await (const { files, follow } of changes(() => rechecker.folders())) {
     try {
       const first = exitCode === null;
-      const count = rechecker.recheck(changed);
+      const count = rechecker.recheck(files);
+      // Before the report: who has read it may go on at once in a folder that is new.
+      follow();
       if (count === 0 && !first) continue;
       exitCode = await reportRun(rechecker.checked, new Date(), options);
       if (!first) remark(`checked ${count} of ${rechecker.checked.length} again`);
@@ -34,7 +36,9 @@ export async function watch(paths: readonly string[], options: CheckArguments): 
  * Sets of files on disk that changed, one for each time that it got still; the first, empty, comes once all is watched.
  * Ends with an interrupt.
  */
-async function* changes(folders: () => Set<string>): AsyncGenerator<ReadonlySet<string>> {
+async function* changes(
+  folders: () => Set<string>,
+): AsyncGenerator<{ readonly files: ReadonlySet<string>; readonly follow: () => void }> {
   const watchers = new Map<string, FSWatcher>();
   let changed = new Set<string>();
   let ended = false;
@@ -52,12 +56,12 @@ async function* changes(folders: () => Set<string>): AsyncGenerator<ReadonlySet<
     changed.add(file);
     settle();
   };
+  const follow = () => keepWatching(folders(), watchers, note);
   process.once("SIGINT", end).once("SIGTERM", end);
   try {
-    keepWatching(folders(), watchers, note);
-    yield new Set();
+    follow();
+    yield { files: new Set(), follow };
     while (!ended) {
-      keepWatching(folders(), watchers, note);
       await new Promise<void>((resolve) => {
         wake = resolve;
         if (ended) resolve();
@@ -66,7 +70,7 @@ async function* changes(folders: () => Set<string>): AsyncGenerator<ReadonlySet<
       });
       const now = changed;
       changed = new Set();
-      if (!ended && now.size > 0) yield now;
+      if (!ended && now.size > 0) yield { files: now, follow };
     }
   } finally {
     clearTimeout(timer);

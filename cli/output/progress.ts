@@ -25,7 +25,7 @@ export class Progress {
     if (this.#said !== null && now - this.#said < BETWEEN) return;
     this.#said = now;
     const line = `checking ${done + 1} of ${total}: ${inert(name)}`;
-    this.#terminal.write(`\r\u001b[2K${line.slice(0, Math.max(20, (this.#terminal.columns ?? 80) - 1))}`);
+    this.#terminal.write(`\r\u001b[2K${line.slice(0, Math.max(20, (this.#terminal.columns || 80) - 1))}`);
   }
 
   end(): void {

@@ -18,10 +18,14 @@ it("says nothing in the first second, then rewrites one line ten times a second,
   }
   progress.end();
   expect(said).toHaveLength(11);
-  expect(said[0]).toMatch(/^\r\u001b\[2Kchecking 201 of 400: models\/deep\//);
-  // biome-ignore lint/suspicious/noControlCharactersInRegex: what moves the terminal's own line.
-  for (const line of said) expect(line.replace(/^\r\u001b\[2K/, "")).toMatch(/^[^\u0000-\u001f]{0,39}$/);
-  expect(said.at(-1)).toBe("\r\u001b[2K");
+  const clear = "\r\u001b[2K";
+  expect(said[0]).toBe(`${clear}checking 201 of 400: models/deep/deep/d`);
+  for (const line of said) {
+    expect(line.startsWith(clear)).toBe(true);
+    expect(line.slice(clear.length)).not.toContain("\u001b");
+    expect(line.length - clear.length).toBeLessThan(40);
+  }
+  expect(said.at(-1)).toBe(clear);
 });
 
 it("says nothing where nobody looks, and takes nothing away that it has not said", () => {

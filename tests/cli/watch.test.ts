@@ -47,30 +47,31 @@ async function started() {
   return { watching, next };
 }
 
+/** As editors save: beside it, then renamed, so that nobody sees half of it. */
+function save(name: string, text: string): void {
+  place.write("half-written", text);
+  renameSync(path.join(place.folder, "half-written"), path.join(place.folder, name));
+}
+
 it("checks again what a saved file reaches, and nothing else; a new file and a mended one too", async () => {
   const { watching, next } = await started();
 
-  place.write("set/parts/cart.wright", CLEAN.replace("damper = b", "damper = b_"));
+  save("set/parts/cart.wright", CLEAN.replace("damper = b", "damper = b_"));
   const broken = await next();
   expect(broken.said).toBe("checked 2 of 3 again");
   expect(broken.report).toContain("set/parts/cart.wright:13:15: error: ");
 
-  // As editors save: beside it, then renamed.
-  place.write("set/parts/.cart.wright.new", CLEAN);
-  renameSync(
-    path.join(place.folder, "set/parts/.cart.wright.new"),
-    path.join(place.folder, "set/parts/cart.wright"),
-  );
+  save("set/parts/cart.wright", CLEAN);
   expect((await next()).report).not.toContain("set/parts/cart.wright");
 
   mkdirSync(path.join(place.folder, "set/more"));
   await next();
-  place.write("set/more/second.wright", CONFLICT);
+  save("set/more/second.wright", CONFLICT);
   expect((await next()).report).toContain("set/more/second.wright:10:3");
 
-  place.write("set/bondwright.json", "{ ");
+  save("set/bondwright.json", "{ ");
   expect((await next()).said).toContain("bondwright: set/bondwright.json: This is not JSON");
-  place.write("set/bondwright.json", "{}");
+  save("set/bondwright.json", "{}");
   await next();
 
   rmSync(path.join(place.folder, "set/more"), { recursive: true });
@@ -85,8 +86,8 @@ it("keeps no more after 200 saves than before", async () => {
   const { watching, next } = await started();
   const open = () => readdirSync(`/proc/${watching.pid}/fd`).length;
   const before = open();
-  for (let save = 0; save < 200; save++) {
-    place.write("set/parts/cart.wright", `${CLEAN}# save ${save}\n`);
+  for (let count = 0; count < 200; count++) {
+    save("set/parts/cart.wright", `${CLEAN}# save ${count}\n`);
     expect((await next()).said).toBe("checked 2 of 3 again");
   }
   expect(open()).toBe(before);
@@ -96,8 +97,8 @@ it("keeps one text a file", () => {
   const folder = path.join(place.folder, "set");
   const rechecker = new Rechecker([folder], {});
   const file = path.join(folder, "parts/cart.wright");
-  for (let save = 0; save < 200; save++) {
-    place.write("set/parts/cart.wright", `${CLEAN}# save ${save}\n`);
+  for (let count = 0; count < 200; count++) {
+    save("set/parts/cart.wright", `${CLEAN}# save ${count}\n`);
     expect(rechecker.recheck([file])).toBe(2);
   }
   expect(rechecker.kept).toBe(3);
