@@ -15,7 +15,7 @@ function elementsOf(assignments: Assignments, members: readonly Assignment[]): F
 
 const SHOWN = 8;
 
-function bondFacts(assignments: Assignments, bonds: readonly number[]): Fact[] {
+export function bondFacts(assignments: Assignments, bonds: readonly number[]): Fact[] {
   const shown = bonds.slice(0, SHOWN).map((index) => assignments.causal.graph.bonds[index]);
   if (shown.length === 0) return [];
   const rest = bonds.length - shown.length;
@@ -61,18 +61,4 @@ export function implicitNote(
     torn[0].span,
     `The loop has no closed form that the notation allows, so ${unknowns} is found numerically.`,
   );
-}
-
-export function singularLoop(
-  assignments: Assignments,
-  members: readonly Assignment[],
-  bonds: readonly number[],
-): Finding {
-  const { nodes } = assignments.causal.graph;
-  const own = [...new Set(members.map(({ node }) => nodes[node]))];
-  own.sort((a, b) => compareNames(a.name, b.name));
-  const message =
-    `The relations of ${listed(own.map(({ name }) => name))} do not settle their efforts and flows: ` +
-    "one of them follows from the others, or contradicts them.";
-  return finding("singular-junctions", own[0].span, message, { facts: bondFacts(assignments, bonds) });
 }

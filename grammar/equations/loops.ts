@@ -5,11 +5,14 @@ import { compareNames } from "../symbolic/names.ts";
 import { numeratorOf } from "../symbolic/rational-form.ts";
 import { type LinearSolution, solveLinearSystem } from "../symbolic/solve-linear.ts";
 import { substitution } from "../symbolic/substitute.ts";
+import { symbolsOf } from "../symbolic/symbols.ts";
 import { turnRound } from "../symbolic/turn.ts";
 import type { Assignment, Assignments } from "./assignments.ts";
-import { implicitNote, loopFinding, singularLoop } from "./loop-findings.ts";
+import { implicitNote, loopFinding } from "./loop-findings.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import type { Values } from "./paths.ts";
+import { deficiencyOf } from "./rank.ts";
+import type { SingularLoop } from "./singular-loop.ts";
 import { tearLoop } from "./tear.ts";
 import { collected } from "./tidy.ts";
 
@@ -17,7 +20,8 @@ export interface LoopSolution {
   readonly values: ReadonlyMap<Symbol, Expr>;
   readonly loop: AlgebraicLoop | null;
   readonly findings: readonly Finding[];
-  readonly refused: boolean;
+  /** There is no one solution. */
+  readonly singular: SingularLoop | null;
 }
 
 /** Up to this many torn variables a closed form is tried; beyond it, numbers serve better than formulas. */
@@ -69,11 +73,11 @@ export function solveLoop(
     bonds,
   };
   if (solution.kind === "singular") {
-    return { values, loop: null, findings: [singularLoop(assignments, members, bonds)], refused: true };
+    return { values, loop: null, findings: [], singular: { ...solution.why, members, bonds } };
   }
   const findings: Finding[] = alone ? [] : [loopFinding(assignments, members, loop)];
   if (!linear && !loop.solved) findings.push(implicitNote(assignments, torn, loop));
-  if (solution.kind !== "solved") return { values, loop, findings, refused: false };
+  if (solution.kind !== "solved") return { values, loop, findings, singular: null };
 
   const found = new Map<Expr, Expr>(
     unknowns.map((unknown, i) => [unknown, collected(pool, solution.values[i])]),
@@ -87,28 +91,44 @@ export function solveLoop(
     const replaced = replace(value);
     values.set(variable, replaced === value ? value : collected(pool, replaced));
   }
-  return { values, loop: alone ? null : loop, findings, refused: false };
+  return { values, loop: alone ? null : loop, findings, singular: null };
 }
+
+type Solution =
+  | Exclude<LinearSolution, { kind: "singular" }>
+  | { kind: "singular"; why: Pick<SingularLoop, "deficiency" | "proved" | "given"> };
 
 function solveLinearResiduals(
   assignments: Assignments,
   residuals: readonly Expr[],
   unknowns: readonly Symbol[],
-): LinearSolution {
-  if (unknowns.length > CLOSED_FORM_UP_TO) return { kind: "large" };
+): Solution {
   const { pool } = assignments.causal.graph;
   const formOf = linearForms(pool, new Set(unknowns));
   const forms = residuals.map(formOf);
   const matrix = forms.map((form) => unknowns.map((unknown) => form?.coefficients.get(unknown) ?? pool.zero));
   const right = forms.map((form) => pool.negate(form?.constant ?? pool.zero));
-  return solveLinearSystem(pool, matrix, right);
+  const solution: LinearSolution =
+    unknowns.length > CLOSED_FORM_UP_TO ? { kind: "large" } : solveLinearSystem(pool, matrix, right);
+  const deficiency = deficiencyOf(matrix, right, assignments.valueOf);
+  const proved = solution.kind === "singular";
+  if (deficiency === null && solution.kind !== "singular") return solution;
+  const given = symbolsOf(...right.filter((_, i) => !proved || solution.rows.includes(i)));
+  return {
+    kind: "singular",
+    why: {
+      deficiency: deficiency ?? "open",
+      proved,
+      given: [...given].filter(({ role }) => role !== "parameter"),
+    },
+  };
 }
 
 function solveNonlinear(
   assignments: Assignments,
   residuals: readonly Expr[],
   unknowns: readonly Symbol[],
-): LinearSolution {
+): Solution {
   const { pool } = assignments.causal.graph;
   if (unknowns.length !== 1) return { kind: "large" };
   const numerator = numeratorOf(pool, residuals[0]) ?? residuals[0];

@@ -7,6 +7,7 @@ import type { Assignment, Assignments } from "./assignments.ts";
 import { connectedGroups } from "./dependency.ts";
 import { solveLoop } from "./loops.ts";
 import type { AlgebraicLoop } from "./model.ts";
+import { type SingularLoop, singularFindings } from "./singular-loop.ts";
 
 /** What variables have been settled to. */
 export interface Values {
@@ -36,7 +37,7 @@ export function followPaths(assignments: Assignments): Followed {
   const settle = substitution(pool, values, undefined, new ById());
   const loops: AlgebraicLoop[] = [];
   const findings: Finding[] = [];
-  let refused = false;
+  const singular: SingularLoop[] = [];
 
   for (const group of connectedGroups(list.length, (i) => edges[i])) {
     const [first] = group;
@@ -53,11 +54,11 @@ export function followPaths(assignments: Assignments): Followed {
     );
     for (const [variable, value] of solution.values) values.set(variable, value);
     if (solution.loop !== null) loops.push(solution.loop);
-    // Efforts and flows of one ring are singular together: one finding says so.
-    const said = new Set(findings.map(({ message }) => message));
-    findings.push(...solution.findings.filter(({ message }) => !said.has(message)));
-    refused ||= solution.refused;
+    findings.push(...solution.findings);
+    if (solution.singular !== null) singular.push(solution.singular);
   }
+  findings.push(...singularFindings(assignments, singular));
+  const refused = singular.length > 0;
   return { values, loops, findings, refused };
 }
 

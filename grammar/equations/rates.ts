@@ -10,6 +10,7 @@ import { connectedGroups } from "./dependency.ts";
 import { followerRates } from "./follower-rates.ts";
 import { implicitRates, type RateVariable } from "./implicit-rates.ts";
 import type { AlgebraicLoop } from "./model.ts";
+import { deficiencyOf } from "./rank.ts";
 import { collected } from "./tidy.ts";
 
 /** A state whose rate is `rate`, or, where it is null, one that has to satisfy `constraint` = its own value. */
@@ -125,7 +126,7 @@ export function solveRates(
     const mass = forms.map((form) => unknowns.map((unknown) => form?.coefficients.get(unknown) ?? pool.zero));
     const right = forms.map((form) => pool.negate(form?.constant ?? pool.zero));
     const solution = solveLinearSystem(pool, mass, right);
-    if (solution.kind === "singular") {
+    if (solution.kind === "singular" || deficiencyOf(mass, right, valueOf) !== null) {
       singular.push(names);
       return;
     }

@@ -26,6 +26,7 @@ it("the examples that are not run yet are these", () => {
   expect(later).toEqual([
     "run-stopped",
     "check-stopped",
+    "not-yet",
     "curve-left",
     "unstable-trial",
     "energy-not-closed",
