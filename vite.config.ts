@@ -35,6 +35,8 @@ const commandLine: UserConfig = {
     ssr: "cli/main.ts",
     target: "node20",
     outDir: "build/cli",
+    // Node.js reads the whole file at each start: half as much of it is a tenth of the time that a small check takes.
+    minify: true,
     rolldownOptions: { output: { entryFileNames: "bondwright.mjs", codeSplitting: false } },
   },
   plugins: [
