@@ -44,12 +44,12 @@ function filtered(
   { system, trial }: CheckFilter,
   cache: TreeCache,
 ): FileReport {
-  if (trial === undefined) return checkFile(files, path, { system, cache });
+  if (trial === undefined) return checkFile(files, path, { system, cache, trials: true });
   // The whole file is read once for its tree; checks of other systems than the trial's are not asked for.
   const { tree } = checkFile(files, path, { system: "", cache });
   const asked = trialsOf(tree).find(({ name }) => name.text === trial);
   const only = system ?? asked?.system.text ?? "";
-  const report = checkFile(files, path, { system: only, cache });
+  const report = checkFile(files, path, { system: only, cache, trials: trial });
   return asked === undefined ? report : withoutOtherTrials(report, asked);
 }
 

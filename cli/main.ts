@@ -119,6 +119,23 @@ program
   });
 
 program
+  .command("run")
+  .description("run the trials of a file: signals, energy, requirements")
+  .argument("<file>", "a .wright file, or - for standard input")
+  .option("--trial <name>", "this trial of the file (default: all)")
+  .option("--system <name>", "only trials of this system")
+  .addOption(
+    new Option("--format <form>", "form of the report").choices(["text", "json", "csv"]).default("text"),
+  )
+  .addOption(color())
+  .addOption(stdinName())
+  .addHelpText("after", ROOT_HELP + EXIT_HELP)
+  .action(async (file, options) => {
+    const { run } = await import("./commands/run.ts");
+    process.exitCode = run(file, options);
+  });
+
+program
   .command("format")
   .description("bring files into the notation's one layout")
   .argument("[paths...]", "files, folders with all .wright files below, or - for standard input", ["."])

@@ -84,7 +84,15 @@ export function checkFile(files: FileSet, path: string, options: CheckOptions = 
     ...systems.flatMap((system) => system.findings),
     ...trials.flatMap((trial) => trial.findings),
   ];
-  return { path, tree, systems, trials, findings: inTextOrder(findings, path) };
+  const judged = systems.map((system) => ({
+    ...system,
+    expectations: [...system.expectations, ...trials.flatMap((one) => resultsOf(one, system.system))],
+  }));
+  return { path, tree, systems: judged, trials, findings: inTextOrder(findings, path) };
+}
+
+function resultsOf({ trial, expectations }: TrialReport, system: string): readonly ExpectationResult[] {
+  return trial.system === system ? expectations : [];
 }
 
 /** The model a trial runs: that of its system here, or derived for it where the system comes from another file. */

@@ -1,6 +1,15 @@
 import type { Expr } from "../symbolic/expression.ts";
 import { nameLatex, symbolLatex } from "./latex-name.ts";
-import { type Factor, numberText, type Quotient, quotientOf, splitNumber, termsOf } from "./shape.ts";
+import {
+  type Factor,
+  numberText,
+  type Quotient,
+  quotientOf,
+  type SignedTerm,
+  splitNumber,
+  takesMinus,
+  termsOf,
+} from "./shape.ts";
 
 export interface LatexOptions {
   /** Put round each top-level summand, whose index is its place among the sum's arguments: `\htmlData{term=3}`. */
@@ -25,6 +34,7 @@ interface Piece {
   readonly expr: Expr;
   readonly level: number;
   readonly unsigned: boolean;
+  readonly turned: boolean;
   /** How many groups of braces this stands in: readers of LaTeX recurse, so depth is bounded. */
   readonly depth: number;
 }
@@ -41,6 +51,11 @@ export function expressionLatex(expr: Expr, options: LatexOptions = {}): string 
   return lines(expr, options).join("\\\\ ");
 }
 
+/** A summand without the sign that stands before it. */
+export function termLatex({ term, turned }: SignedTerm): string {
+  return render({ expr: term, level: LEVEL.product, unsigned: true, turned, depth: 0 });
+}
+
 /** `left = right`, over several aligned lines where the sum is long. */
 export function equationLatex(left: string, right: Expr, options: LatexOptions = {}): string {
   const [first, ...more] = lines(right, options);
@@ -51,13 +66,14 @@ export function equationLatex(left: string, right: Expr, options: LatexOptions =
 function lines(expr: Expr, { mark, termsPerLine = 0 }: LatexOptions): string[] {
   const perLine = termsPerLine > 0 ? termsPerLine : Number.POSITIVE_INFINITY;
   const out: string[] = [];
-  termsOf(expr).forEach(({ term, index, negative }, place) => {
+  termsOf(expr).forEach(({ term, index, negative, turned }, place) => {
     const sign = place === 0 ? (negative ? "-" : "") : negative ? "- " : "+ ";
     const single = expr.op !== "sum";
     const body = render({
       expr: term,
       level: single ? LEVEL.where : LEVEL.product,
       unsigned: true,
+      turned,
       depth: 0,
     });
     // The empty group keeps the sign a binary one, with its spaces, at the start of the marked group.
@@ -87,11 +103,12 @@ function render(root: Piece): string {
 }
 
 function write(piece: Piece): Task[] {
-  const { expr, level, unsigned } = piece;
+  const { expr, level, unsigned, turned } = piece;
   const inside = (arg: Expr, at: number): Piece => ({
     expr: arg,
     level: at,
     unsigned: false,
+    turned: false,
     depth: piece.depth + 1,
   });
   switch (expr.op) {
@@ -102,7 +119,12 @@ function write(piece: Piece): Task[] {
     case "number":
     case "product":
     case "power":
-      return quotient(quotientOf(expr), level, unsigned, piece.depth);
+      return quotient(
+        quotientOf(expr, turned || (!unsigned && takesMinus(expr))),
+        level,
+        unsigned,
+        piece.depth,
+      );
     case "call":
       return call(expr, inside);
     case "curve": {
@@ -179,10 +201,10 @@ function joined(pieces: readonly Task[], separator: string): Task[] {
   return pieces.flatMap((piece, i) => (i === 0 ? [piece] : [separator, piece]));
 }
 
-function sum({ expr, depth }: Piece): Task[] {
-  return termsOf(expr).flatMap(({ term, negative }, place): Task[] => {
+function sum({ expr, depth, turned: allTurned }: Piece): Task[] {
+  return termsOf(expr, allTurned).flatMap(({ term, negative, turned }, place): Task[] => {
     const sign = place === 0 ? (negative ? "-" : "") : negative ? " - " : " + ";
-    return [sign, { expr: term, level: LEVEL.product, unsigned: true, depth: depth + 1 }];
+    return [sign, { expr: term, level: LEVEL.product, unsigned: true, turned, depth: depth + 1 }];
   });
 }
 
@@ -222,14 +244,25 @@ function times(number: number, factors: readonly Factor[], depth: number, bare: 
   return parts.flatMap((part, i): Task[] => (i === 0 ? part : [" \\, ", ...part]));
 }
 
-function isRoot({ exponent }: Factor): boolean {
-  return exponent === 0.5;
+/** Written within its own sign, which holds together of itself. */
+function isRoot(factor: Factor): boolean {
+  return factor.kind !== "power" || factor.exponent === 0.5;
 }
 
 function power(factor: Factor, depth: number, bare: boolean): Task[] {
+  if (factor.kind !== "power") {
+    const inside = quotient(factor.of, LEVEL.where, false, depth);
+    return factor.kind === "root" ? ["\\sqrt{", ...inside, "}"] : ["\\left|", ...inside, "\\right|"];
+  }
   const { base, exponent } = factor;
-  const part = (expr: Expr, level: number): Piece => ({ expr, level, unsigned: false, depth });
-  if (exponent === 1) return [part(base, bare ? LEVEL.where : LEVEL.factor)];
+  const part = (expr: Expr, level: number, turned = false): Piece => ({
+    expr,
+    level,
+    unsigned: false,
+    turned,
+    depth,
+  });
+  if (exponent === 1) return [part(base, bare ? LEVEL.where : LEVEL.factor, factor.turned)];
   if (isRoot(factor)) return ["\\sqrt{", part(base, LEVEL.where), "}"];
   if (typeof exponent !== "number")
     return ["{", part(base, LEVEL.base), "}^{", part(exponent, LEVEL.where), "}"];

@@ -1,4 +1,5 @@
 import { LinearDocument, RatesDocument } from "./linear-schemas.ts";
+import { RunDocument } from "./run-schemas.ts";
 import { CheckDocument, EquationsDocument } from "./schemas.ts";
 
 /** By file name under `public/schemas`. */
@@ -7,4 +8,5 @@ export const SCHEMAS = {
   check: CheckDocument,
   linear: LinearDocument,
   rates: RatesDocument,
+  run: RunDocument,
 } as const;

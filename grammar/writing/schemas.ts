@@ -135,6 +135,7 @@ export const CheckDocument = z.strictObject({
       passed: z.boolean(),
       measured: z.string().nullable(),
       wanted: z.string(),
+      margin: z.string().nullable().optional().describe("Of a trial: how far it is from failing"),
       message: z.string().nullable(),
     }),
   ),

@@ -1,21 +1,31 @@
 import { fractionOf } from "../symbolic/exact.ts";
 import type { Expr } from "../symbolic/expression.ts";
+import { engineeringText } from "../units/engineering-text.ts";
+import { joinModuli, joinRoots } from "./joined-factors.ts";
 
 /**
  * How people write what the pool keeps in canonical form: differences instead of products with -1, quotients instead
- * of negative powers, roots instead of powers of a half. Text and LaTeX both write from these shapes.
+ * of negative powers, roots instead of powers of a half, one root instead of many, `J*(T - m)` instead of
+ * `-J*(m - T)`. Text and LaTeX both write from these shapes.
  */
 export interface SignedTerm {
   readonly term: Expr;
   /** The place among the sum's arguments, whatever the place on paper. */
   readonly index: number;
   readonly negative: boolean;
+  /** A difference in it is written the other way round, and `negative` is what that leaves to write. */
+  readonly turned: boolean;
 }
 
-export interface Factor {
+export type Factor = Power | { readonly kind: "root" | "modulus"; readonly of: Quotient };
+
+export interface Power {
+  readonly kind: "power";
   readonly base: Expr;
   /** A positive number where it is a number. */
   readonly exponent: number | Expr;
+  /** The base is a difference that is written the other way round. */
+  readonly turned: boolean;
 }
 
 export interface Quotient {
@@ -27,11 +37,23 @@ export interface Quotient {
   readonly below: readonly Factor[];
 }
 
-/** The terms in the order of the pool; but a sum that would start with a minus starts with its first positive term. */
-export function termsOf(sum: Expr): SignedTerm[] {
+/**
+ * The terms in the order of the pool, of a sum as it is or with every sign turned; but a sum that would start with a
+ * minus starts with its first positive term, or with one that a turned difference makes positive.
+ */
+export function termsOf(sum: Expr, turned = false): SignedTerm[] {
   const args = sum.op === "sum" ? sum.args : [sum];
-  const terms = args.map((term, index) => ({ term, index, negative: isNegative(term) }));
-  const first = terms.findIndex(({ negative }) => !negative);
+  const terms = args.map((term, index) => {
+    const negative = isNegative(term) !== turned;
+    return negative && turnable(term, offsetFrom)
+      ? { term, index, negative: false, turned: true }
+      : { term, index, negative, turned: false };
+  });
+  let first = terms.findIndex(({ negative }) => !negative);
+  if (first === -1) {
+    first = terms.findIndex(({ term }) => turnable(term, difference));
+    if (first !== -1) terms[first] = { ...terms[first], negative: false, turned: true };
+  }
   if (first > 0) terms.unshift(...terms.splice(first, 1));
   return terms;
 }
@@ -41,25 +63,61 @@ export function isNegative(term: Expr): boolean {
   return head.op === "number" && (head.value < 0 || Object.is(head.value, -0));
 }
 
-/** A product, power, number or any other expression as a signed quotient. */
-export function quotientOf(expr: Expr): Quotient {
+/** A sum that holds a minus, or could, may take the minus of its product. */
+function difference(factor: Expr): boolean {
+  return factor.op === "sum" && factor.args.some((arg) => isNegative(arg) || turnable(arg, offsetFrom));
+}
+
+/** `1 - exp(x)`: with nothing but numbers before the minus it reads better the other way round in any case. */
+function offsetFrom(factor: Expr): boolean {
+  if (factor.op !== "sum" || !factor.args.some(isNegative)) return false;
+  return factor.args.every((arg) => arg.op === "number" || isNegative(arg));
+}
+
+function turnable(term: Expr, by: (factor: Expr) => boolean): boolean {
+  return term.op === "product" && term.args.some(by);
+}
+
+/** A term whose minus a difference within it can take, when it stands alone. */
+export function takesMinus(term: Expr): boolean {
+  return isNegative(term) && turnable(term, difference);
+}
+
+/** A product, power, number or any other expression as a signed quotient; of its negative where it is turned. */
+export function quotientOf(expr: Expr, turned = false): Quotient {
+  const shape = bareQuotientOf(expr, turned);
+  return joinModuli(joinRoots(shape, bareQuotientOf));
+}
+
+function bareQuotientOf(expr: Expr, turned = false): Quotient {
   const factors = expr.op === "product" ? expr.args : [expr];
+  const opposed = turned ? (factors.find(offsetFrom) ?? factors.find(difference)) : undefined;
   let value = 1;
-  const above: Factor[] = [];
-  const below: Factor[] = [];
+  const above: Power[] = [];
+  const below: Power[] = [];
   for (const factor of factors) {
     if (factor.op === "number") value *= factor.value;
-    else if (factor.op !== "power") above.push({ base: factor, exponent: 1 });
+    else if (factor.op !== "power")
+      above.push({ kind: "power", base: factor, exponent: 1, turned: factor === opposed });
     else {
       const [base, exponent] = factor.args;
-      if (exponent.op !== "number") above.push({ base, exponent });
-      else if (exponent.value < 0) below.push({ base, exponent: -exponent.value });
-      else above.push({ base, exponent: exponent.value });
+      const side = exponent.op === "number" && exponent.value < 0 ? below : above;
+      side.push({ kind: "power", turned: false, ...flattened(base, exponent) });
     }
   }
   const size = Math.abs(value);
   const { coefficient, divisor } = splitNumber(size, above.length + below.length > 0);
-  return { negative: value < 0, coefficient, divisor, above, below };
+  return { negative: value < 0 !== turned, coefficient, divisor, above, below };
+}
+
+/** The root of a quotient in a power of a whole exponent is written as one power: x^(3/2), 1/sqrt(x). */
+function flattened(base: Expr, exponent: Expr): { base: Expr; exponent: number | Expr } {
+  if (exponent.op !== "number") return { base, exponent };
+  const size = Math.abs(exponent.value);
+  if (base.op !== "power" || base.args[1].op !== "number") return { base, exponent: size };
+  const inner = base.args[1].value;
+  const whole = Number.isInteger(inner * size) || Number.isInteger(inner);
+  return whole || inner < 0 ? { base, exponent: size } : { base: base.args[0], exponent: inner * size };
 }
 
 /** x/2 and 2*x/3, but 0.35*x: a fraction where a decimal would be long, or where it is halves, quarters or eighths. */
@@ -77,9 +135,9 @@ const MOST_DIVISOR = 1000;
 const SHORT_DECIMAL = 8;
 const HALVES: ReadonlySet<number> = new Set([2, 4, 8]);
 
-/** The shortest decimal that reads back as the same number. */
+/** The shortest decimal that reads back as the same number: `81.6`, `1.2e9`, `22e-6`. */
 export function numberText(value: number): string {
   if (Number.isNaN(value)) return "nan";
   if (!Number.isFinite(value)) return value > 0 ? "inf" : "-inf";
-  return String(value).replace("e+", "e");
+  return engineeringText(value);
 }

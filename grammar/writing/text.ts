@@ -1,5 +1,14 @@
 import type { Expr } from "../symbolic/expression.ts";
-import { type Factor, numberText, type Quotient, quotientOf, splitNumber, termsOf } from "./shape.ts";
+import {
+  type Factor,
+  numberText,
+  type Quotient,
+  quotientOf,
+  type SignedTerm,
+  splitNumber,
+  takesMinus,
+  termsOf,
+} from "./shape.ts";
 
 /** How strongly an expression holds together; brackets stand where less would do than the place asks for. */
 const LEVEL = {
@@ -20,6 +29,8 @@ interface Piece {
   readonly level: number;
   /** The sign has been written already. */
   readonly unsigned: boolean;
+  /** The negative of it is meant, by a difference written the other way round. */
+  readonly turned: boolean;
 }
 
 type Task = string | Piece;
@@ -32,9 +43,18 @@ const LONGEST = 4_000_000;
  * `armature->motor.e` for the effort of a bond. Without recursion and linear in the length of the text.
  */
 export function expressionText(expr: Expr): string {
+  return render(piece(expr, LEVEL.where));
+}
+
+/** A summand without the sign that stands before it. */
+export function termText({ term, turned }: SignedTerm): string {
+  return render(piece(term, LEVEL.product, true, turned));
+}
+
+function render(root: Piece): string {
   const out: string[] = [];
   let length = 0;
-  const tasks: Task[] = [piece(expr, LEVEL.where)];
+  const tasks: Task[] = [root];
   for (let task = tasks.pop(); task !== undefined; task = tasks.pop()) {
     if (typeof task === "string") {
       out.push(task);
@@ -48,20 +68,20 @@ export function expressionText(expr: Expr): string {
   return out.join("");
 }
 
-function piece(expr: Expr, level: number, unsigned = false): Piece {
-  return { expr, level, unsigned };
+function piece(expr: Expr, level: number, unsigned = false, turned = false): Piece {
+  return { expr, level, unsigned, turned };
 }
 
-function write({ expr, level, unsigned }: Piece): Task[] {
+function write({ expr, level, unsigned, turned }: Piece): Task[] {
   switch (expr.op) {
     case "symbol":
       return [symbolText(expr)];
     case "sum":
-      return bracketed(LEVEL.sum, level, sum(expr));
+      return bracketed(LEVEL.sum, level, sum(expr, turned));
     case "number":
     case "product":
     case "power":
-      return quotient(quotientOf(expr), level, unsigned);
+      return quotient(quotientOf(expr, turned || (!unsigned && takesMinus(expr))), level, unsigned);
     case "call":
       return [expr.name, "(", ...joined(expr.args, ", ", LEVEL.where), ")"];
     case "curve":
@@ -116,10 +136,10 @@ function joined(args: readonly Expr[], separator: string, level: number): Task[]
   return args.flatMap((arg, i): Task[] => (i === 0 ? [piece(arg, level)] : [separator, piece(arg, level)]));
 }
 
-function sum(expr: Expr): Task[] {
-  return termsOf(expr).flatMap(({ term, negative }, i): Task[] => {
+function sum(expr: Expr, allTurned: boolean): Task[] {
+  return termsOf(expr, allTurned).flatMap(({ term, negative, turned }, i): Task[] => {
     const sign = i === 0 ? (negative ? "-" : "") : negative ? " - " : " + ";
-    return [sign, piece(term, LEVEL.product, true)];
+    return [sign, piece(term, LEVEL.product, true, turned)];
   });
 }
 
@@ -148,13 +168,16 @@ function times(factors: readonly Task[][]): Task[] {
   return factors.flatMap((factor, i) => (i === 0 ? factor : ["*", ...factor]));
 }
 
-function isRoot({ exponent }: Factor): boolean {
-  return exponent === 0.5;
+/** Written as a call, which holds together of itself. */
+function isRoot(factor: Factor): boolean {
+  return factor.kind !== "power" || factor.exponent === 0.5;
 }
 
 function power(factor: Factor): Task[] {
-  const { base, exponent } = factor;
-  if (exponent === 1) return [piece(base, LEVEL.factor)];
+  if (factor.kind !== "power")
+    return [factor.kind === "root" ? "sqrt(" : "abs(", ...quotient(factor.of, LEVEL.where, false), ")"];
+  const { base, exponent, turned } = factor;
+  if (exponent === 1) return [piece(base, LEVEL.factor, false, turned)];
   if (isRoot(factor)) return ["sqrt(", piece(base, LEVEL.where), ")"];
   if (typeof exponent !== "number") return [piece(base, LEVEL.base), "^", piece(exponent, LEVEL.base)];
   const { coefficient, divisor } = splitNumber(exponent, true);

@@ -50,6 +50,28 @@ describe("expressionText", () => {
       "a where not (x < 0 or x > 1) else b",
       pool.where(pool.not(pool.or(pool.compare("<", x, n(0)), pool.compare(">", x, n(1)))), a, b),
     ],
+    ["b*(x - a)/c", pool.divide(pool.product(n(-1), b, pool.subtract(a, x)), c)],
+    ["-b*(a + x)/c", pool.divide(pool.product(n(-1), b, pool.sum(a, x)), c)],
+    ["x - b*(a - c)", pool.subtract(x, pool.product(b, pool.subtract(a, c)))],
+    [
+      "a*(exp(x) - 1) - b",
+      pool.subtract(pool.negate(b), pool.product(a, pool.subtract(n(1), pool.call("exp", x)))),
+    ],
+    ["sqrt(2*x)", pool.call("sqrt", pool.product(n(2), x))],
+    [
+      "a*sqrt(2*abs(x)/c)*sign(x)",
+      pool.product(
+        a,
+        pool.call("sqrt", pool.divide(pool.product(n(2), pool.call("abs", x)), c)),
+        pool.call("sign", x),
+      ),
+    ],
+    ["sqrt(a)*sqrt(2*b)", pool.product(...[n(2), a, b].map((one) => pool.call("sqrt", one)))],
+    ["sqrt(abs(a*x/b))", pool.call("sqrt", pool.call("abs", pool.divide(pool.product(a, x), b)))],
+    ["abs(a*x)", pool.call("abs", pool.product(a, x))],
+    ["a/sqrt(2*x)", pool.divide(a, pool.call("sqrt", pool.product(n(2), x)))],
+    ["1.2e9*x", pool.product(n(1.2e9), x)],
+    ["22e-6*x", pool.product(n(22e-6), x)],
     ["-3", n(-3)],
     ["0", n(0)],
   ];
