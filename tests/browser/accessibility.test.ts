@@ -81,19 +81,21 @@ describe.each(["light", "dark"] as const)("in the %s setting", (colorScheme) => 
   test("two versions of a file that two people changed", async () => {
     const rope = `${SET}/edit/parts/rope.wright`;
     const other = await seat(browser, server.origin, "release_keeper");
-    await open(page, rope);
+    const mine = await seat(browser, server.origin, "modeller", { colorScheme });
+    await open(mine, rope);
     await open(other, rope);
     for (const [writer, word] of [
-      [other, "static "],
-      [page, "measured "],
+      [other, "free "],
+      [mine, "held "],
     ] as const) {
-      await goBefore(writer, "-- damping");
-      await writer.keyboard.type(word + colorScheme);
+      await goBefore(writer, "upper end");
+      await writer.keyboard.type(`${word}${colorScheme} `);
       await writer.getByText("1 file unsaved").waitFor();
-      await save(writer, `Say which stiffness: ${word}`);
+      await save(writer, `Say which end: ${word}`);
     }
-    await page.getByRole("heading", { name: /before you$/ }).waitFor();
-    expect(await violations(page)).toEqual([]);
+    await mine.getByRole("heading", { name: /before you$/ }).waitFor();
+    expect(await violations(mine)).toEqual([]);
+    await mine.context().close();
     await other.context().close();
   });
 
