@@ -1,13 +1,13 @@
 import { type Fact, type Finding, finding } from "../diagnostics/finding.ts";
-import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Symbol } from "../symbolic/expression.ts";
 import { compareNames } from "../symbolic/names.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import type { Dependence } from "./dependence.ts";
-import { settledBy } from "./dependence.ts";
 import { listed } from "./listed.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import type { SolvedRates } from "./rates.ts";
+import { settledBy } from "./settled-by.ts";
 
 /** How far back along its causal path a dependence is followed for the facts of a finding. */
 const PATH_LIMIT = 60;
@@ -30,8 +30,12 @@ export function dependenceFinding(
   return finding("derivative-causality", span, message, { facts: pathFacts(assignments, store) });
 }
 
-export function inputRateFinding(assignments: Assignments, store: Store, value: Expr): Finding | null {
-  const inputs = named([...symbolsOf(value)], "input");
+export function inputRateFinding(
+  assignments: Assignments,
+  store: Store,
+  settledBy: ReadonlySet<Symbol>,
+): Finding | null {
+  const inputs = named([...settledBy], "input");
   if (inputs.length === 0) return null;
   const { span, name } = assignments.causal.graph.nodes[store.node];
   const message =

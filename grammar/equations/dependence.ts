@@ -1,12 +1,12 @@
-import type { Expr, Symbol } from "../symbolic/expression.ts";
+import type { Expr } from "../symbolic/expression.ts";
 import { linearForms } from "../symbolic/linear.ts";
 import type { Pool } from "../symbolic/pool.ts";
 import { rationalForm } from "../symbolic/rational-form.ts";
-import { symbolsOf } from "../symbolic/symbols.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import type { Values } from "./paths.ts";
 import { RateFinder } from "./rates.ts";
+import { restsOnRates } from "./settled-by.ts";
 import { collected } from "./tidy.ts";
 
 export interface Tied {
@@ -68,23 +68,4 @@ function withoutCancelled(pool: Pool, value: Expr, finder: RateFinder): Expr {
     : terms.length <= form.coefficients.size
       ? pool.sum(terms)
       : value;
-}
-
-/** Through what a loop leaves unknown, whose residual holds a rate. */
-function restsOnRates(value: Expr, loops: readonly AlgebraicLoop[]): boolean {
-  if (!loops.some(({ solved }) => !solved)) return false;
-  for (const { role } of settledBy(value, loops)) if (role === "rate") return true;
-  return false;
-}
-
-/** The symbols that settle a value, with those in the residuals of what loops leave unknown in it. */
-export function settledBy(value: Expr, loops: readonly AlgebraicLoop[]): ReadonlySet<Symbol> {
-  const found = new Set(symbolsOf(value));
-  // A set visits what is added to it on the way.
-  for (const symbol of found) {
-    if (symbol.role !== "unknown") continue;
-    const loop = loops.find(({ variables }) => variables.some((variable) => variable.symbol === symbol));
-    for (const each of symbolsOf(...(loop?.residuals ?? []))) found.add(each);
-  }
-  return found;
 }

@@ -7,7 +7,7 @@ import type { Pool } from "../symbolic/pool.ts";
 import { substitution } from "../symbolic/substitute.ts";
 import { symbolsOf } from "../symbolic/symbols.ts";
 import { type Assignments, assignmentsOf } from "./assignments.ts";
-import { classifyStores, settledBy } from "./dependence.ts";
+import { classifyStores } from "./dependence.ts";
 import {
   dependenceFinding,
   implicitRateNotes,
@@ -18,6 +18,7 @@ import { implicitSystem } from "./implicit-system.ts";
 import type { DependentStore, ModelInput, RateEquation, StateModel } from "./model.ts";
 import { followPaths } from "./paths.ts";
 import { type Follower, RateFinder, type SolvedRates, solveRates } from "./rates.ts";
+import { settledBy } from "./settled-by.ts";
 import { startValues } from "./start.ts";
 import { dependentStore, stateOf, stateRows } from "./states.ts";
 import { collected, tidy } from "./tidy.ts";
@@ -76,7 +77,7 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
 
   const inputs = modelInputs(assignments, solved, dependent);
   for (const { store, value } of dependence.followers) {
-    const driven = inputRateFinding(assignments, store, value);
+    const driven = inputRateFinding(assignments, store, settledBy(value, followed.loops));
     if (driven !== null) findings.push(driven);
   }
   const model: StateModel = {

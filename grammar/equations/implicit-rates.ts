@@ -22,16 +22,16 @@ export interface ImplicitRates {
 /**
  * Rates that enter their own equations in no linear way: a mass whose motion a law f = φ(e) fixes, with e holding the
  * force that moves it. One alone is turned round where the notation does that for laws; otherwise the rates are
- * unknowns that the residuals settle.
+ * unknowns that the residuals settle. Without `valueOf` nothing is turned round: other loops hold the rates too.
  */
 export function implicitRates(
   pool: Pool,
   rateSymbols: readonly Symbol[],
   variables: readonly RateVariable[],
   residuals: readonly Expr[],
-  valueOf: ValueOf,
+  valueOf: ValueOf | null,
 ): ImplicitRates {
-  if (rateSymbols.length === 1) {
+  if (rateSymbols.length === 1 && valueOf !== null) {
     const [only] = rateSymbols;
     const closed = turnRound(pool, residuals[0], only, pool.zero, valueOf);
     if (closed !== null) return { rates: new Map([[only, closed]]), loop: null };

@@ -51,14 +51,14 @@ export function implicitNote(
 ): Finding {
   const { nodes } = assignments.causal.graph;
   const stubborn = torn.find(({ residual }) => residual !== null);
-  const unknowns = listed(loop.variables.map(({ name }) => name));
+  const unknowns = `${listed(loop.variables.map(({ name }) => name))} ${loop.variables.length === 1 ? "is" : "are"}`;
   if (stubborn !== undefined) {
-    const message = `The law of \`${nodes[stubborn.node].name}\` can't be turned round, so ${unknowns} is found numerically from it.`;
+    const message = `The law of \`${nodes[stubborn.node].name}\` can't be turned round, so ${unknowns} found numerically from it.`;
     return finding("implicit-equation", stubborn.span, message);
   }
   return finding(
     "implicit-equation",
     torn[0].span,
-    `The loop has no closed form that the notation allows, so ${unknowns} is found numerically.`,
+    `The loop has no closed form that the notation allows, so ${unknowns} found numerically.`,
   );
 }

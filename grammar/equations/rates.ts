@@ -11,6 +11,7 @@ import { followerRates } from "./follower-rates.ts";
 import { implicitRates, type RateVariable } from "./implicit-rates.ts";
 import type { AlgebraicLoop } from "./model.ts";
 import { deficiencyOf } from "./rank.ts";
+import { restsOnRates } from "./settled-by.ts";
 import { collected } from "./tidy.ts";
 
 /** A state whose rate is `rate`, or, where it is null, one that has to satisfy `constraint` = its own value. */
@@ -115,9 +116,10 @@ export function solveRates(
     });
     const formOf = linearForms(pool, new Set(unknowns));
     const forms = residuals.map(formOf);
-    if (forms.some((form) => form === null)) {
+    const hidden = residuals.some((residual) => restsOnRates(residual, loops));
+    if (hidden || forms.some((form) => form === null)) {
       const variables = states.map(({ item }) => (item as RateRow).rateVariable);
-      const found = implicitRates(pool, unknowns, variables, residuals, valueOf);
+      const found = implicitRates(pool, unknowns, variables, residuals, hidden ? null : valueOf);
       for (const [rate, value] of found.rates) rates.set(rate, value);
       if (found.loop !== null) implicit.push({ names, loop: found.loop });
       finishDependent(dependent, inside);

@@ -2,12 +2,13 @@ import { compareNames, type FlatTrack } from "../resolve/graph.ts";
 import type { Expr } from "../symbolic/expression.ts";
 import type { Assignments, Store } from "./assignments.ts";
 import { coEnergyOf } from "./coenergy-value.ts";
-import { type Dependence, settledBy, type Tied } from "./dependence.ts";
+import type { Dependence, Tied } from "./dependence.ts";
 import type { RateVariable } from "./implicit-rates.ts";
 import { variableName } from "./loops.ts";
 import type { AlgebraicLoop, DependentStore, State } from "./model.ts";
 import type { Values } from "./paths.ts";
 import type { RateRow } from "./rates.ts";
+import { settledBy } from "./settled-by.ts";
 
 /** A state with what it came from. */
 export interface StateRow extends RateRow {
