@@ -5,10 +5,10 @@ import type { FlatGraph } from "../../grammar/resolve/graph.ts";
 import type { Span } from "../../grammar/source/span.ts";
 import type { Expr } from "../../grammar/symbolic/expression.ts";
 import { symbolsOf } from "../../grammar/symbolic/symbols.ts";
-import { expressionLatex } from "../../grammar/writing/latex.ts";
+import { expressionLatex, termLatex } from "../../grammar/writing/latex.ts";
 import { dotted, nameLatex } from "../../grammar/writing/latex-name.ts";
 import { termsOf } from "../../grammar/writing/shape.ts";
-import { expressionText } from "../../grammar/writing/text.ts";
+import { expressionText, termText } from "../../grammar/writing/text.ts";
 import { DARK, type Light } from "./light.ts";
 import { shownIn } from "./shown-number.ts";
 import { formula } from "./typeset.ts";
@@ -141,13 +141,12 @@ function equation(
  */
 function tracedTerms(graph: FlatGraph, model: StateModel, right: Expr, what: Expr | string): TermView[] {
   const traces = new Map(traceTerms(model, what).map((traced) => [traced.term, traced]));
-  return termsOf(right).map(({ term, negative }) => {
+  return termsOf(right).map((signed) => {
+    const { term, negative } = signed;
     const { nodes, bonds } = traces.get(term) ?? { nodes: [], bonds: [] };
-    const { text, latex } = written(term);
-    const bare = (signed: string) => (negative ? signed.replace(/^-\s*/, "") : signed);
     return {
       sign: negative ? "-" : "+",
-      formula: formula(bare(text), bare(latex)),
+      formula: formula(termText(signed), termLatex(signed)),
       nodes: nodes.map((node) => graph.nodes[node].name),
       bonds: bonds.map((bond) => graph.bonds[bond].id),
       values: [...symbolsOf(term)]

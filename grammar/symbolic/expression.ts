@@ -67,6 +67,8 @@ export interface Expr {
   readonly role: SymbolRole | null;
   /** Of a curve: its points; one object for equal data in a pool. */
   readonly curve: Curve | null;
+  /** Known to be ≥ 0 wherever it is defined, whatever its symbols are. */
+  readonly nonNegative: boolean;
 }
 
 export type Symbol = Expr & { readonly op: "symbol"; readonly role: SymbolRole };

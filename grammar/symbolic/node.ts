@@ -12,7 +12,6 @@ export class Node implements Expr {
   readonly curve: Curve | null;
   /** The highest role of a symbol in it, as an index of SYMBOL_ROLES; -1 for a number. */
   readonly rank: number;
-  /** Known to be ≥ 0 wherever it is defined, whatever its symbols are. */
   readonly nonNegative: boolean;
   readonly hash: number;
   /** Has the factor sin(x)^2, which may meet a cos(x)^2. */

@@ -1,5 +1,6 @@
 import { fromSI } from "./convert.ts";
 import { equal, isDimensionless, multiply, power } from "./dimension.ts";
+import { engineeringText } from "./engineering-text.ts";
 import { parseUnit } from "./parse-unit.ts";
 import type { Dimension, Unit } from "./unit.ts";
 
@@ -110,8 +111,8 @@ export function readableQuantity(
   return quantityText(value, unitOf(dimension, preferred));
 }
 
-/** Up to `digits` significant digits, never more than needed: `0.25`, `1.2e-7`, `81.6`. */
+/** Up to `digits` significant digits, never more than needed: `0.25`, `120e-9`, `81.6`. */
 export function numberText(value: number, digits = 4): string {
   if (!Number.isFinite(value)) return Number.isNaN(value) ? "nan" : value > 0 ? "inf" : "-inf";
-  return String(Number(value.toPrecision(digits)));
+  return engineeringText(Number(value.toPrecision(digits)));
 }

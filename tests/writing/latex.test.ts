@@ -63,12 +63,17 @@ describe("expressionLatex", () => {
     ["\\frac{a + b}{x}", pool.divide(pool.sum(a, b), x)],
     ["\\left(a + b\\right) \\, x", pool.product(pool.sum(a, b), x)],
     ["\\sqrt{a + x}", pool.power(pool.sum(a, x), n(0.5))],
+    [
+      "\\sqrt{\\frac{2 \\, \\left|x\\right|}{a}}",
+      pool.call("sqrt", pool.divide(pool.product(n(2), pool.call("abs", x)), a)),
+    ],
+    ["\\frac{a \\, \\left(x - b\\right)}{x}", pool.divide(pool.product(n(-1), a, pool.subtract(b, x)), x)],
     ["{x}^{2}", pool.power(x, n(2))],
     ["{\\left(a \\, x\\right)}^{b}", pool.power(pool.product(a, x), b)],
     ["\\dot{p}_{\\mathrm{hull}}", pool.symbol("rate", "hull.p")],
     ["e_{\\mathrm{a}\\to \\mathrm{b}}", pool.symbol("effort", "a->b")],
     ["\\frac{x}{2}", pool.product(n(0.5), x)],
-    ["2.5 \\cdot 10^{-7} \\, x", pool.product(n(2.5e-7), x)],
+    ["250 \\cdot 10^{-9} \\, x", pool.product(n(2.5e-7), x)],
     ["\\left|x\\right| \\, a", pool.product(pool.call("abs", x), a)],
     [
       "\\begin{cases}a& \\text{if } x < 0\\\\ b& \\text{otherwise}\\end{cases}",
