@@ -32,6 +32,7 @@ const POINTS = [0.046910077030668, 0.2307653449471585, 0.5, 0.7692346550528415, 
 const WEIGHTS = [
   0.1184634425280945, 0.2393143352496832, 0.2844444444444444, 0.2393143352496832, 0.1184634425280945,
 ];
+const NEGLIGIBLE = 1e-6;
 /** Boole's rule on quarters of a step. */
 const BOOLE = [7 / 90, 32 / 90, 12 / 90, 32 / 90, 7 / 90];
 
@@ -50,7 +51,9 @@ export class EnergyAudit {
   #moved = 0;
   readonly #low: Float64Array;
   readonly #high: Float64Array;
-  #closure = 0;
+  /** After each step: what was missing, and what had been moved. */
+  readonly #missing: number[] = [];
+  readonly #scale: number[] = [];
 
   constructor(book: EnergyBook, valueOf: (expr: Expr) => number) {
     this.#book = book;
@@ -132,7 +135,8 @@ export class EnergyAudit {
     }
     const scale = swing + this.#moved;
     const missing = Math.abs(sum(this.#supplied) - sum(this.#dissipated) - sum(this.#stored));
-    if (scale > 0) this.#closure = Math.max(this.#closure, missing / scale);
+    this.#missing.push(missing);
+    this.#scale.push(scale);
   }
 
   get supplied(): number {
@@ -141,6 +145,15 @@ export class EnergyAudit {
 
   get dissipated(): number {
     return sum(this.#dissipated);
+  }
+
+  /** Before a millionth of all was moved there is nothing to be seen but rounding. */
+  #closure(): number {
+    const least = NEGLIGIBLE * (this.#scale.at(-1) ?? 0);
+    return this.#missing.reduce((worst, missing, i) => {
+      const scale = this.#scale[i];
+      return scale > least ? Math.max(worst, missing / scale) : worst;
+    }, 0);
   }
 
   report(): EnergyReport {
@@ -154,7 +167,7 @@ export class EnergyAudit {
       supplied: this.supplied,
       dissipated: this.dissipated,
       stored: sum(this.#stored),
-      closure: this.#closure,
+      closure: this.#closure(),
       elements: [
         ...of("supplied", supplies, this.#supplied),
         ...of("dissipated", losses, this.#dissipated),

@@ -46,6 +46,9 @@ export function energyBook(model: StateModel): EnergyBook | { readonly missing: 
     const power = domain.pseudo ? (isPower ? flow : pool.zero) : pool.product(effort, flow);
     return end === "to" ? power : pool.negate(power);
   };
+  // In a pseudo domain a 1-junction passes one flow on to all: what hangs on it takes none of it away.
+  const passes = ({ bond, end, domain }: FlatPort) =>
+    domain.pseudo && nodes[end === "to" ? graph.bonds[bond].from : graph.bonds[bond].to].kind === "1";
   const into = (node: FlatNode) => pool.sum(node.ports.map(powerOf));
   const supplies: Powered[] = [];
   const losses: Powered[] = [];
@@ -53,7 +56,7 @@ export function energyBook(model: StateModel): EnergyBook | { readonly missing: 
   for (const node of nodes) {
     if (["Se", "Sf", "port"].includes(node.kind)) {
       supplies.push({ name: node.name, power: pool.negate(into(node)) });
-    } else if (node.kind === "R" && !node.ports.some(({ domain }) => domain.pseudo)) {
+    } else if (node.kind === "R" && !node.ports.some(passes)) {
       losses.push({ name: node.name, power: into(node) });
     } else if (["C", "I", "IC"].includes(node.kind)) {
       const book = storeBook(model, pool, node);

@@ -4,8 +4,10 @@ import type { Problem } from "./ode.ts";
 const SHARE = 0.01;
 /** What lies under this share of what a rate is added up from is rounding. */
 const ROUNDING = 1e-6;
+/** SI: where a state has been nothing so far, this much of it is still nothing. */
+const NOTHING = 1e-12;
 
-/** What an error is measured by, state by state, without a word about units: its own size, and what it is made of. */
+/** What an error is measured by, state by state: its own size, and what it is made of. */
 export class Scale {
   readonly #problem: Problem;
   readonly #tolerance: number;
@@ -57,7 +59,7 @@ export class Scale {
 
   #allowed(i: number, size: number, h: number): number {
     const floor = ROUNDING * this.#made[i] * Math.min(h, 1 / this.#pull[i]);
-    return this.#tolerance * Math.max(size, SHARE * this.#largest[i], floor);
+    return this.#tolerance * Math.max(size, SHARE * this.#largest[i], floor, NOTHING);
   }
 
   /** Hairer, Nørsett, Wanner: Solving Ordinary Differential Equations I, II.4, starting step size. */
@@ -82,6 +84,7 @@ export class Scale {
       if (size > 0) worst = Math.max(worst, bend / size, (speed / size) ** 2 * 1e-2);
     }
     const second = worst > 0 ? (0.01 * this.#tolerance ** 0.2) / Math.sqrt(worst) : room;
-    return Math.min(100 * h, Math.max(second, 1e-24 * room), room);
+    const least = Math.max(1e-24 * room, 64 * Number.EPSILON * Math.abs(t));
+    return Math.min(Math.max(Math.min(100 * h, second), least), room);
   }
 }

@@ -78,13 +78,15 @@ function moves(expr: Expr): boolean {
 }
 
 /**
- * What stays as it is: parts under a root, where the other side of a held `abs` has no value, and a `sign` that is
+ * What stays as it is: conditions that choose a root where it has a value; `abs`, `min` and `max` under a root, where the other side of a held `abs` has no value, and a `sign` that is
  * multiplied by the root of the `abs` of the same, as in the law of an orifice: together they do not jump.
  */
 function continuousParts(roots: readonly Expr[]): ReadonlySet<Expr> {
   const free = new Set<Expr>();
   const rooted: Expr[] = [];
+  const chosen: Expr[] = [];
   const products: Expr[] = [];
+  const withRoot = new Set<Expr>();
   const seen = new Set<Expr>();
   postorder(
     roots,
@@ -92,14 +94,25 @@ function continuousParts(roots: readonly Expr[]): ReadonlySet<Expr> {
     (expr) => {
       seen.add(expr);
       if (isRoot(expr)) rooted.push(expr.args[0]);
+      if (isRoot(expr) || expr.args.some((arg) => withRoot.has(arg))) withRoot.add(expr);
+      if (expr.op === "where" && expr.args.slice(1).some((arg) => withRoot.has(arg)))
+        chosen.push(expr.args[0]);
       if (expr.op === "product") products.push(expr);
     },
   );
-  postorder(
-    rooted,
-    (expr) => free.has(expr),
-    (expr) => free.add(expr),
-  );
+  const below = (from: readonly Expr[], stays: (expr: Expr) => boolean) => {
+    const met = new Set<Expr>();
+    postorder(
+      from,
+      (expr) => met.has(expr),
+      (expr) => {
+        met.add(expr);
+        if (stays(expr)) free.add(expr);
+      },
+    );
+  };
+  below(rooted, ({ op }) => op === "call");
+  below(chosen, (expr) => expr.op === "compare" && !turnsWithTime(expr));
   for (const { args } of products) {
     for (const sign of args) {
       if (sign.op !== "call" || sign.name !== "sign") continue;
@@ -108,6 +121,11 @@ function continuousParts(roots: readonly Expr[]): ReadonlySet<Expr> {
     }
   }
   return free;
+}
+
+/** Drives step at times that are known: nothing under a root is left by it in mid-step. */
+function turnsWithTime(expr: Expr): boolean {
+  return [...symbolsOf(expr)].every(({ role }) => ["time", "parameter", "constant"].includes(role));
 }
 
 function isRoot(expr: Expr): boolean {
