@@ -70,11 +70,14 @@ export function power(base: number, exponent: number): number | null {
 }
 
 function integerPower(base: number, fraction: Fraction | null, exponent: number): number | null {
-  const result =
-    fraction === null || exponent > 0
-      ? base ** exponent
-      : fraction.denominator ** -exponent / fraction.numerator ** -exponent;
+  const size = Math.abs(exponent);
+  const [above, below] = fraction === null ? [base ** size, 1] : raised(fraction, size);
+  const result = !Number.isFinite(below) ? base ** exponent : exponent > 0 ? above / below : below / above;
   return Number.isFinite(result) && result !== 0 ? result : null;
+}
+
+function raised({ numerator, denominator }: Fraction, exponent: number): [number, number] {
+  return [numerator ** exponent, denominator ** exponent];
 }
 
 function wholeRoot(value: number, degree: number): number | null {

@@ -31,7 +31,16 @@ export function canonicalPower(pool: Pool, base: Node, exponent: Node): Node {
   }
 }
 
+/**
+ * Odd halves are whole powers of the root, which collect: sqrt(x)*x^(-3/2) = sqrt(x)^(-2); none of them is a number for
+ * x < 0. Where x can't be negative its own powers collect.
+ */
 function keep(pool: Pool, base: Node, exponent: Node): Node {
+  const twice = exponent.op === "number" && !base.nonNegative ? 2 * exponent.value : 0;
+  if (Number.isInteger(twice) && twice % 2 !== 0 && twice !== 1) {
+    const root = pool.intern("power", [base, pool.number(0.5) as Node], 0, "");
+    return pool.intern("power", [root, pool.number(twice) as Node], 0, "");
+  }
   return pool.intern("power", [base, exponent], 0, "");
 }
 

@@ -68,6 +68,18 @@ describe("canonical form", () => {
       ),
       pool.sum(a, x),
     ],
+    [
+      "odd halves",
+      pool.product(pool.call("sqrt", x), pool.power(x, n(-1.5))),
+      pool.power(pool.call("sqrt", x), n(-2)),
+    ],
+    ["one over a root", pool.divide(n(1), pool.call("sqrt", x)), pool.power(x, n(-0.5))],
+    [
+      "odd halves of what can't be negative",
+      pool.product(...[0.5, 1.5].map((half) => pool.power(pool.call("abs", x), n(half)))),
+      pool.power(x, n(2)),
+    ],
+    ["cube of a third", pool.power(pool.rational(1, 3), n(3)), pool.rational(1, 27)],
     ["root of a square", pool.call("sqrt", pool.power(x, n(2))), pool.call("abs", x)],
     [
       "|a*b|",
