@@ -335,6 +335,9 @@ class TrialReader {
   }
 
   #signal(tree: Expression): TrialSignal | null {
+    // An output keeps the unit in which it is to be shown.
+    const output = this.#graph.outputs.find(({ name }) => name === textOf(this.#file, tree));
+    if (output !== undefined) return output;
     const typed = this.#translator.whole(tree, this.#scope);
     if (typed.measure === "unknown") return null;
     if (typed.measure === "truth") return this.#refuse("law-form", tree.range, "A condition is no signal.");

@@ -77,12 +77,13 @@ export function dormandPrince(problem: Problem): Method {
         out[i] = start[i] + s * (change + (1 - s) * (bend + s * (twist + (1 - s) * size * wave)));
       }
     },
-    stiffness(h) {
+    stiffness(h, sizes) {
       let above = 0;
       let below = 0;
       for (let i = 0; i < n; i += 1) {
-        above += (k[6][i] - k[5][i]) ** 2;
-        below += (end[i] - stage[i]) ** 2;
+        if (sizes[i] === 0) continue;
+        above += ((k[6][i] - k[5][i]) / sizes[i]) ** 2;
+        below += ((end[i] - stage[i]) / sizes[i]) ** 2;
       }
       return below > 0 ? h * Math.sqrt(above / below) : 0;
     },

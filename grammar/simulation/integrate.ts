@@ -223,7 +223,7 @@ class Integration {
 
   #watchStiffness(h: number): void {
     if (this.#span.method !== undefined) return;
-    const stiffness = this.#method.stiffness(h);
+    const stiffness = this.#method.stiffness(h, this.#scale.largest);
     const explicit = this.#method === this.#explicit;
     const sign = explicit ? stiffness > STABLE : stiffness < 1;
     this.#signs = sign ? this.#signs + 1 : Math.max(0, this.#signs - (explicit ? 1 : EASY_STEPS));

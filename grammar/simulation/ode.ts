@@ -42,8 +42,8 @@ export interface Method {
   readonly error: Float64Array;
   /** The state within the step just tried, at the fraction `s` of it. */
   within(s: number, out: Float64Array): void;
-  /** About h times the largest eigenvalue in the step just tried. */
-  stiffness(h: number): number;
+  /** About h times the largest eigenvalue in the step just tried; `sizes` make states of all units comparable. */
+  stiffness(h: number, sizes: Float64Array): number;
 }
 
 /** An accepted step. `within` is valid until the next one. */

@@ -11,7 +11,8 @@ const NOTHING = 1e-12;
 export class Scale {
   readonly #problem: Problem;
   readonly #tolerance: number;
-  readonly #largest: Float64Array;
+  /** The largest size each state had. */
+  readonly largest: Float64Array;
   #made: Float64Array;
   readonly #entries: Float64Array;
   readonly #slope: Float64Array;
@@ -20,7 +21,7 @@ export class Scale {
   constructor(problem: Problem, tolerance: number) {
     this.#problem = problem;
     this.#tolerance = tolerance;
-    this.#largest = new Float64Array(problem.size);
+    this.largest = new Float64Array(problem.size);
     this.#made = new Float64Array(problem.size);
     this.#pull = new Float64Array(problem.size);
     this.#entries = new Float64Array(problem.pattern.length);
@@ -41,7 +42,7 @@ export class Scale {
   seen(x: Float64Array): void {
     for (let i = 0; i < x.length; i += 1) {
       const size = Math.abs(x[i]);
-      if (size > this.#largest[i]) this.#largest[i] = size;
+      if (size > this.largest[i]) this.largest[i] = size;
     }
   }
 
@@ -59,7 +60,7 @@ export class Scale {
 
   #allowed(i: number, size: number, h: number): number {
     const floor = ROUNDING * this.#made[i] * Math.min(h, 1 / this.#pull[i]);
-    return this.#tolerance * Math.max(size, SHARE * this.#largest[i], floor, NOTHING);
+    return this.#tolerance * Math.max(size, SHARE * this.largest[i], floor, NOTHING);
   }
 
   /** Hairer, Nørsett, Wanner: Solving Ordinary Differential Equations I, II.4, starting step size. */
@@ -68,7 +69,7 @@ export class Scale {
     if (n === 0) return room;
     let h = room;
     for (let i = 0; i < n; i += 1) {
-      const size = Math.max(Math.abs(x[i]), SHARE * this.#largest[i]);
+      const size = Math.max(Math.abs(x[i]), SHARE * this.largest[i]);
       if (rates[i] !== 0 && size > 0) h = Math.min(h, (0.01 * size) / Math.abs(rates[i]));
       if (size === 0 && this.#pull[i] > 0) h = Math.min(h, 0.01 / this.#pull[i]);
     }

@@ -1,9 +1,10 @@
 import type { SystemReport } from "../pipeline.ts";
 import type { Unit } from "../units/unit.ts";
-import { numberText, quantityText, unitText } from "../units/unit-text.ts";
+import { numberText, unitText } from "../units/unit-text.ts";
 import type { CheckedFile } from "./json.ts";
 import { modelLatex } from "./system-latex.ts";
 import { modelText } from "./system-text.ts";
+import { parameterText, pointText } from "./value-text.ts";
 
 /** What every report, release and generated file says (the models steer machines that can hurt people). */
 export const CARE =
@@ -24,14 +25,14 @@ export function systemMarkdown(from: CheckedFile, system: SystemReport): string 
         "States",
         table(
           ["state", "unit", "start"],
-          states.map((s) => [s.name, s.unit.text, quantityText(s.start, s.unit, 6)]),
+          states.map((s) => [s.name, s.unit.text, pointText(s.start, s.unit)]),
         ),
       ),
       section(
         "Inputs",
         table(
           ["input", "unit", "nominal"],
-          inputs.map((i) => [i.name, i.unit.text, quantityText(i.nominal, i.unit, 6)]),
+          inputs.map((i) => [i.name, i.unit.text, pointText(i.nominal, i.unit)]),
         ),
       ),
       ...modelText(model).map(({ title, lines }) =>
@@ -52,7 +53,7 @@ export function systemMarkdown(from: CheckedFile, system: SystemReport): string 
           ["parameter", "value", "in SI", "meaning"],
           causal.graph.parameters.map((one) => [
             one.name,
-            quantityText(one.value, one.unit, 8),
+            parameterText(one.value, one.unit),
             siText(one.value, one.unit),
             one.description ?? "",
           ]),

@@ -55,11 +55,11 @@ function oneRun({ trial, signals, result, parameters, runs, expectations }: Tria
 
 const METHODS = { "dormand-prince": "Dormand-Prince 5(4)", rodas: "RODAS 4(3)" } as const;
 
-/** Which methods made the steps of a run: `Dormand-Prince 5(4)`, or both with their shares. */
+/** Which methods made the steps of a run: `Dormand-Prince 5(4)`, or how many each made. */
 export function methodText(result: TrialReport["result"]): string | null {
   if (result === null) return null;
   const { by } = result.counters;
   const used = (["dormand-prince", "rodas"] as const).filter((name) => by[name] > 0);
   if (used.length < 2) return METHODS[used[0] ?? "dormand-prince"];
-  return used.map((name) => `${METHODS[name]} for ${by[name]} steps`).join(", ");
+  return used.map((name) => `${by[name]} by ${METHODS[name]}`).join(", ");
 }

@@ -35,7 +35,7 @@ function runLines({ trial, result, runs, parameters }: TrialReport): string[] {
     return `${name} = ${unit === undefined ? numberText(value, 5) : quantityText(value, unit, 5)}`;
   });
   return [
-    `${numberText(result.time, 6)} s in ${steps.toLocaleString("en")} steps by ${methodText(result)}, tolerance ${(trial.tolerance ?? DEFAULT_TOLERANCE).toExponential()}`,
+    `${numberText(result.time, 6)} s in ${steps.toLocaleString("en")} steps, ${methodText(result)}; tolerance ${(trial.tolerance ?? DEFAULT_TOLERANCE).toExponential()}`,
     ...(events === 0
       ? []
       : [`${events.toLocaleString("en")} ${events === 1 ? "switching" : "switchings"} located`]),

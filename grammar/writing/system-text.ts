@@ -1,6 +1,7 @@
 import type { StateModel } from "../equations/model.ts";
-import { numberText, quantityText } from "../units/unit-text.ts";
+import { numberText } from "../units/unit-text.ts";
 import { expressionText } from "./text.ts";
+import { parameterText, pointText } from "./value-text.ts";
 
 export interface TextSection {
   readonly title: string;
@@ -50,21 +51,19 @@ export function glossaryText(model: StateModel): TextSection[] {
   const sections: TextSection[] = [
     {
       title: "States",
-      lines: columns(
-        model.states.map(({ name, unit, start }) => [name, `from ${quantityText(start, unit, 6)}`]),
-      ),
+      lines: columns(model.states.map(({ name, unit, start }) => [name, `from ${pointText(start, unit)}`])),
     },
     {
       title: "Inputs",
       lines: columns(
-        model.inputs.map(({ name, unit, nominal }) => [name, `nominal ${quantityText(nominal, unit, 6)}`]),
+        model.inputs.map(({ name, unit, nominal }) => [name, `nominal ${pointText(nominal, unit)}`]),
       ),
     },
     {
       title: "Parameters",
       lines: columns(
         parameters.map(({ name, value, unit, description }) => [
-          `${name} = ${quantityText(value, unit, 8)}`,
+          `${name} = ${parameterText(value, unit)}`,
           description ?? "",
         ]),
       ),
