@@ -60,8 +60,10 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
   const { starts, findings: startFindings } = startValues(assignments, dependence);
   findings.push(...startFindings);
   const states = rows.map((row) => stateOf(assignments, row, starts.get(row.symbol) ?? 0));
-  const efforts = graph.bonds.map(({ effort }) => finishOrNull(followed.values.get(effort), finish));
-  const flows = graph.bonds.map(({ flow }) => finishOrNull(followed.values.get(flow), finish));
+  const efforts = once(() =>
+    graph.bonds.map(({ effort }) => finishOrNull(followed.values.get(effort), finish)),
+  );
+  const flows = once(() => graph.bonds.map(({ flow }) => finishOrNull(followed.values.get(flow), finish)));
   // Sums of what a loop or a group of rates gave share their denominators.
   const shorter = (expr: Expr) => (tied || followed.loops.length > 0 ? tidy(pool, expr) : expr);
   const outputs = graph.outputs.map(({ name, unit, value, span }) => ({
@@ -92,8 +94,13 @@ export function deriveEquations(causal: CausalGraph): { model: StateModel | null
       ...solved.implicit.map(({ loop }) => loop),
     ],
     outputs,
-    efforts,
-    flows,
+    // Who asks for equations alone does not wait for what every bond carries.
+    get efforts() {
+      return efforts();
+    },
+    get flows() {
+      return flows();
+    },
   };
   return { model, findings };
 }
@@ -112,6 +119,14 @@ function rateFree(pool: Pool, solved: SolvedRates): (expr: Expr) => Expr {
   const finder = new RateFinder();
   const put = substitution(pool, solved.rates, (expr) => !finder.holds(expr), new ById());
   return (expr) => (finder.holds(expr) ? collected(pool, put(expr)) : expr);
+}
+
+function once<Value>(work: () => Value): () => Value {
+  let known: { readonly value: Value } | null = null;
+  return () => {
+    known ??= { value: work() };
+    return known.value;
+  };
 }
 
 function finishOrNull(value: Expr | undefined, finish: (expr: Expr) => Expr): Expr | null {
