@@ -55,6 +55,23 @@ export function ensureGit() {
   if (onPath("git") === null) install(["git"], "git");
 }
 
+/** Debian's Python, whatever another one comes first in the path: Debian's packages are known to it alone. */
+export const PYTHON = "/usr/bin/python3";
+
+/** What the tests' independent checks are computed with. */
+export function ensurePython() {
+  if (imports(["numpy", "sympy"])) return;
+  install(["python3-numpy", "python3-sympy"], "Python's NumPy and SymPy");
+  if (!imports(["numpy", "sympy"]))
+    throw new Said(`NumPy and SymPy were installed, but ${PYTHON} does not find them.`);
+}
+
+/** @param {string[]} modules */
+function imports(modules) {
+  const find = `import importlib.util, sys; sys.exit(any(importlib.util.find_spec(m) is None for m in ${JSON.stringify(modules)}))`;
+  return spawnSync(PYTHON, ["-c", find], { stdio: "ignore" }).status === 0;
+}
+
 /**
  * @param {string[]} packages
  * @param {string} title

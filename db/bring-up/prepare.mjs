@@ -1,5 +1,5 @@
 import { buildWhenChanged } from "./build.mjs";
-import { ensureChromium, ensureGit, ensurePostgres } from "./debian.mjs";
+import { ensureChromium, ensureGit, ensurePostgres, ensurePython } from "./debian.mjs";
 import { ensurePackages } from "./packages.mjs";
 import { Said, stopSaying } from "./said.mjs";
 
@@ -16,6 +16,7 @@ try {
   if (purpose === "test") {
     ensureChromium();
     ensureGit();
+    ensurePython();
   }
   ensurePackages();
   if (purpose === "start") buildWhenChanged(["db", "application", "cli"]);
