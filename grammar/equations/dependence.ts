@@ -56,7 +56,7 @@ export function classifyStores(
  */
 function withoutCancelled(pool: Pool, value: Expr, finder: RateFinder): Expr {
   const rates = finder.in(value);
-  if (rates.size === 0) return collected(pool, value);
+  if (rates.size === 0) return mayCancel(value) ? collected(pool, value) : value;
   const form = linearForms(pool, rates)(value);
   if (form === null) return value;
   const terms = [form.constant];
@@ -68,4 +68,10 @@ function withoutCancelled(pool: Pool, value: Expr, finder: RateFinder): Expr {
     : terms.length <= form.coefficients.size
       ? pool.sum(terms)
       : value;
+}
+
+/** A sum that stands as a factor hides what it has in common with what stands beside it. */
+function mayCancel(value: Expr): boolean {
+  const holdsSum = (term: Expr) => term.op === "product" && term.args.some(({ op }) => op === "sum");
+  return holdsSum(value) || (value.op === "sum" && value.args.some(holdsSum));
 }
