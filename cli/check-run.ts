@@ -38,6 +38,12 @@ export function checkOne({ files, path, shown }: ModelFile, filter: CheckFilter,
   return { report: { ...report, findings: [...report.findings] }, files, shown, seconds };
 }
 
+/** What reports are written from, without graphs, models and runs: those of a large set would fill the memory. */
+export function inBrief(checked: CheckedOnDisk): CheckedOnDisk {
+  const systems = checked.report.systems.map((one) => ({ ...one, graph: null, causal: null, model: null }));
+  return { ...checked, report: { ...checked.report, systems, trials: [] } };
+}
+
 function filtered(
   files: DiskFiles,
   path: string,

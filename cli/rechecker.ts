@@ -2,7 +2,7 @@ import { statSync } from "node:fs";
 import path from "node:path";
 import { SETTINGS_FILE } from "../grammar/diagnostics/settings.ts";
 import type { TreeCache } from "../grammar/pipeline.ts";
-import { type CheckedOnDisk, type CheckFilter, checkOne } from "./check-run.ts";
+import { type CheckedOnDisk, type CheckFilter, checkOne, inBrief } from "./check-run.ts";
 import { type DiskFiles, isFile } from "./disk-files.ts";
 import { foldersBelow, type ModelFile, modelFiles } from "./model-files.ts";
 
@@ -95,7 +95,7 @@ export class Rechecker {
   }
 
   #check(model: ModelFile): void {
-    const { result, asked } = model.files.asked(() => checkOne(model, this.#filter, this.#cache));
+    const { result, asked } = model.files.asked(() => inBrief(checkOne(model, this.#filter, this.#cache)));
     this.#checks.set(model, { checked: result, asked });
   }
 }

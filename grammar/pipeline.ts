@@ -35,6 +35,8 @@ export interface SystemReport {
   readonly graph: FlatGraph | null;
   readonly causal: CausalGraph | null;
   readonly model: StateModel | null;
+  /** It has equations; still known when the model itself was let go. */
+  readonly derived: boolean;
   readonly findings: readonly Finding[];
   readonly expectations: readonly ExpectationResult[];
 }
@@ -107,7 +109,15 @@ function derive(system: string, graph: FlatGraph | null, resolveFindings: readon
   if (graph === null || refused) {
     // The requirements of a refused system have failed with it; its findings say why.
     const expectations = graph === null ? [] : judge(graph, null).results;
-    return { system, graph, causal: null, model: null, findings: resolveFindings, expectations };
+    return {
+      system,
+      graph,
+      causal: null,
+      model: null,
+      derived: false,
+      findings: resolveFindings,
+      expectations,
+    };
   }
   const lawFindings = [...reciprocityFindings(graph), ...passivityFindings(graph)];
   const { causal, findings: causalFindings } = assignCausality(graph);
@@ -121,6 +131,7 @@ function derive(system: string, graph: FlatGraph | null, resolveFindings: readon
     graph,
     causal,
     model,
+    derived: model !== null,
     findings: [...resolveFindings, ...lawFindings, ...causalFindings, ...equationFindings, ...judgedFindings],
     expectations: results,
   };

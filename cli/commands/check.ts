@@ -1,7 +1,7 @@
 import path from "node:path";
 import type { Severity } from "../../grammar/diagnostics/finding.ts";
 import type { TreeCache } from "../../grammar/pipeline.ts";
-import { asRun, type CheckedOnDisk, checkOne } from "../check-run.ts";
+import { asRun, type CheckedOnDisk, checkOne, inBrief } from "../check-run.ts";
 import { modelFiles } from "../model-files.ts";
 import { REPORT_FORMS, type ReportForm } from "../output/forms.ts";
 import { type ColourChoice, paintFor, print } from "../output/print.ts";
@@ -34,7 +34,7 @@ export async function check(paths: readonly string[], options: CheckArguments): 
   const models = modelFiles(paths, options.stdinName);
   const checked = models.map((model, index) => {
     progress.say(index, models.length, model.shown(model.path));
-    return checkOne(model, options, cache);
+    return inBrief(checkOne(model, options, cache));
   });
   progress.end();
   return reportRun(checked, startedAt, options);

@@ -112,11 +112,7 @@ export function checkDocument(checked: readonly CheckedFile[]): CheckDocument {
   const count = (severity: Finding["severity"]) =>
     findings.filter((found) => found.severity === severity && found.accepted === undefined).length;
   const systems = checked.flatMap(({ report, shown }) =>
-    report.systems.map(({ system, model }) => ({
-      name: system,
-      file: shown(report.path),
-      derived: model !== null,
-    })),
+    report.systems.map(({ system, derived }) => ({ name: system, file: shown(report.path), derived })),
   );
   return {
     schema: "bondwright/check@1",
