@@ -16,6 +16,7 @@ const root = fileURLToPath(new URL("../..", import.meta.url));
 const out = join(root, "build", "bench");
 const folder = mkdtempSync(join(tmpdir(), "bondwright-bench-"));
 const wanted = process.argv.slice(2);
+/** @type {{ row: string, ours: number | null, reference: number | null, ratio: number | null, bar: string, verdict: string }[]} */
 const rows = [];
 
 await build({ root, mode: "cli", logLevel: "error" });
