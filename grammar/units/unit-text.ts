@@ -97,6 +97,7 @@ export function readableQuantity(
   value: number,
   dimension: Dimension,
   preferred: readonly Unit[] = [],
+  digits = 4,
 ): string {
   const text = unitText(dimension, preferred);
   const size = Math.abs(value);
@@ -104,11 +105,11 @@ export function readableQuantity(
     for (const [tens, prefix] of ENGINEERING) {
       if (size < Number(`1e${tens}`)) continue;
       const scaled = parseUnit(`${prefix}${text}`);
-      if (scaled !== null && equal(scaled.dimension, dimension)) return quantityText(value, scaled);
+      if (scaled !== null && equal(scaled.dimension, dimension)) return quantityText(value, scaled, digits);
       break;
     }
   }
-  return quantityText(value, unitOf(dimension, preferred));
+  return quantityText(value, unitOf(dimension, preferred), digits);
 }
 
 /** Up to `digits` significant digits, never more than needed: `0.25`, `120e-9`, `81.6`. */
