@@ -15,6 +15,15 @@ import type { Expr } from "../symbolic/expression.ts";
 import type { Unit } from "../units/unit.ts";
 import { numberText, quantityText } from "../units/unit-text.ts";
 import type { ExpectationResult } from "./result.ts";
+import {
+  curveFindings,
+  energyFindings,
+  outOfRange,
+  parametersText,
+  readCurves,
+  stiffFindings,
+  stopFinding,
+} from "./run-findings.ts";
 import { readMeasure, signalsOf } from "./trial-measures.ts";
 
 /** A trial that was run: its worst run is kept, with the samples of what it records. */
@@ -70,7 +79,12 @@ export function judgeTrial(
     ...trial.comparisons.flatMap((one) => (one.limit === null ? [] : [comparisonOf(one)])),
   ];
   const signals: readonly TrialSignal[] = trial.records.length > 0 ? trial.records : graph.outputs;
-  const wanted = [...signals.map(({ value }) => value), ...requirements.flatMap((one) => one.signals)];
+  const curves = readCurves(model);
+  const wanted = [
+    ...signals.map(({ value }) => value),
+    ...requirements.flatMap((one) => one.signals),
+    ...curves.map(({ args }) => args[0]),
+  ];
   const worst: (Judged & { readonly parameters: Parameters })[] = [];
   const findings = outOfRange(trial, model);
   let kept: { readonly result: RunResult; readonly slack: number; readonly parameters: Parameters } | null =
@@ -90,7 +104,22 @@ export function judgeTrial(
     if (run.kind === "run") {
       const slack = Math.min(Number.POSITIVE_INFINITY, ...judged.map((one) => one.slack));
       if (kept === null || slack < kept.slack) kept = { result: run.result, slack, parameters };
-      findings.push(...energyFindings(trial, run.result, findings));
+      const read = run.result.traces.slice(wanted.length - curves.length);
+      const found = [
+        ...energyFindings(trial, run.result),
+        ...curveFindings(trial, curves, read),
+        ...stiffFindings(trial, run.result),
+      ];
+      // Of many runs the first to show it speaks for all.
+      for (const one of found) {
+        if (
+          !findings.some(
+            ({ name, span }) =>
+              name === one.name && span.start === one.span.start && one.name !== "curve-left",
+          )
+        )
+          findings.push(one);
+      }
       if (run.result.reason === "Cancelled.") break;
     }
   }
@@ -294,51 +323,4 @@ function failure({ text, measured, wanted, message }: ExpectationResult, span: F
     span,
     `\`${text}\` is not met: measured ${measured}, wanted ${wanted}.${more}`,
   );
-}
-
-function outOfRange(trial: FlatTrial, model: StateModel): Finding[] {
-  return model.causal.graph.parameters.flatMap(({ name, range, unit }) => {
-    const value = trial.sets.get(name);
-    if (value === undefined || range === null || (value >= range.low && value <= range.high)) return [];
-    const message = `\`${name}\` is set to ${quantityText(value, unit, 6)}, outside its range ${quantityText(range.low, unit, 6)} .. ${quantityText(range.high, unit, 6)}.`;
-    return [finding("out-of-range", trial.span, message)];
-  });
-}
-
-function stopFinding(trial: FlatTrial, model: StateModel, run: TrialRun, varied: Parameters | null): Finding {
-  const at = varied === null ? "" : ` With ${parametersText(model, varied)}.`;
-  if (run.kind === "none")
-    return finding(
-      "not-computable",
-      trial.span,
-      `The trial \`${trial.name}\` could not begin. ${run.reason}${at}`,
-    );
-  const { time, reason, state } = run.result;
-  const facts = model.states.slice(0, 12).map(({ name, unit }, i) => ({
-    message: `\`${name}\` is ${quantityText(state[i], unit, 6)} there`,
-  }));
-  const message = `The run of \`${trial.name}\` stopped at ${numberText(time, 6)} s. ${reason}${at}`;
-  return finding("run-stopped", trial.span, message, { facts });
-}
-
-const CLOSED = 1e-4;
-
-function energyFindings(trial: FlatTrial, { energy }: RunResult, before: readonly Finding[]): Finding[] {
-  if (energy === null || !(energy.closure > CLOSED)) return [];
-  if (before.some(({ name }) => name === "energy-not-closed")) return [];
-  const message = `The energy of \`${trial.name}\` does not close: ${numberText(energy.closure, 2)} of what was moved is missing.`;
-  const facts = [
-    { message: `supplied ${numberText(energy.supplied, 6)} J` },
-    { message: `dissipated ${numberText(energy.dissipated, 6)} J` },
-    { message: `stored ${numberText(energy.stored, 6)} J` },
-  ];
-  return [finding("energy-not-closed", trial.span, message, { facts })];
-}
-
-function parametersText(model: StateModel, parameters: Parameters): string {
-  const named = model.causal.graph.parameters.flatMap(({ name, unit }) => {
-    const value = parameters.get(name);
-    return value === undefined ? [] : [`${name} = ${quantityText(value, unit, 5)}`];
-  });
-  return named.join(", ") || "the values of the text";
 }

@@ -45,6 +45,7 @@ class Integration {
     jacobians: 0,
     factorizations: 0,
     events: 0,
+    spared: 0,
     by: { "dormand-prince": 0, rodas: 0 },
   };
   readonly #explicit: Method;
@@ -139,6 +140,9 @@ class Integration {
     const method = this.#method;
     this.#counters.steps += 1;
     this.#counters.by[method.name] += 1;
+    if (method.name === "rodas") {
+      this.#counters.spared += method.stiffness(to - this.#t, this.#scale.largest) / STABLE;
+    }
     const stopped = this.#span.accepted?.({
       from: this.#t,
       to,

@@ -65,6 +65,8 @@ export interface Counters {
   factorizations: number;
   events: number;
   /** Accepted steps by method. */
+  /** About how many explicit steps the implicit method's stood for. */
+  spared: number;
   readonly by: { "dormand-prince": number; rodas: number };
 }
 

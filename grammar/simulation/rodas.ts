@@ -43,7 +43,6 @@ export function rodas(problem: Problem, solver: LinearSolver, counters: Counters
   const [start, end, error, rates, slope, last] = [array(), array(), array(), array(), array(), array()];
   const entries = new Float64Array(problem.pattern.length);
   let known = { t: Number.NaN, usable: false };
-  let norm = 0;
 
   /** A step that is tried again with another size keeps its Jacobian. */
   function slopesAt(t: number, x: Float64Array): boolean {
@@ -51,7 +50,6 @@ export function rodas(problem: Problem, solver: LinearSolver, counters: Counters
     last.set(x);
     counters.jacobians += 1;
     known = { t, usable: problem.slopes(t, x, entries, slope) };
-    norm = rowNorm(n, problem, entries);
     return known.usable;
   }
 
@@ -96,14 +94,15 @@ export function rodas(problem: Problem, solver: LinearSolver, counters: Counters
         out[i] = (1 - s) * start[i] + s * (end[i] + (1 - s) * (bend + s * twist));
       }
     },
-    stiffness: (h) => h * norm,
+    stiffness: (h, sizes) => h * largestRow(problem, entries, sizes),
   };
 }
 
-function rowNorm(n: number, { pattern }: Problem, entries: Float64Array): number {
-  const sums = new Float64Array(n);
-  pattern.forEach(({ row }, i) => {
-    sums[row] += Math.abs(entries[i]);
+/** The norm of the Jacobian by its rows, with each state measured by its size. */
+function largestRow({ size, pattern }: Problem, entries: Float64Array, sizes: Float64Array): number {
+  const sums = new Float64Array(size);
+  pattern.forEach(({ row, column }, i) => {
+    if (sizes[row] > 0) sums[row] += (Math.abs(entries[i]) * sizes[column]) / sizes[row];
   });
   return sums.reduce((most, sum) => Math.max(most, sum), 0);
 }

@@ -55,6 +55,7 @@ const counters = (): Counters => ({
   jacobians: 0,
   factorizations: 0,
   events: 0,
+  spared: 0,
   by: { "dormand-prince": 0, rodas: 0 },
 });
 
