@@ -68,10 +68,12 @@ function difference(factor: Expr): boolean {
   return factor.op === "sum" && factor.args.some((arg) => isNegative(arg) || turnable(arg, offsetFrom));
 }
 
-/** `1 - exp(x)`: with nothing but numbers before the minus it reads better the other way round in any case. */
+/** `1 - exp(x)`: the trade writes `exp(x) - 1` in any case. */
 function offsetFrom(factor: Expr): boolean {
-  if (factor.op !== "sum" || !factor.args.some(isNegative)) return false;
-  return factor.args.every((arg) => arg.op === "number" || isNegative(arg));
+  if (factor.op !== "sum" || factor.args.length !== 2) return false;
+  const [number, other] = factor.args;
+  const isExp = (arg: Expr) => arg.op === "call" && arg.name === "exp";
+  return number.op === "number" && isNegative(other) && other.op === "product" && other.args.some(isExp);
 }
 
 function turnable(term: Expr, by: (factor: Expr) => boolean): boolean {

@@ -73,6 +73,51 @@ describe("heat by temperature and flow of entropy", () => {
 });
 
 /**
+ * Karnopp, Margolis, Rosenberg: System Dynamics, 5th edition, chapter 12 (thermodynamic systems; the store with a port
+ * of entropy and one of volume). Recalled from memory.
+ */
+it("ideal gas under a piston: U(S, V) gives T and p = m*R*T/V", () => {
+  // U = m*c_v*T_0*exp(S/(m*c_v))*(V/V_0)^(-R/c_v); S counts from T_0 and V_0.
+  const found = derived(`
+    param m = 2 g
+    param c_v = 718 J/kg/K
+    param R = 287 J/kg/K
+    param T_0 = 300 K
+    param V_0 = 2 L
+    param A = 50 cm^2
+    param M = 4 kg
+    param p_a = 1 bar
+    input S_in : W/K
+    C  gas(heat, space) energy = m*c_v*T_0*exp(heat.q/(m*c_v))*(space.q/V_0)^(-R/c_v)
+    Sf heater f = S_in
+    0  inside : thermal
+    0  volume : hydraulic
+    TF piston out.f = A*in.f
+    1  rod : translation
+    I  M
+    Se air e = A*p_a
+    heater -> inside -> gas.heat
+    rod -> M
+    rod -> piston -> volume -> gas.space
+    rod -> air
+    start gas.space.q = 2 L
+    output T = inside.e
+    output pressure = -volume.e
+  `);
+  const T = "(T_0*exp(gas.heat.q/(m*c_v))*(gas.space.q/V_0)^(-R/c_v))";
+  expectPublished(found, {
+    rates: {
+      "gas.heat.q": "S_in",
+      "gas.space.q": "A*M.p/M",
+      "M.p": `A*(m*R*${T}/gas.space.q - p_a)`,
+    },
+    outputs: { T, pressure: `m*R*${T}/gas.space.q` },
+    where: { "gas.space.q": [0.3, 2] },
+    byValue: true,
+  });
+});
+
+/**
  * F. P. Incropera, D. P. DeWitt: Fundamentals of Heat and Mass Transfer, 5th edition, Wiley 2002, chapters 1, 5 and 11
  * (energy balance of a body and of the streams in an exchanger). Recalled from memory.
  */

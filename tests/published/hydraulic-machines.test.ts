@@ -157,6 +157,28 @@ describe("hydraulic drives", () => {
   });
 });
 
+/** H. E. Merritt: Hydraulic Control Systems (as above): a polytropic gas, p*V^n = p_0*V_0^n. Recalled from memory. */
+it("accumulator with a gas cushion behind a throttle", () => {
+  const found = derived(`
+    param p_0 = 90 bar
+    param V_0 = 4 L
+    param n = 1.2
+    param R_t = 2e9 Pa*s/m^3
+    input Q : m^3/s
+    Sf pump f = Q
+    1  neck : hydraulic
+    R  R_t
+    C  gas e = p_0*(V_0/(V_0 - q))^n
+    pump -> neck -> R_t, gas
+    output pressure = pump.e
+  `);
+  expectPublished(found, {
+    rates: { "gas.q": "Q" },
+    outputs: { pressure: "R_t*Q + p_0*(V_0/(V_0 - gas.q))^n" },
+    where: { "gas.q": [0, 0.25] },
+  });
+});
+
 /**
  * E. B. Wylie, V. L. Streeter: Fluid Transients, McGraw-Hill 1978 (lumped elements of a pipe: inertance rho*l/S,
  * compliance V/beta, laminar resistance). Recalled from memory.

@@ -1,4 +1,4 @@
-import { describe, it } from "vitest";
+import { describe, expect, it } from "vitest";
 import { derived, expectPublished } from "./derived.ts";
 
 /**
@@ -147,6 +147,42 @@ describe("linkages whose masses hang together", () => {
       byValue: true,
     });
   });
+});
+
+/** J. P. Den Hartog: Mechanical Vibrations, 4th edition, McGraw-Hill 1956 (rotating unbalance). Recalled from memory. */
+it("machine on a spring with an unbalance m at e, driven: (M + m)*x'' = m*e*(w^2*cos + w'*sin) - k*x - b*x'", () => {
+  const found = derived(`
+    param M = 80 kg
+    param m = 2 kg
+    param ecc = 5 mm
+    param k = 90 kN/m
+    param b = 400 N*s/m
+    input w : rad/s
+    Sf  drive   f = w
+    1   spin    : rotation
+    MTF crank   out.f = -ecc*sin(theta)*in.f
+    1   frame   : translation
+    I   body    f = p/M
+    C   mounts  e = k*q
+    R   damping e = b*f
+    0   hub     : translation
+    1   offset   : translation
+    I   heavy   f = p/m
+    drive -> spin -> crank -> hub
+    frame -> body, mounts, damping
+    frame -> hub -> offset -> heavy
+    track theta = spin.f
+  `);
+  const v = "(body.p/M)";
+  expectPublished(found, {
+    rates: {
+      "body.p": `M*(m*ecc*(cos(theta)*w^2 + sin(theta)*rate(w)) - k*mounts.q - b*${v})/(M + m)`,
+      "mounts.q": v,
+      theta: "w",
+    },
+    dependent: { "heavy.p": `m*(${v} - ecc*sin(theta)*w)` },
+  });
+  expect(found.findings).toContain("input-derivative");
 });
 
 /** R. Willis: Principles of Mechanism, 1841 (speeds of a planetary gear). Recalled from memory. */

@@ -50,6 +50,34 @@ describe("diode", () => {
   });
 });
 
+/**
+ * R. D. Middlebrook, S. Cuk: A general unified approach to modelling switching-converter power stages, IEEE PESC 1976
+ * (averaged over a period, the switches are a transformer of the duty ratio). Recalled from memory.
+ */
+it("boost converter, averaged: L*i' = u - (1 - d)*v - R_L*i, C*v' = (1 - d)*i - v/R", () => {
+  const found = derived(`
+    param L = 150 uH
+    param R_L = 40 mohm
+    param C = 470 uF
+    param R = 12 ohm
+    input u : V
+    input d : 1 = 0.5
+    Se  source e = u
+    1   coil : electrical
+    I   L
+    R   R_L
+    MTF switches out.f = (1 - d)*in.f
+    0   rail : electrical
+    C   C
+    R   R
+    source -> coil -> L, R_L
+    coil -> switches -> rail -> C, R
+  `);
+  expectPublished(found, {
+    rates: { "L.p": "u - (1 - d)*C.q/C - R_L*L.p/L", "C.q": "(1 - d)*L.p/L - C.q/(C*R)" },
+  });
+});
+
 /** B. van der Pol: On relaxation-oscillations, Philosophical Magazine 2 (1926). Recalled from memory. */
 it("van der Pol's oscillator: C*v' = a*v - b*v^3 - i, L*i' = v", () => {
   const found = derived(`

@@ -211,6 +211,59 @@ describe("electric machines", () => {
     expect(found.findings).toEqual([]);
   });
 
+  it("squirrel-cage induction machine in coordinates that stand still", () => {
+    // l_s = L_s*i_s + M*i_r and l_r = M*i_s + L_r*i_r on both axes; l_dr' = -R_r*i_dr - P*w*l_qr,
+    // l_qr' = -R_r*i_qr + P*w*l_dr, T = P*(l_qr*i_dr - l_dr*i_qr).
+    const axis = (name: string) => `
+      Se source_${name} e = v_${name}
+      1  stator_${name} : electrical
+      1  rotor_${name} : electrical
+      R  loss_s${name} e = R_s*f
+      R  loss_r${name} e = R_r*f
+      I  ${name}(s, r) s.p = L_s*s.f + M*r.f, r.p = M*s.f + L_r*r.f
+      source_${name} -> stator_${name} -> loss_s${name}
+      stator_${name} -> ${name}.s
+      rotor_${name} -> loss_r${name}
+      rotor_${name} -> ${name}.r
+    `;
+    const found = derived(`
+      param R_s = 1.2 ohm
+      param R_r = 0.9 ohm
+      param L_s = 160 mH
+      param L_r = 160 mH
+      param M = 150 mH
+      param P = 2
+      param J = 0.03 kg*m^2
+      input v_d : V
+      input v_b : V
+      input T_load : N*m
+      ${axis("d")}
+      ${axis("b")}
+      1   shaft : rotation
+      I   J
+      Se  load e = T_load
+      MGY turn_d out.e = P*b.r.p*in.f
+      MGY turn_b out.e = -P*d.r.p*in.f
+      rotor_d -> turn_d -> shaft
+      rotor_b -> turn_b -> shaft
+      shaft -> J
+      shaft -> load
+    `);
+    const stator = (x: string) => `((L_r*${x}.s.p - M*${x}.r.p)/(L_s*L_r - M^2))`;
+    const rotor = (x: string) => `((L_s*${x}.r.p - M*${x}.s.p)/(L_s*L_r - M^2))`;
+    expectPublished(found, {
+      rates: {
+        "d.s.p": `v_d - R_s*${stator("d")}`,
+        "b.s.p": `v_b - R_s*${stator("b")}`,
+        "d.r.p": `-R_r*${rotor("d")} - P*(J.p/J)*b.r.p`,
+        "b.r.p": `-R_r*${rotor("b")} + P*(J.p/J)*d.r.p`,
+        "J.p": `P*(b.r.p*${rotor("d")} - d.r.p*${rotor("b")}) - T_load`,
+      },
+      where: { L_s: [2, 3], L_r: [2, 3], M: [0.3, 1.5] },
+    });
+    expect(found.findings).toEqual([]);
+  });
+
   it("d.c. generator, excited by a winding of its own: e = K*i_f*w", () => {
     const found = derived(`
       param R_f = 60 ohm
