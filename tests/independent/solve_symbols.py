@@ -55,7 +55,7 @@ def case_answer(case):
         return ["the relations contradict each other"]
     found = {str(unknown): value.as_expr() for unknown, value in solution.items()}
 
-    everything = QQ.frac_field(*sorted(symbols | set(known.values()) | set(rates_known.values()), key=str))
+    everything = QQ.frac_field(*sorted(symbols | set(known.values()), key=str))
     wrong = []
     for name, sides in case["claimed"].items():
         index = stores.index(name)
