@@ -27,13 +27,16 @@ export function tearLoop(assignments: Assignments, members: readonly Assignment[
   let first = true;
   while (open.length > 0) {
     const index = new Map(open.map((member, i) => [member, i]));
-    const inside = (i: number) =>
-      (edges.get(open[i]) ?? []).flatMap((member) => {
-        const at = index.get(member);
-        return at === undefined ? [] : [at];
-      });
-    const groups = connectedGroups(open.length, inside);
-    const circles = groups.filter((group) => group.length > 1 || inside(group[0]).includes(group[0]));
+    const inside = open.map((member) => {
+      const found: number[] = [];
+      for (const other of edges.get(member) ?? []) {
+        const at = index.get(other);
+        if (at !== undefined) found.push(at);
+      }
+      return found;
+    });
+    const groups = connectedGroups(open.length, (i) => inside[i]);
+    const circles = groups.filter((group) => group.length > 1 || inside[group[0]].includes(group[0]));
     if (circles.length === 0) {
       for (const [i] of groups) ordered.push(open[i]);
       break;

@@ -40,8 +40,10 @@ export function templateOf(system: System): Template {
   return template;
 }
 
+const VALUES: ReadonlySet<string> = new Set(["param", "const", "input", "output", "let", "track"]);
+
 export function isValue(statement: Statement): statement is ValueStatement {
-  return ["param", "const", "input", "output", "let", "track"].includes(statement.kind);
+  return VALUES.has(statement.kind);
 }
 
 function makeTemplate(system: System): Template {

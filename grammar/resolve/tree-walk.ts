@@ -61,10 +61,13 @@ export function expressionsOf(statement: Statement): Expression[] {
       ];
     case "sub":
       return [...statement.name.indices, ...statement.overrides.map((override) => override.value)];
-    case "wiring":
-      return statement.groups.flatMap((group) =>
-        group.flatMap((end) => end.path.flatMap((part) => [...part.indices])),
-      );
+    case "wiring": {
+      // Most names have no index, and most lines of a large model are wiring.
+      const indices: Expression[] = [];
+      for (const group of statement.groups)
+        for (const end of group) for (const part of end.path) indices.push(...part.indices);
+      return indices;
+    }
     case "start":
       return [...given(statement.target), ...given(statement.value)];
     case "repeat":
