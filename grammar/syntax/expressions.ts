@@ -274,12 +274,12 @@ export class ExpressionParser extends EmbeddedActionsParser {
       this.slip("syntax", range, message, { range, text: apart });
       return;
     }
-    const joint = /[*/^]/.exec(unit.text);
-    if (joint === null || parseUnit(unit.text) !== null) return;
-    const first = unit.text.slice(0, joint.index);
-    if (parseUnit(first) === null) return;
+    if (parseUnit(unit.text) !== null) return;
+    const joints = [...unit.text.matchAll(/[*/^]/g)].reverse();
+    const joint = joints.find(({ index }) => parseUnit(unit.text.slice(0, index)) !== null);
+    if (joint === undefined) return;
     const message = `\`${unit.text}\` is not a unit; put blanks round \`${joint[0]}\` if a value of that name is meant.`;
-    const text = `${first} ${joint[0]} ${unit.text.slice(joint.index + 1)}`;
+    const text = `${unit.text.slice(0, joint.index)} ${joint[0]} ${unit.text.slice(joint.index + 1)}`;
     this.slip("syntax", unit.range, message, { range: unit.range, text });
   }
 }

@@ -144,7 +144,10 @@ export class StatementReader {
         `Brackets, signs and powers may stand ${LIMITS.depth} deep within each other.`,
       );
     } else if (parser.errors.length > 0) {
-      this.#tell(explain(parser.errors[0], form, line.tokens));
+      // `300 K*exp(x)` fails at its bracket, because `K*exp` was taken for a unit.
+      const [error] = parser.errors;
+      const cause = parser.slips.find(({ range }) => range.end === error.token.startOffset);
+      this.#tell(cause ?? explain(error, form, line.tokens));
     } else {
       for (const slip of parser.slips) this.#tell(slip);
       if (this.#findings.length === before) this.#judgeBrace(form, line);
