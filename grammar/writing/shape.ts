@@ -43,12 +43,19 @@ export interface Quotient {
  */
 export function termsOf(sum: Expr, turned = false): SignedTerm[] {
   const args = sum.op === "sum" ? sum.args : [sum];
-  const terms = args.map((term, index) => {
-    const negative = isNegative(term) !== turned;
-    return negative && turnable(term, offsetFrom)
-      ? { term, index, negative: false, turned: true }
-      : { term, index, negative, turned: false };
-  });
+  const terms = args.map((term, index) => ({
+    term,
+    index,
+    negative: isNegative(term) !== turned,
+    turned: false,
+  }));
+  const idiom = terms.filter(({ term }) => turnable(term, offsetFrom));
+  const others = terms.some((one) => !one.negative && !idiom.includes(one));
+  for (const one of idiom) {
+    if (!one.negative && !others) continue;
+    one.negative = !one.negative;
+    one.turned = true;
+  }
   let first = terms.findIndex(({ negative }) => !negative);
   if (first === -1) {
     first = terms.findIndex(({ term }) => turnable(term, difference));

@@ -58,6 +58,7 @@ describe("expressionText", () => {
       pool.subtract(pool.negate(b), pool.product(a, pool.subtract(n(1), pool.call("exp", x)))),
     ],
     ["x - b*(1 - a)", pool.subtract(x, pool.product(b, pool.subtract(n(1), a)))],
+    ["b - a*(exp(x) - 1)", pool.sum(b, pool.product(a, pool.subtract(n(1), pool.call("exp", x))))],
     ["sqrt(2*x)", pool.call("sqrt", pool.product(n(2), x))],
     [
       "a*sqrt(2*abs(x)/c)*sign(x)",
