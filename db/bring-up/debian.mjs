@@ -60,9 +60,9 @@ export const PYTHON = "/usr/bin/python3";
 
 /** What the tests' independent checks are computed with. */
 export function ensurePython() {
-  if (imports(["numpy", "sympy"])) return;
-  install(["python3-numpy", "python3-sympy"], "Python's NumPy and SymPy");
-  if (!imports(["numpy", "sympy"]))
+  if (imports(["numpy", "scipy", "sympy"])) return;
+  install(["python3-numpy", "python3-scipy", "python3-sympy"], "Python's NumPy, SciPy and SymPy");
+  if (!imports(["numpy", "scipy", "sympy"]))
     throw new Said(`NumPy and SymPy were installed, but ${PYTHON} does not find them.`);
 }
 
