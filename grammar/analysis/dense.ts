@@ -87,6 +87,8 @@ export interface Singular {
 }
 
 export function singular(a: Rows): Singular {
+  const columns = a[0]?.length ?? 0;
+  if (columns === 0) return { u: identity(a.length), s: [], v: [] };
   const svd = new SingularValueDecomposition(matrix(a), { autoTranspose: true });
   return {
     u: svd.leftSingularVectors.to2DArray(),
