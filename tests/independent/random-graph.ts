@@ -169,7 +169,7 @@ class Plan implements RandomGraph {
 
   #joinByTwoPort(from: number, to: number): void {
     const domains = [this.nodes[from].domains[0], this.nodes[to].domains[0]];
-    const kind = this.#pick(["TF", "GY"]);
+    const kind = this.#pick(["TF", "GY"] as const);
     const twoPort = this.#add({
       kind,
       domains,

@@ -29,7 +29,7 @@ function isLarge({ nodes, bonds }: RandomGraph): boolean {
   return bonds.length > 8 || parameters > 12;
 }
 
-type Tree = number | string | readonly [operator: string, ...args: Tree[]];
+type Tree = number | string | readonly (string | Tree)[];
 
 function claimsOf(model: StateModel): Record<string, { value: Tree; rate: Tree }> {
   const claims = [
