@@ -24,7 +24,8 @@ export function dependenceFinding(
     ...(states.length > 0 ? [listed(states)] : []),
     ...(inputs.length > 0 ? [`the input${inputs.length > 1 ? "s" : ""} ${listed(inputs)}`] : []),
   ];
-  const cause = causes.length > 0 ? causes.join(" and ") : "a source that does not change";
+  const cause =
+    causes.length > 0 ? causes.join(states.length > 1 ? ", and " : " and ") : "a source that does not change";
   const { span } = assignments.causal.graph.nodes[store.node];
   const message = `\`${store.name}\` can't be integrated on its own: it follows from ${cause}.`;
   return finding("derivative-causality", span, message, { facts: pathFacts(assignments, store) });
