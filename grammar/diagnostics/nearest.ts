@@ -1,10 +1,11 @@
 /**
  * The declared name that was most likely meant: within a third of its letters of edits (insert, delete, replace,
- * swap of neighbours: Damerau, Communications of the ACM 7, 1964), ties going to the first in the order given.
+ * swap of neighbours: Damerau, Communications of the ACM 7, 1964), ties going to the first in the order given. A name
+ * of one letter is like no other but its own capital.
  */
 export function nearest(name: string, candidates: Iterable<string>): string | null {
   let best: string | null = null;
-  let least = Math.max(1, Math.floor(name.length / 3)) + 1;
+  let least = name.length === 1 ? 1 : Math.max(1, Math.floor(name.length / 3)) + 1;
   for (const candidate of candidates) {
     if (Math.abs(candidate.length - name.length) >= least || candidate === name) continue;
     const distance = name.toLowerCase() === candidate.toLowerCase() ? 0.5 : edits(name, candidate);

@@ -39,10 +39,13 @@ export function parse(source: SourceText): Parsed {
       start,
       end: lines[0]?.tokens[0] === undefined ? start : start + lines[0].tokens[0].image.length,
     };
-    const fix = {
-      title: "Begin with `notation 1`",
-      edits: [{ span: { file: path, start: 0, end: 0 }, text: "notation 1\n" }],
-    };
+    // Where a line further down says it, that line has a finding of its own.
+    const fix = /^\s*notation\s/m.test(text)
+      ? undefined
+      : {
+          title: "Begin with `notation 1`",
+          edits: [{ span: { file: path, start: 0, end: 0 }, text: "notation 1\n" }],
+        };
     findings.push(
       finding("syntax", span, "A file begins with the edition of the notation: `notation 1`.", { fix }),
     );
