@@ -3,6 +3,7 @@ import type { System } from "../syntax/tree.ts";
 import { describe } from "./describe.ts";
 import type { Draft } from "./draft.ts";
 import { type SourceFile, spanIn } from "./files.ts";
+import { mergingFix } from "./merging-fix.ts";
 import { isJunction } from "./number-bonds.ts";
 import { isValue, templateOf } from "./template.ts";
 import { conditionExpressions, eachReference } from "./tree-walk.ts";
@@ -20,6 +21,7 @@ export function systemNotes(draft: Draft, system: System, file: SourceFile): voi
         "adjacent-junctions",
         bond.span,
         `\`${from.local}\` and \`${to.local}\` are both ${from.type}-junctions and could be one.`,
+        { fix: mergingFix(system, bond) },
       ),
     );
   }

@@ -44,7 +44,8 @@ export interface AskedPoint {
 
 export function randomPoint(graph: RandomGraph, model: StateModel | null, seed: string): AskedPoint {
   const draw = seeded(seed);
-  const stored = (model?.states ?? []).map(({ name }) => [name, 4 * draw() - 2]);
+  // Of what is refused, the tracks: relations that hold at some places alone are no machine.
+  const stored = (model?.states ?? graph.tracks).map(({ name }) => [name, 4 * draw() - 2]);
   const inputs = graph.inputs.map(({ name, value, rate }) => [name, [value, rate]]);
   return {
     stored: Object.fromEntries(stored),

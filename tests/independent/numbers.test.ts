@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { type Answered, asked, drawnModels, randomPoint } from "./drawn-models.ts";
+import { type Answered, asked, type Drawn, drawnModels, randomPoint } from "./drawn-models.ts";
 import { python } from "./python.ts";
 
 /**
@@ -62,11 +62,15 @@ describe(
     });
 
     it("that are refused contradict themselves or leave something open", () => {
-      const sound = pairs.filter(
-        ({ model, solved: { left, undetermined } }) =>
-          model === null && left < CONTRADICTORY && undetermined === 0,
+      const refused = pairs.filter(({ model }) => model === null);
+      const sound = refused.filter(
+        ({ solved: { left, undetermined } }) => left < CONTRADICTORY && undetermined === 0,
       );
-      expect(sound.map(({ seed, refusedFor }) => `graph ${seed}: ${refusedFor.join(", ")}`)).toEqual([]);
+      // `not-computable` says what the core can't do, and nothing of the model; it stays rare.
+      const isBeyond = ({ refusedFor }: Drawn) => refusedFor.every((name) => name === "not-computable");
+      const wrong = sound.filter((one) => !isBeyond(one));
+      expect(wrong.map(({ seed, refusedFor }) => `graph ${seed}: ${refusedFor.join(", ")}`)).toEqual([]);
+      expect(sound.length).toBeLessThan(0.002 * pairs.length);
     });
   },
   PATIENCE,
@@ -90,8 +94,13 @@ describe(
       );
       expect(cases.length).toBeGreaterThan(0.9 * accepted.length);
       const solved = python<Solved[]>("solve_numbers.py", cases);
-      const wrong = cases.flatMap(({ seed, guess }, i) =>
-        differences(guess, solved[i]).map((what) => `graph ${seed}: ${what}`),
+      // A square law has no slope at rest: there, as in what is nearly singular, rounding settles nothing.
+      const judged = cases.flatMap((one, i) =>
+        solved[i].uncertainty < 1e-6 ? [{ ...one, solved: solved[i] }] : [],
+      );
+      expect(judged.length).toBeGreaterThan(0.85 * cases.length);
+      const wrong = judged.flatMap((one) =>
+        differences(one.guess, one.solved).map((what) => `graph ${one.seed}: ${what}`),
       );
       expect(wrong).toEqual([]);
     });
