@@ -8,6 +8,7 @@ import { type MentionedVariable, mixedUse } from "./mixed-use.ts";
 import { finalBond, portNames } from "./port-variables.ts";
 import type { Scope } from "./scope.ts";
 import type { Translator } from "./translate.ts";
+import { turnedFactorFix } from "./turned-factor-fix.ts";
 import { twoPortLaw } from "./two-port-law.ts";
 
 export interface Laws {
@@ -129,6 +130,7 @@ function relation(
     scope,
     "The right side",
     "the left side",
+    () => turnedFactorFix(translator, law.right, left.typed.measure, scope),
   );
   if (typed.measure === "unknown" || left.typed.measure === "unknown") return null;
   return {

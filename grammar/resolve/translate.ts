@@ -1,4 +1,4 @@
-import { type FindingName, finding } from "../diagnostics/finding.ts";
+import { type FindingName, type Fix, finding } from "../diagnostics/finding.ts";
 import type { Range } from "../source/span.ts";
 import type { Expr } from "../symbolic/expression.ts";
 import type { Expression } from "../syntax/tree.ts";
@@ -89,9 +89,10 @@ export class Translator {
   }
 
   /** A mismatch in a function's body is told where the function is called: there the units came from. */
-  mismatch(range: Range, scope: Scope, message: string): Typed {
+  mismatch(range: Range, scope: Scope, message: string, fix?: Fix): Typed {
     const call = this.calls[0];
-    if (call === undefined || this.trying) return this.refuse("unit-mismatch", range, scope, message);
+    if (call === undefined || this.trying)
+      return this.refuse("unit-mismatch", range, scope, message, { fix });
     const facts = [{ message, span: spanIn(scope.file, range) }];
     const inner = this.calls[this.calls.length - 1].name;
     this.draft.report(
@@ -114,10 +115,12 @@ export class Translator {
     scope: Scope,
     what: string,
     by: string,
+    fix: () => Fix | undefined = () => undefined,
   ): Typed {
     if (!fits(typed.measure, measure)) {
       const given = isIn(typed.measure, typed.shown);
-      return this.mismatch(range, scope, `${what} is ${given}, ${by} wants ${measureText(measure, shown)}.`);
+      const message = `${what} is ${given}, ${by} wants ${measureText(measure, shown)}.`;
+      return this.mismatch(range, scope, message, fix());
     }
     if (cyclesForAngle(shown, typed.shown)) {
       return this.mismatch(
