@@ -145,6 +145,7 @@ function checkField(draft: Draft, node: DraftNode): boolean {
           `The port \`${name}\` ${port.gives ? "gives power, so its bond leaves it" : "takes power, so its bond points at it"}; here the arrow points the other way.`,
           {
             facts: [{ message: "declared here", span: spanOf(node.instance, port.range) }],
+            fix: port.gives ? undefined : reversingFix(end),
           },
         ),
       );
