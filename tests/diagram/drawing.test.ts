@@ -3,9 +3,9 @@ import { type Box, boxOf, type Drawing, type Point } from "../../grammar/writing
 import { layoutKey } from "../../grammar/writing/drawing-layout.ts";
 import { drawingSvg } from "../../grammar/writing/drawing-svg.ts";
 import { seeded } from "../published/derived.ts";
-import { randomGraph } from "../published/random-graph.ts";
 import { clashes } from "./clashes.ts";
 import { drawn } from "./drawn.ts";
+import { randomGraph } from "./random-graph.ts";
 import { BRIDGE, GEARED, HOIST, MARKED, massChain, sketched } from "./sketched.ts";
 
 // A layout of a thousand elements takes a second, and several on a machine with other work.

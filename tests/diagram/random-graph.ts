@@ -1,7 +1,4 @@
-/**
- * Random linear bond graphs as data, from which both the text for the core and the equations for the check without
- * causality are written.
- */
+/** Random linear bond graphs of some twenty nodes, to be drawn. */
 export interface RandomGraph {
   readonly nodes: readonly RandomNode[];
   /** Power counts positive from the first node to the second. */
@@ -67,22 +64,4 @@ export function randomGraph(draw: () => number): RandomGraph {
     }
   }
   return { nodes, bonds };
-}
-
-/** All in one domain, so that any two junctions may be joined; units follow from the laws. */
-export function textOf({ nodes, bonds }: RandomGraph): string {
-  const lines: string[] = [];
-  for (const { name, kind, value } of nodes) {
-    const own = value.toPrecision(17);
-    if (kind === "0" || kind === "1") lines.push(`${kind} ${name} : electrical`);
-    if (kind === "R") lines.push(`param v_${name} = ${own} ohm`, `R ${name} e = v_${name}*f`);
-    if (kind === "C") lines.push(`param v_${name} = ${own} F`, `C ${name} e = q/v_${name}`);
-    if (kind === "I") lines.push(`param v_${name} = ${own} H`, `I ${name} f = p/v_${name}`);
-    if (kind === "Se") lines.push(`input v_${name} : V`, `Se ${name} e = v_${name}`);
-    if (kind === "Sf") lines.push(`input v_${name} : A`, `Sf ${name} f = v_${name}`);
-    if (kind === "TF") lines.push(`param v_${name} = ${own}`, `TF ${name} out.f = v_${name}*in.f`);
-    if (kind === "GY") lines.push(`param v_${name} = ${own} ohm`, `GY ${name} out.e = v_${name}*in.f`);
-  }
-  for (const [from, to] of bonds) lines.push(`${nodes[from].name} -> ${nodes[to].name}`);
-  return lines.join("\n");
 }
